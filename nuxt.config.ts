@@ -1,0 +1,73 @@
+import { fileURLToPath } from 'node:url'
+
+/** The rooms that have a message file of their own under i18n/locales/<language>/. */
+const messageFiles = (language: string) =>
+  ['base', 'account', 'job', 'line', 'site', 'numbers', 'walk', 'deficiency', 'signature', 'record', 'portal', 'check', 'people']
+    .map(word => `${language}/${word}.json`)
+
+export default defineNuxtConfig({
+  modules: [
+    '@pinia/nuxt',
+    '@nuxtjs/tailwindcss',
+    '@nuxtjs/i18n',
+    '@vueuse/nuxt',
+    'nuxt-auth-utils',
+    'nuxt-security',
+    '@vite-pwa/nuxt',
+    '@nuxt/eslint',
+    'reka-ui/nuxt',
+  ],
+  devtools: { enabled: false },
+  app: { head: { htmlAttrs: { lang: 'en' }, title: 'Smoothside', link: [{ rel: 'icon', type: 'image/svg+xml', href: '/mark.svg' }] } },
+  css: ['~/assets/css/fonts.css', '~/assets/css/tokens.css', '~/assets/css/base.css'],
+  runtimeConfig: { session: { name: 'smoothside-session', password: '', maxAge: 60 * 60 * 24 * 30, cookie: { sameSite: 'lax', secure: false } } },
+  routeRules: { '/w/**': { ssr: false } },
+  experimental: { typedPages: true, payloadExtraction: false },
+  compatibilityDate: '2026-01-01',
+  nitro: {
+    compressPublicAssets: true,
+    prerender: { routes: ['/w'], crawlLinks: false },
+    // sharp and pg-boss carry native or dynamic parts; Nitro traces them into .output itself
+    esbuild: { options: { target: 'node20' } },
+  },
+  typescript: { strict: true },
+  telemetry: false,
+  hooks: {
+    'nitro:config'(config) {
+      // Ours in front, or an /api error would be answered by the page renderer; Nuxt's stays behind for pages.
+      const ours = fileURLToPath(new URL('./server/http/problemHandler.ts', import.meta.url))
+      config.errorHandler = [ours, ...[config.errorHandler ?? []].flat()]
+    },
+  },
+  i18n: {
+    defaultLocale: 'en',
+    strategy: 'no_prefix',
+    detectBrowserLanguage: { useCookie: true, cookieKey: 'smoothside-language', fallbackLocale: 'en' },
+    experimental: { prerenderMessages: true },
+    locales: [
+      { code: 'en', language: 'en-US', name: 'English', files: messageFiles('en') },
+      { code: 'es', language: 'es-US', name: 'Español', files: messageFiles('es') },
+    ],
+  },
+  pwa: {
+    strategies: 'injectManifest',
+    srcDir: '../app/offline',
+    filename: 'serviceWorker.ts',
+    registerType: 'prompt',
+    manifest: { name: 'Smoothside', short_name: 'Smoothside', start_url: '/w', display: 'standalone', theme_color: '#0E5A43', background_color: '#F5F7F4', icons: [{ src: '/mark.svg', sizes: 'any', type: 'image/svg+xml' }] },
+    injectManifest: { globPatterns: ['**/*.{js,css,html,woff2,svg,json}'] },
+    client: { installPrompt: false },
+  },
+  security: {
+    rateLimiter: false, // ours counts in PostgreSQL, per address and account
+    xssValidator: false, // Vue escapes; the validator would refuse honest quotes and feet marks
+    requestSizeLimiter: { maxRequestSizeInBytes: 30_000_000, maxUploadFileRequestInBytes: 30_000_000 },
+    headers: {
+      crossOriginEmbedderPolicy: false,
+      contentSecurityPolicy: { 'img-src': ['\'self\'', 'data:', 'blob:'], 'upgrade-insecure-requests': false },
+      strictTransportSecurity: false, // the operator's proxy sets it where there is TLS
+      permissionsPolicy: { camera: ['self'], geolocation: [] },
+    },
+  },
+  tailwindcss: { viewer: false },
+})

@@ -1,0 +1,85 @@
+import { z } from 'zod'
+import { limitSchema, UNITS } from '../limit/limit'
+import { ELEMENT_KINDS, SETTINGS } from '../line/line'
+
+/** How a check is answered at the fence. */
+export const METHODS = ['look', 'measure', 'count', 'trial', 'template'] as const
+export type Method = (typeof METHODS)[number]
+
+/** What one answer stands for. `worst`: the worst place that was found on the element. */
+export const ANSWERED_FOR = ['once', 'bay', 'face', 'worst'] as const
+
+/** What becomes of an element while a finding is open, gravest first. */
+export const DEFICIENCY_CLASSES = ['outOfUse', 'correctFirst', 'ownerMayAccept'] as const
+export type DeficiencyClass = (typeof DEFICIENCY_CLASSES)[number]
+
+/** Why a check exists; law, drowning, entrapment, exit and accessibility are never below `correctFirst`. */
+export const CONCERNS = ['law', 'drowning', 'entrapment', 'exit', 'accessibility', 'injury', 'workmanship'] as const
+
+/** The big keys of a walk pass; each opens the checks that it may be a finding of. */
+export const FINDING_KINDS = ['tieEnd', 'sharpEdge', 'gapBelow', 'opening', 'boltProud', 'loosePart', 'other'] as const
+export type FindingKind = (typeof FINDING_KINDS)[number]
+
+/** Drawings that know how to move with a reading; `none` with a reason in words. */
+export const DRAWINGS = ['latchHeight', 'gapBelow', 'swingClearance', 'opening', 'tieEnd', 'spacing', 'height', 'closing', 'clearWidth'] as const
+
+/** The same text in both languages; neither may be missing. */
+export const bothSchema = z.object({ en: z.string().min(1).max(600), es: z.string().min(1).max(600) }).strict()
+export type Both = z.infer<typeof bothSchema>
+
+/** A limit of a built-in check, with the CEL condition under which it applies. */
+export const checkLimitSchema = limitSchema.extend({ when: z.string().max(400).optional() }).strict()
+
+export const checkSchema = z.object({
+  /** Stable for ever; a published check keeps its id over versions. */
+  id: z.string().regex(/^[a-z0-9-]{3,60}$/),
+  section: z.string().regex(/^[a-z0-9-]{2,40}$/),
+  title: bothSchema,
+  /** What to do, as a good foreman would say it. */
+  task: bothSchema,
+  method: z.enum(METHODS),
+  answeredFor: z.enum(ANSWERED_FOR),
+  elements: z.array(z.enum(ELEMENT_KINDS)).min(1),
+  /** Settings of the face that call for it; empty means every face. */
+  settings: z.array(z.enum(SETTINGS)),
+  /** CEL over the facts of job, element and face. */
+  when: z.string().max(400).optional(),
+  /** For measure and count. */
+  measurand: z.string().max(80).optional(),
+  datum: z.string().max(80).optional(),
+  unit: z.enum(UNITS).optional(),
+  /** For a trial: from where, and how often each. */
+  tries: z.array(z.object({ from: z.string().max(40), label: bothSchema, times: z.number().int().min(1).max(20) }).strict()).optional(),
+  /** For a template: whether it conforms when the gauge passes or when it stops. */
+  conformsWhen: z.enum(['passes', 'stops']).optional(),
+  /** Which dimension may have been taken, where texts differ (side, diagonal, width). */
+  dimensions: z.array(z.enum(['side', 'diagonal', 'width'])).optional(),
+  limits: z.array(checkLimitSchema),
+  /** Why no built-in limit stands here, where the method wants one. */
+  noLimit: bothSchema.optional(),
+  class: z.enum(DEFICIENCY_CLASSES),
+  concern: z.enum(CONCERNS),
+  finding: z.enum(FINDING_KINDS),
+  /** May be confirmed with the others of its kind at the end of a pass (looks only). */
+  group: z.boolean(),
+  photo: z.enum(['none', 'wanted', 'required']),
+  caution: bothSchema.optional(),
+  /** Ids of checks that are read again, on the element and its neighbours, after a correction of this one. */
+  disturbs: z.array(z.string()),
+  /** How near two readings must stand to be of the same place, as a Length. */
+  placeTolerance: z.number().int().safe().nonnegative(),
+  drawing: z.union([z.enum(DRAWINGS), z.object({ none: z.string().min(3) }).strict()]),
+  /** Defers to local code. */
+  note: bothSchema,
+}).strict()
+export type Check = z.infer<typeof checkSchema>
+
+/** One published version of a checklist: sections in order, checks in walking sense. */
+export const checklistSchema = z.object({
+  id: z.string().regex(/^[a-z0-9-]{3,60}$/),
+  version: z.number().int().min(1),
+  title: bothSchema,
+  sections: z.array(z.object({ id: z.string(), title: bothSchema }).strict()).min(1),
+  checks: z.array(checkSchema).min(1).max(400),
+}).strict()
+export type Checklist = z.infer<typeof checklistSchema>
