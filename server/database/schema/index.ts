@@ -1,0 +1,5 @@
+export * from './account'
+export * from './job'
+export * from './limiter'
+export * from './record'
+export * from './round'
