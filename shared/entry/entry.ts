@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import { DEFICIENCY_CLASSES, FINDING_KINDS } from '../checklist/check'
-import { elementSchema, FACES } from '../line/line'
+import { elementSchema, FACES, sideSchema } from '../line/line'
 import { SYSTEMS } from '../measure/length'
 
 /** A SHA-256 in lower-case hex. */
@@ -11,7 +11,10 @@ const length = z.number().int().safe()
 const instant = z.string().datetime({ offset: true })
 const words = z.string().trim().min(1).max(2000)
 
-/** Where on an element. A bay counts from 1 at the start; a distance is from the element's post at that end. */
+/**
+ * Where on an element. A bay counts from 1 at the start (on a gate: its leaf, counted the same way); a distance is from the element's
+ * terminal post at that end; a height is over the ground. Null says nothing: a look without a bay is of the element as a whole.
+ */
 export const placeSchema = z.object({
   face: z.enum(FACES).nullable(),
   bay: z.number().int().min(1).max(500).nullable(),
@@ -90,6 +93,9 @@ const personSchema = z.object({ account: uuid.nullable(), name: z.string().trim(
 export const MEANINGS = ['present', 'receivedCopy', 'acceptsWork', 'acceptsDeviation'] as const
 export type Meaning = (typeof MEANINGS)[number]
 
+/** What an authority having jurisdiction may decide: it lets the work vary from its rule, or takes another way of meeting it. */
+export const DECISIONS = ['variance', 'alternative'] as const
+
 /** A stroke of the pen: x and y in 1/100 of the pad's height, from its top left; t in ms since the first point. Integers alone. */
 export const strokeSchema = z.array(z.object({ x: z.number().int(), y: z.number().int(), t: z.number().int().min(0) }).strict()).min(1).max(4000)
 
@@ -120,16 +126,19 @@ export const PAYLOADS = {
   dangerNow: z.object({ salt, done: z.enum(['closed', 'taped', 'removed', 'attended', 'heldOpen', 'sentRound', 'other']), words: words.optional(), told: personSchema, toldAt: instant, photos }).strict(),
   deviationOffered: z.object({ salt, words, condition: words.optional(), until: z.string().regex(/^\d{4}-\d\d-\d\d$/).nullable() }).strict(),
   deviationAccepted: z.object({ salt, by: personSchema, for: z.string().trim().min(1).max(200), accepted: z.boolean(), words: words.optional(), condition: words.optional(), until: z.string().regex(/^\d{4}-\d\d-\d\d$/).nullable() }).strict(),
-  decided: z.object({ salt, by: personSchema, on: z.string().regex(/^\d{4}-\d\d-\d\d$/), document: z.string().trim().min(1).max(300), words }).strict(),
+  decided: z.object({ salt, as: z.enum(DECISIONS), by: personSchema, on: z.string().regex(/^\d{4}-\d\d-\d\d$/), document: z.string().trim().min(1).max(300), words }).strict(),
   referred: z.object({ salt, to: personSchema, on: z.string().regex(/^\d{4}-\d\d-\d\d$/), words }).strict(),
-  /** Written by a second person, never by the author of the reading that it names. */
+  /** Written by a second person, never by the author of the reading that it names. Voids that one reading. */
   enteredInError: z.object({ salt, reason: words }).strict(),
-  settled: z.object({ salt, reason: words }).strict(),
+  /** Of the readings in `answers`, which disagree at one place, the one that stands. Another reading that comes later disagrees again. */
+  settled: z.object({ salt, stands: uuid, reason: words }).strict(),
   disputed: z.object({ salt, words }).strict(),
   lineEdit: z.object({
     salt,
     edit: z.discriminatedUnion('kind', [
-      z.object({ kind: z.literal('add'), after: uuid.nullable(), side: z.string(), element: elementSchema }).strict(),
+      /** After that element of the side; null puts it first. */
+      z.object({ kind: z.literal('add'), after: uuid.nullable(), side: sideSchema.shape.key, element: elementSchema }).strict(),
+      /** The first part keeps the id, so that what was read on it stays; the second has a new one. */
       z.object({ kind: z.literal('split'), element: uuid, into: z.tuple([elementSchema, elementSchema]) }).strict(),
       z.object({ kind: z.literal('rename'), element: uuid, tag: elementSchema.shape.tag, name: z.string().max(80) }).strict(),
       z.object({ kind: z.literal('remeasure'), element: uuid, length: length.positive(), height: length.positive(), rise: length, bays: z.number().int().min(1).max(500) }).strict(),
@@ -158,7 +167,7 @@ export type PayloadOf<K extends EntryKind> = z.infer<(typeof PAYLOADS)[K]>
 
 /**
  * An entry on the wire and in every store: the two canonical JSON texts exactly as the device made them.
- * A reader parses them; nobody ever writes them again.
+ * A reader parses them; nobody ever writes them again. An erased payload (contracts.md 2, `redact`) is the empty text.
  */
 export const wireEntrySchema = z.object({ envelope: z.string().max(20_000), payload: z.string().max(2_200_000) }).strict()
 export type WireEntry = z.infer<typeof wireEntrySchema>
@@ -172,3 +181,26 @@ export interface Entry<K extends EntryKind = EntryKind> {
 }
 /** An entry of a known kind, discriminated by `envelope.kind`. */
 export type AnyEntry = { [K in EntryKind]: Entry<K> }[EntryKind]
+
+/**
+ * An entry of a kind or version that these rules do not know: kept as it came, shown so, and nothing is signed over it.
+ * `payloadText` is its canonical text.
+ */
+export interface UnknownEntry {
+  envelope: Envelope
+  payloadText: string
+  digest: string
+  number: number | null
+}
+/** What a store holds: entries that the rules know and such that a newer program wrote. */
+export type KeptEntry = AnyEntry | UnknownEntry
+
+/** Whether these rules know that kind in that version. */
+export function isKnownKind(envelope: Pick<Envelope, 'kind' | 'version'>): boolean {
+  return envelope.version === 1 && Object.hasOwn(PAYLOADS, envelope.kind)
+}
+
+/** Whether a kept entry is of a kind that these rules know. */
+export function isKnown(entry: KeptEntry): entry is AnyEntry {
+  return isKnownKind(entry.envelope)
+}
