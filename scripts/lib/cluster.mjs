@@ -23,11 +23,17 @@ function candidateFolders() {
 }
 const versionOf = folder => execFileSync(path.join(folder, 'postgres'), ['--version'], { encoding: 'utf8' }).match(/(\d+)/)?.[1]
 
+const found = new Map()
 /** The folder of PostgreSQL's programs, of the wanted major version if one is given; null when there is none. */
 export function findPostgres(version) {
-  return candidateFolders()
-    .filter(folder => programs.every(program => fs.existsSync(path.join(folder, program))))
-    .find(folder => version === undefined ? Number(versionOf(folder)) >= oldest : versionOf(folder) === version) ?? null
+  if (!found.has(version)) {
+    const folder = candidateFolders()
+      .filter(folder => programs.every(program => fs.existsSync(path.join(folder, program))))
+      .find(folder => version === undefined ? Number(versionOf(folder)) >= oldest : versionOf(folder) === version)
+    if (!folder) return null // may be installed in a moment: not remembered
+    found.set(version, folder)
+  }
+  return found.get(version)
 }
 
 /** PostgreSQL refuses to run as root, so root runs it as the user that Debian's package makes. Null: run as who we are. */

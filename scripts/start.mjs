@@ -1,0 +1,59 @@
+// npm start: from a fresh machine with Node.js 20 to a running Smoothside, saying what it does.
+import './lib/nodeVersion.mjs'
+import fs from 'node:fs'
+import path from 'node:path'
+import process from 'node:process'
+import { buildIfChanged, serverEntry } from './lib/build.mjs'
+import { data, openDataFolder, projectRoot } from './lib/dataFolder.mjs'
+import { layGround } from './lib/ground.mjs'
+import { claimDataFolder } from './lib/claim.mjs'
+import { runProgram } from './lib/processes.mjs'
+import { step, say } from './lib/steps.mjs'
+import { runServices, startMailCatcher, startService, waitUntilReady, watchDatabase, webPort } from './lib/services.mjs'
+
+/** Signs of a demo that was broken off half-way: its loader is then called again. */
+const demoMark = path.join(data.run, 'demo-unfinished')
+const demoLoader = path.join(projectRoot, 'scripts/demo.mjs')
+
+async function loadDemo({ ownerUrl, environment, logOf }) {
+  if (process.env.SMOOTHSIDE_DEMO === 'no' || !fs.existsSync(demoLoader)) return
+  const { withClient } = await import('./lib/migration.mjs')
+  const empty = await withClient(ownerUrl, async client => !(await client.query('select exists (select from organisation) as some')).rows[0].some)
+  if (!empty && !fs.existsSync(demoMark)) return
+  fs.writeFileSync(demoMark, '')
+  await step('Loading the demo (once)', () => runProgram('Loading the demo', process.execPath, [demoLoader], { cwd: projectRoot, env: { ...environment, DATABASE_URL_OWNER: ownerUrl }, log: logOf('demo') }))
+  fs.rmSync(demoMark, { force: true })
+}
+
+function tellSignIns() {
+  if (!fs.existsSync(data.demoSignIns)) return
+  const signIns = JSON.parse(fs.readFileSync(data.demoSignIns, 'utf8'))
+  console.log('\nDemo sign-ins:')
+  for (const { email, password, role, name, organisation } of signIns)
+    console.log(`  ${[email.padEnd(38), password.padEnd(22), [role, name, organisation].filter(Boolean).join(', ')].join(' ')}`.trimEnd())
+}
+
+await runServices(async () => {
+  console.log('Starting Smoothside.')
+  const port = await webPort()
+  await step('Opening the data folder', () => {
+    openDataFolder()
+    return claimDataFolder(`Smoothside runs at http://127.0.0.1:${port}`)
+  })
+  const ground = await layGround(port)
+  const { cluster, environment, workerPort, logOf } = ground
+  watchDatabase(cluster.port)
+  await step('Building the server and the screens', () => buildIfChanged(logOf('build')))
+  await step('Starting mail catcher, worker and web', async () => {
+    startMailCatcher(ground)
+    const built = role => ({ command: process.execPath, parameters: [serverEntry], cwd: projectRoot, log: logOf(role), env: { ...environment, NODE_ENV: 'production', SMOOTHSIDE_ROLE: role, ...(role === 'worker' ? { PORT: String(workerPort) } : {}) } })
+    startService('worker', built('worker'))
+    startService('web', built('web'))
+    await waitUntilReady(`http://127.0.0.1:${port}`, logOf)
+  })
+  await loadDemo(ground)
+  tellSignIns()
+  if (environment.MAIL_CATCHER_URL) say(`\n  Mail goes nowhere but here: ${environment.MAIL_CATCHER_URL}`)
+  say(`Data: ${data.root}   Logs: ${data.logs}   Stop: Ctrl-C`)
+  console.log(`\nSmoothside is ready at http://127.0.0.1:${port}`)
+})
