@@ -30,7 +30,10 @@ export type Both = z.infer<typeof bothSchema>
 /** A limit of a built-in check, with the CEL condition under which it applies. */
 export const checkLimitSchema = limitSchema.extend({ when: z.string().max(400).optional() }).strict()
 
-export const checkSchema = z.object({
+/** Concerns whose checks are never below `correctFirst`, whoever writes the checklist. */
+export const FLOORED_CONCERNS: readonly (typeof CONCERNS)[number][] = ['law', 'drowning', 'entrapment', 'exit', 'accessibility']
+
+const fields = z.object({
   /** Stable for ever; a published check keeps its id over versions. */
   id: z.string().regex(/^[a-z0-9-]{3,60}$/),
   section: z.string().regex(/^[a-z0-9-]{2,40}$/),
@@ -52,11 +55,17 @@ export const checkSchema = z.object({
   tries: z.array(z.object({ from: z.string().max(40), label: bothSchema, times: z.number().int().min(1).max(20) }).strict()).optional(),
   /** For a template: whether it conforms when the gauge passes or when it stops. */
   conformsWhen: z.enum(['passes', 'stops']).optional(),
+  /** For a template: which gauge to bring, in words. */
+  gauge: bothSchema.optional(),
   /** Which dimension may have been taken, where texts differ (side, diagonal, width). */
   dimensions: z.array(z.enum(['side', 'diagonal', 'width'])).optional(),
   limits: z.array(checkLimitSchema),
   /** Why no built-in limit stands here, where the method wants one. */
   noLimit: bothSchema.optional(),
+  /** Ids of the published statements that speak of it, in templates/facts, whether or not one of them is its limit here. */
+  sources: z.array(z.string().regex(/^[A-H]\d\d$/)).optional(),
+  /** True where a random sample may stand for the whole (tightness, turns, spacing); never for edges, ends, protrusions or entrapment. */
+  sampled: z.boolean().optional(),
   class: z.enum(DEFICIENCY_CLASSES),
   concern: z.enum(CONCERNS),
   finding: z.enum(FINDING_KINDS),
@@ -72,6 +81,28 @@ export const checkSchema = z.object({
   /** Defers to local code. */
   note: bothSchema,
 }).strict()
+
+/** One check, whole. What one check alone can get wrong is refused here; what needs the others or the sources is in {@link checklistProblems}. */
+export const checkSchema = fields.superRefine((check, context) => {
+  const refuse = (path: string, message: string) => context.addIssue({ code: 'custom', path: [path], message })
+  const numeric = check.method === 'measure' || check.method === 'count'
+  if (check.class === 'ownerMayAccept' && FLOORED_CONCERNS.includes(check.concern)) refuse('class', `A check for ${check.concern} is at least correctFirst.`)
+  if (check.group && check.method !== 'look') refuse('group', 'Only looks may be confirmed as a group.')
+  if (check.sampled && (check.concern === 'entrapment' || ['tieEnd', 'sharpEdge', 'boltProud', 'opening', 'gapBelow'].includes(check.finding)))
+    refuse('sampled', 'Edges, ends, protrusions and entrapment are done in full, never sampled.')
+  if (numeric && !(check.measurand && check.datum && check.unit)) refuse('measurand', 'A measure or count names its measurand, datum and unit.')
+  if (check.method === 'count' && check.unit !== 'count') refuse('unit', 'A count is in ones.')
+  // A limit that hangs on a condition leaves places without one: there the reason must be readable.
+  if (numeric && !check.noLimit && check.limits.every(limit => limit.when !== undefined)) refuse('noLimit', 'Say why no built-in limit stands where none applies.')
+  if (check.method === 'trial' && !check.tries?.length) refuse('tries', 'A trial says from where and how often.')
+  if (check.method === 'template' && !(check.conformsWhen && check.gauge && check.measurand && check.datum && check.unit))
+    refuse('conformsWhen', 'A template names its gauge, what the gauge stands for, and whether it conforms when the gauge passes or stops.')
+  if (check.method === 'look' && check.limits.length > 0) refuse('limits', 'A look has no limit; make it a measure.')
+  check.limits.forEach((limit, at) => {
+    if (limit.measurand !== check.measurand || limit.datum !== check.datum || limit.unit !== check.unit)
+      context.addIssue({ code: 'custom', path: ['limits', at], message: 'A limit is on the measurand, datum and unit of its check.' })
+  })
+})
 export type Check = z.infer<typeof checkSchema>
 
 /** One published version of a checklist: sections in order, checks in walking sense. */
