@@ -95,6 +95,24 @@ export function text(x: number, y: number, words: string, style: TextStyle = {})
   return { layer: 'text', kind: 'text', x: round(x), y: round(y), text: words, role: 'ink', size: 14, anchor: 'start', ...style }
 }
 
+/** About how wide a text comes out in Lexend 400, to keep labels apart; widths in em by kind of letter, measured on the font and rounded up. */
+export function textWidth(words: string, size: number): number {
+  let em = 0
+  for (const letter of words) em += /[iljI.,:;'|! ]/.test(letter) ? 0.3 : /[mwMW@]/.test(letter) ? 0.92 : /[A-Z]/.test(letter) ? 0.7 : 0.6
+  return em * size
+}
+
+/** Breaks words into lines of about `width` at most; a word that is longer stands alone. */
+export function wrapText(words: string, width: number, size: number): string[] {
+  const lines: string[] = []
+  for (const word of words.split(' ').filter(Boolean)) {
+    const last = lines.at(-1)
+    if (last !== undefined && textWidth(`${last} ${word}`, size) <= width) lines[lines.length - 1] = `${last} ${word}`
+    else lines.push(word)
+  }
+  return lines
+}
+
 /** A piece of a text: `scale` of its size, `rise` of its baseline and `kern` before it, both in em of the whole text. */
 export interface TextRun { text: string, scale: number, rise: number, kern: number }
 
@@ -123,7 +141,7 @@ export function fractionRuns(words: string): TextRun[] {
 
 /**
  * Fabric: two families of straight wires, clipped to a panel `width` x `height` and then mapped (a slope is only another map).
- * Half a diamond stands at the top rail (v = 0). `diamondWidth` and `diamondHeight` are those of half a mesh to each side of its knot.
+ * Half a diamond stands at the top rail (v = 0). `diamondWidth` and `diamondHeight` are the diagonals of one mesh.
  */
 export function meshPath(width: number, height: number, diamondWidth: number, diamondHeight: number, map: (u: number, v: number) => Point, phase = 0): string {
   if (!(width > 0 && height > 0 && diamondWidth > 0 && diamondHeight > 0)) return ''
