@@ -8,6 +8,7 @@ export const ENTRY_REFUSALS = {
   payloadDigest: 'The payload is not the one that the envelope names by its digest; send both as the device made them.',
   subject: 'The element, check, place or basis does not fit the kind of entry; look at the pointer.',
   target: 'An entry of this kind cannot name that entry; look at the pointer.',
+  notYours: 'It belongs to another round, organisation, job or person, or your role may not write this kind; send it signed in as its author.',
   ownReading: 'A reading is entered in error only by a second person: let another account write this.',
 } as const
 export type EntryRefusalCode = keyof typeof ENTRY_REFUSALS
