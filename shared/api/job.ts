@@ -31,3 +31,6 @@ export const jobInputSchema = z.object({
   given: z.array(z.object({ accountId: z.string().uuid(), as: z.enum(['inspector', 'crew']) }).strict()).max(40),
 }).strict()
 export type JobInput = z.infer<typeof jobInputSchema>
+
+/** What people call a job: the organisation's code and the job's number, as in TG-0417. A record's code adds its own number. */
+export const jobCode = (organisationCode: string, jobNumber: number) => `${organisationCode}-${String(jobNumber).padStart(4, '0')}`

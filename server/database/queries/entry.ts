@@ -1,0 +1,67 @@
+import type { KeptEntry, WireEntry } from '../../../shared/entry/entry'
+import type { Target } from '../../../shared/entry/entryRules'
+import type { Tx } from '../withSession'
+
+export interface LockedRound { id: string, jobId: string, number: number, state: 'open' | 'frozen' | 'sealed', accepted: number, basis: string }
+
+/** Locks the round's row: whoever comes next waits, so numbers follow the order of commit. The same lock freezes it. */
+export async function lockRound(tx: Tx, roundId: string): Promise<LockedRound | undefined> {
+  const { rows } = await tx.client.query<LockedRound>('update round set accepted = accepted where organisation_id = app_organisation() and id = $1 returning id, job_id as "jobId", number, state, accepted, basis', [roundId])
+  return rows[0]
+}
+
+export async function setAccepted(tx: Tx, roundId: string, accepted: number): Promise<void> {
+  await tx.client.query('update round set accepted = $2 where organisation_id = app_organisation() and id = $1', [roundId, accepted])
+}
+
+export async function digestsOf(tx: Tx, ids: string[]): Promise<Map<string, { digest: string, number: number | null }>> {
+  const { rows } = await tx.client.query<{ id: string, digest: string, number: number }>('select id, digest, number from entry where organisation_id = app_organisation() and id = any($1::uuid[])', [ids])
+  return new Map(rows.map(row => [row.id, row]))
+}
+
+/** The entries that others name, as the rules of naming need them. */
+export async function targetsOf(tx: Tx, ids: string[]): Promise<Map<string, Target>> {
+  if (ids.length === 0) return new Map()
+  const { rows } = await tx.client.query<Target & { envelope_text: string }>('select envelope_text from entry where organisation_id = app_organisation() and id = any($1::uuid[])', [[...new Set(ids)]])
+  return new Map(rows.map((row) => {
+    const envelope = JSON.parse(row.envelope_text) as Target
+    return [envelope.id, envelope]
+  }))
+}
+
+/** Stores accepted entries, the texts exactly as they came; throws unless every one of them can be read back. */
+export async function insertEntries(tx: Tx, accepted: { entry: KeptEntry, wire: WireEntry }[]): Promise<void> {
+  if (accepted.length === 0) return
+  const column = <T>(pick: (one: { entry: KeptEntry, wire: WireEntry }) => T) => accepted.map(pick)
+  const { rowCount } = await tx.client.query(
+    `insert into entry (organisation_id, id, round_id, number, job_id, kind, author_id, element_id, check_id, digest, envelope_text, payload_text, payload)
+     select app_organisation(), e.id, $1, e.number, e.job, e.kind, e.author, e.element, e.check_id, e.digest, e.envelope, e.payload, e.payload::jsonb
+       from unnest($2::uuid[], $3::int[], $4::uuid[], $5::text[], $6::uuid[], $7::uuid[], $8::text[], $9::text[], $10::text[], $11::text[])
+         as e(id, number, job, kind, author, element, check_id, digest, envelope, payload)
+     returning id`,
+    [accepted[0]!.entry.envelope.round, column(one => one.entry.envelope.id), column(one => one.entry.number), column(one => one.entry.envelope.job), column(one => one.entry.envelope.kind),
+      column(one => one.entry.envelope.author), column(one => one.entry.envelope.element), column(one => one.entry.envelope.check), column(one => one.entry.digest), column(one => one.wire.envelope), column(one => one.wire.payload)])
+  if (rowCount !== accepted.length) throw new Error(`${accepted.length} entries were to be stored, ${rowCount} can be read back`)
+}
+
+export async function putAside(tx: Tx, entry: KeptEntry, wire: WireEntry, why: 'held' | 'quarantined'): Promise<void> {
+  await tx.client.query(
+    `insert into entry_aside (organisation_id, id, digest, round_id, why, envelope_text, payload_text, author_id) values (app_organisation(), $1, $2, $3, $4, $5, $6, $7) on conflict do nothing`,
+    [entry.envelope.id, entry.digest, entry.envelope.round, why, wire.envelope, wire.payload, entry.envelope.author])
+}
+
+export async function heldOf(tx: Tx, roundId: string): Promise<WireEntry[]> {
+  const { rows } = await tx.client.query<WireEntry>(`select envelope_text as envelope, payload_text as payload from entry_aside where organisation_id = app_organisation() and round_id = $1 and why = 'held'`, [roundId])
+  return rows
+}
+
+export async function dropAside(tx: Tx, entries: KeptEntry[]): Promise<void> {
+  if (entries.length > 0) await tx.client.query(`delete from entry_aside where organisation_id = app_organisation() and why = 'held' and id = any($1::uuid[])`, [entries.map(entry => entry.envelope.id)])
+}
+
+/** The round's entries after a number, in order. */
+export async function entriesAfter(tx: Tx, roundId: string, after: number, most: number): Promise<{ number: number, envelope: string, payload: string }[]> {
+  const { rows } = await tx.client.query<{ number: number, envelope: string, payload: string }>(
+    `select number, envelope_text as envelope, coalesce(payload_text, '') as payload from entry where organisation_id = app_organisation() and round_id = $1 and number > $2 order by number limit $3`, [roundId, after, most])
+  return rows
+}

@@ -1,0 +1,63 @@
+import { z } from 'zod'
+import { wireEntrySchema } from '../entry/entry'
+import type { EntryRefusal } from '../entry/entryRefused'
+import type { Role } from '../permission/permission'
+
+/** Named in every path of the field's wire (/api/field/v1): a device with an older one is told to load the newer program, and keeps what it holds. */
+export const SYNC_VERSION = 1
+/** Most entries in one push and one pull. */
+export const PUSH_MOST = 500
+export const PULL_MOST = 1000
+
+const uuid = z.string().uuid()
+export const roundParamsSchema = z.object({ roundId: uuid }).strict()
+export const jobParamsSchema = z.object({ jobId: uuid }).strict()
+export const takeSchema = z.object({ device: uuid, name: z.string().trim().min(1).max(120) }).strict()
+export const pushSchema = z.object({
+  device: uuid,
+  entries: z.array(wireEntrySchema).max(PUSH_MOST),
+  /** True when nothing of this round waits on the device any more once these are accepted. */
+  empty: z.boolean(),
+}).strict()
+export const pullSchema = z.object({ after: z.coerce.number().int().min(0).default(0) }).strict()
+
+/** What became of one entry. Only `accepted` and `resent` let the device stop offering it; `refused` and `quarantined` are shown to the inspector, never dropped. */
+export interface PushResult {
+  /** Null where the text could not even be read for its id. */
+  id: string | null
+  state: 'accepted' | 'resent' | 'held' | 'refused' | 'quarantined'
+  number: number | null
+  refusal: EntryRefusal | null
+}
+export interface PushAnswer { storeEpoch: string, accepted: number, results: PushResult[] }
+
+export interface PullAnswer {
+  storeEpoch: string
+  round: { id: string, number: number, state: 'open' | 'frozen' | 'sealed', accepted: number, basis: string }
+  entries: { number: number, envelope: string, payload: string }[]
+  more: boolean
+}
+
+/** All that a device takes along to work on a job with no signal. */
+export interface FieldBundle {
+  syncVersion: number
+  storeEpoch: string
+  me: { accountId: string, name: string, role: Role }
+  organisation: { id: string, name: string, phone: string | null, timeZone: string }
+  job: {
+    id: string, number: number, code: string, title: string, neededBy: string | null, system: 'imperial' | 'metric', language: 'en' | 'es'
+    permit: string, contract: string, buildingCode: string, gateTag: string
+    onsiteName: string, onsitePhone: string, emergencyName: string, emergencyPhone: string
+  }
+  site: { id: string, name: string, address: string, timeZone: string }
+  client: { id: string, name: string }
+  round: PullAnswer['round']
+  /** Letter that this device's tags begin with. */
+  letter: string
+  /** Bases of the round by digest, canonical text each; the device checks the digest. */
+  bases: { digest: string, text: string }[]
+  people: { accountId: string, name: string, role: Role }[]
+  contacts: { id: string, accountId: string | null, name: string, title: string, phone: string, accepts: boolean }[]
+  /** Devices that have the round along, this one too. */
+  devices: { device: string, name: string, accountId: string, letter: string, takenAt: string, emptyAt: string | null }[]
+}
