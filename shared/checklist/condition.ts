@@ -27,6 +27,12 @@ export interface Condition {
   holds(facts: Facts): boolean
 }
 
+/** The facts that a condition looks at. */
+export function factsNamed(tree: ConditionTree): FactPath[] {
+  if ('fact' in tree) return [tree.fact]
+  return tree.op === 'not' ? factsNamed(tree.of) : tree.of.flatMap(factsNamed)
+}
+
 const LARGEST = { nodes: 60, depth: 12, list: 12 }
 
 /** The facts directly under a variable, with their CEL types; `face.ground.surface` is under `face.ground`. */

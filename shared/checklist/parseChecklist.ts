@@ -46,8 +46,10 @@ const sectionTextSchema = z.object({
 
 const listTextSchema = z.object({ id: z.string(), version: z.number(), title: bothSchema, sections: z.array(z.string()).min(1) }).strict()
 
-/** The YAML of one checklist and of all sections that it may be composed of. */
-export interface ChecklistTexts { checklist: string, sections: readonly string[] }
+/** YAML texts: one for each checklist, and all sections that they may be composed of. */
+export interface ChecklistTexts { checklists: readonly string[], sections: readonly string[] }
+
+type Section = z.output<typeof sectionTextSchema>
 
 const refuse = (pointer: string, code: string, message: string): never => {
   throw new ChecklistError([{ pointer, code, message }])
@@ -85,8 +87,8 @@ function checkFrom(raw: Record<string, unknown>, section: string, where: string,
   const limits = text.limits.map((limit) => {
     const fact = facts.get(limit.fact) ?? refuse(`${where}/limits`, 'unknown-fact', `There is no published statement "${limit.fact}".`)
     return {
-      // The same statement on the same measurand is one limit, wherever it is named: baskets of limits are deduplicated by this id.
-      id: `${limit.fact}.${text.measurand ?? ''}`,
+      // The same statement on the same measurand and datum is one limit, wherever it is named: a round's basis holds it once, under this id.
+      id: `${limit.fact}.${text.measurand ?? ''}.${text.datum ?? ''}`,
       measurand: text.measurand,
       datum: text.datum,
       unit: text.unit as Unit,
@@ -101,32 +103,37 @@ function checkFrom(raw: Record<string, unknown>, section: string, where: string,
   return { settings: [], disturbs: [], ...text, section, limits, placeTolerance: millimetres === undefined ? lengthOfInches(inches) : lengthOfMillimetres(millimetres) }
 }
 
-/**
- * Reads a checklist from YAML: composes its sections, fills in what a section's checks share, turns figures into integers and names each limit's source
- * from the published statements; then checks everything that {@link checklistProblems} knows.
- *
- * A check may disturb one of a section that this checklist leaves out; that reference is dropped. One that no section knows is refused.
- *
- * @throws {ChecklistError} with every problem of the first stage that found any
- */
-export function parseChecklist(texts: ChecklistTexts, facts: readonly PublishedFact[]): Checklist {
-  const factsById = new Map(facts.map(fact => [fact.id, fact]))
-  const sections = new Map(texts.sections.map((text) => {
-    const section = read(sectionTextSchema, yamlOf(text, '/sections'), '/sections')
-    return [section.id, section] as const
-  }))
-  const list = read(listTextSchema, yamlOf(texts.checklist, '/checklist'), '/checklist')
+function compose(text: string, sections: ReadonlyMap<string, Section>, factsById: Map<string, PublishedFact>): Checklist {
+  const list = read(listTextSchema, yamlOf(text, '/checklist'), '/checklist')
   const chosen = list.sections.map(id => sections.get(id) ?? refuse('/checklist/sections', 'unknown-section', `There is no section "${id}".`))
   const everyId = new Set([...sections.values()].flatMap(section => section.checks.map(check => String(check.id))))
   const here = new Set(chosen.flatMap(section => section.checks.map(check => String(check.id))))
-
   const checks = chosen.flatMap(section => section.checks.map((check) => {
     const whole = checkFrom({ ...section.defaults, ...check }, section.id, `/sections/${section.id}/${String(check.id)}`, factsById)
     const disturbs = whole.disturbs as string[]
     return { ...whole, disturbs: disturbs.filter(id => here.has(id) || !everyId.has(id)) }
   }))
-  const checklist = read(checklistSchema, { id: list.id, version: list.version, title: list.title, sections: chosen.map(({ id, title }) => ({ id, title })), checks }, '')
-  const problems = checklistProblems(checklist, facts)
-  if (problems.length > 0) throw new ChecklistError(problems)
-  return checklist
+  return read(checklistSchema, { id: list.id, version: list.version, title: list.title, sections: chosen.map(({ id, title }) => ({ id, title })), checks }, '')
+}
+
+/**
+ * Reads checklists from YAML: composes their sections, fills in what a section's checks share, turns figures into integers and names each limit's source
+ * from the published statements; then checks everything that {@link checklistProblems} knows.
+ *
+ * A check may disturb one of a section that its checklist leaves out; that reference is dropped. One that no section knows is refused.
+ *
+ * @throws {ChecklistError} with every problem of the first stage that found any
+ */
+export function parseChecklists(texts: ChecklistTexts, facts: readonly PublishedFact[]): Checklist[] {
+  const factsById = new Map(facts.map(fact => [fact.id, fact]))
+  const sections = new Map(texts.sections.map((text) => {
+    const section = read(sectionTextSchema, yamlOf(text, '/sections'), '/sections')
+    return [section.id, section] as const
+  }))
+  return texts.checklists.map((text) => {
+    const checklist = compose(text, sections, factsById)
+    const problems = checklistProblems(checklist, facts)
+    if (problems.length > 0) throw new ChecklistError(problems)
+    return checklist
+  })
 }

@@ -1,6 +1,7 @@
 import type { Check } from '../checklist/check'
 import type { Limit } from '../limit/limit'
 import type { Face, Line } from '../line/line'
+import type { Provision } from '../provision/provision'
 
 /** The version of the rules in shared/; a round keeps the one that it was opened under. */
 export const RULES_VERSION = 1
@@ -27,4 +28,8 @@ export interface RoundBasis {
   limits: Record<string, Limit>
   /** In walking order: along the line, within an element in the order of the checklist. */
   tasks: WalkTask[]
+  /** Local numbers and notes of the job, pinned whole so that an element added in the field gets its limits with no signal. */
+  provisions?: Provision[]
+  /** Limits that would have held, and the key of the limit that stands in their place; printed with the record. */
+  setAside?: { limit: Limit, by: string, why: 'replaced' | 'looser' }[]
 }

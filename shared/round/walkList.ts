@@ -1,0 +1,79 @@
+import type { Check } from '../checklist/check'
+import { compileCondition, factsNamed } from '../checklist/condition'
+import { factsOf } from '../checklist/facts'
+import type { Facts } from '../checklist/facts'
+import type { Limit } from '../limit/limit'
+import { FACES } from '../line/line'
+import type { Face, LineElement } from '../line/line'
+import type { System } from '../measure/length'
+import { facesAsking, limitsAt } from '../provision/limitsInForce'
+import type { SetAside } from '../provision/limitsInForce'
+import type { Provision } from '../provision/provision'
+import type { WalkTask } from './basis'
+
+/** What is to be answered on given elements, with the limits that its keys point to. */
+export interface WalkList {
+  tasks: WalkTask[]
+  limits: Record<string, Limit>
+  setAside: SetAside[]
+}
+
+/** A limit id that stands for two different limits: the checklists or local numbers cannot be used together. */
+export class LimitsDiffer extends Error {
+  readonly code = 'limits-differ'
+  constructor(readonly limit: string) {
+    super(`Two different limits are both named "${limit}": give one of them another id.`)
+    this.name = 'LimitsDiffer'
+  }
+}
+
+type Planned = Omit<WalkTask, 'element'>
+
+const at = (facts: Facts, path: string): unknown => path.split('.').reduce<unknown>((value, key) => (value as Record<string, unknown>)[key], facts)
+
+/**
+ * The walk list of elements in the order given; within an element in the order of the checks, outer face before inner.
+ *
+ * A check is asked of an element where its kind fits and at least one face has one of the settings (none named: any) and meets the condition. Answered
+ * for the `face` it is one task for each such face; otherwise one task, held against the limits of all such faces together, so that the strictest governs.
+ *
+ * Elements that no condition can tell apart are worked out once. Throws {@link LimitsDiffer}; a condition that cannot be compiled throws ConditionError.
+ */
+export function walkList(elements: readonly LineElement[], checks: readonly Check[], provisions: readonly Provision[], system: System): WalkList {
+  const conditions = [...checks.flatMap(check => [check.when, ...check.limits.map(limit => limit.when)]), ...provisions.map(provision => provision.when)]
+  const paths = [...new Set(['element.kind', 'face.settings', ...conditions.flatMap(text => text === undefined ? [] : factsNamed(compileCondition(text).tree))])].sort()
+  const limits: Record<string, Limit> = {}
+  const setAside = new Map<string, SetAside>()
+  const texts = new Map<string, string>()
+
+  const keep = (limit: Limit): string => {
+    const text = JSON.stringify(limit)
+    const earlier = texts.get(limit.id)
+    if (earlier !== undefined && earlier !== text) throw new LimitsDiffer(limit.id)
+    texts.set(limit.id, text)
+    limits[limit.id] = limit
+    return limit.id
+  }
+  const plan = (faces: Record<Face, Facts>, kind: LineElement['kind']): Planned[] => checks.filter(check => check.elements.includes(kind)).flatMap((check) => {
+    const asking = facesAsking(check, FACES.map(face => faces[face]))
+    const places: { face: Face | null, of: Facts[] }[] = check.answeredFor === 'face'
+      ? asking.map(facts => ({ face: facts.face.name as Face, of: [facts] }))
+      : asking.length > 0 ? [{ face: null, of: asking }] : []
+    return places.map(({ face, of }) => {
+      const force = limitsAt(check, of, provisions)
+      for (const one of force.setAside) setAside.set(`${one.limit.id} ${one.by}`, one)
+      return { check: check.id, face, limits: force.limits.map(keep) }
+    })
+  })
+
+  const planned = new Map<string, Planned[]>()
+  const tasks: WalkTask[] = []
+  for (const element of elements) {
+    const faces = factsOf(element, system)
+    const key = FACES.map(face => paths.map(path => String(at(faces[face], path))).join('|')).join('/')
+    const plans = planned.get(key) ?? plan(faces, element.kind)
+    planned.set(key, plans)
+    for (const { check, face, limits: keys } of plans) tasks.push({ element: element.id, check, face, limits: keys })
+  }
+  return { tasks, limits, setAside: [...setAside.entries()].sort(([one], [other]) => one < other ? -1 : 1).map(([, value]) => value) }
+}
