@@ -22,10 +22,12 @@ export const data = {
   /** What runs now, and which ports were taken last time. */
   run: path.join(root, 'run'),
   backups: path.join(root, 'backups'),
+  /** Stands from the first to the last moment of a restore. */
+  restoreMark: path.join(root, 'run/restore-unfinished'),
   demoSignIns: path.join(root, 'demo-sign-ins.json'),
 }
 /** What a backup leaves out of the data folder: the database goes in as a dump, the rest is of this machine and day. */
-export const notInBackup = ['postgres', 'postgres.making', 'mail', 'logs', 'run', 'backups', path.join('keys', 'database.json')]
+export const notInBackup = ['postgres', 'postgres.making', 'mail', 'logs', 'run', 'backups', 'keys/database.json']
 
 /** Refuses to go on with less than this much room on the disk that holds `folder`. */
 export function assertRoom(folder, megabytes, forWhat) {
@@ -35,8 +37,8 @@ export function assertRoom(folder, megabytes, forWhat) {
     throw new Trouble(`The disk that holds ${folder} is full or nearly so: ${free} MB are free and ${forWhat} needs ${megabytes} MB. Free some space there${folder === root ? ', or set SMOOTHSIDE_DATA to a folder on another disk,' : ''} and start again.`)
 }
 
-/** Makes the data folder if need be and makes sure that this user may write in it and that there is room. */
-export function openDataFolder() {
+/** Makes the data folder if need be and makes sure that this user may write in it, that there is room, and that no restore was broken off in it. */
+export function openDataFolder({ restoring = false } = {}) {
   try {
     // root's database runs as another user, who must pass through; an ordinary user's data is nobody else's
     if (!fs.existsSync(root)) fs.mkdirSync(root, { recursive: true, mode: process.getuid?.() === 0 ? 0o711 : 0o700 })
@@ -53,5 +55,6 @@ export function openDataFolder() {
     if (error.code === 'ENOTDIR') throw new Trouble(`${root} cannot be a folder, because a part of that path is a file. Set SMOOTHSIDE_DATA to another folder.`)
     throw error
   }
+  if (!restoring && fs.existsSync(data.restoreMark)) throw new Trouble(`A restore into ${root} was broken off, so what lies there is not whole. Remove that folder and restore again.`)
   assertRoom(root, 200, 'the database')
 }

@@ -2,7 +2,8 @@
 import fs from 'node:fs'
 import path from 'node:path'
 import process from 'node:process'
-import { makeCluster, startCluster, stopCluster } from './cluster.mjs'
+import { claimDataFolder, releaseDataFolder } from './claim.mjs'
+import { answeringPort, makeCluster, startCluster, stopCluster } from './cluster.mjs'
 import { data, openDataFolder, projectRoot } from './dataFolder.mjs'
 import { forRunning, installMissing } from './debianPackages.mjs'
 import { installNodeModules } from './nodeModules.mjs'
@@ -33,8 +34,8 @@ export async function installAll() {
 }
 
 /** Makes and starts the cluster of the data folder. @returns {Promise<{ port: number, admin: string, owner: string, app: string, made: boolean }>} */
-export async function raiseCluster() {
-  openDataFolder()
+export async function raiseCluster({ restoring = false } = {}) {
+  openDataFolder({ restoring })
   const passwords = keepSecrets(data.databaseKeys, ['admin', 'owner', 'app'])
   const made = makeCluster(data.cluster, passwords.admin)
   const kept = fs.existsSync(portsFile) ? JSON.parse(fs.readFileSync(portsFile, 'utf8')).postgres : undefined
@@ -64,12 +65,15 @@ export async function migrateCluster(cluster) {
 }
 
 /** Runs something against the data folder's database, starting the cluster for that time only if nothing else did. */
-export async function withCluster(run) {
-  const { answeringPort } = await import('./cluster.mjs')
-  const wasRunning = fs.existsSync(data.cluster) && answeringPort(data.cluster) !== null
-  const cluster = await raiseCluster()
-  try { return await run(cluster) }
-  finally { if (!wasRunning) stopCluster(data.cluster) }
+export async function withCluster(what, run) {
+  if (fs.existsSync(data.cluster) && answeringPort(data.cluster) !== null) return run(await raiseCluster())
+  openDataFolder()
+  await claimDataFolder(what)
+  try { return await run(await raiseCluster()) }
+  finally {
+    if (fs.existsSync(data.cluster)) stopCluster(data.cluster)
+    releaseDataFolder()
+  }
 }
 
 /**
@@ -79,7 +83,7 @@ export async function withCluster(run) {
  */
 export async function layGround(webPort) {
   await installAll()
-  const cluster = await step('Starting the database', raiseCluster)
+  const cluster = await step('Starting the database', () => raiseCluster())
   await step('Bringing the database to the newest schema', () => migrateCluster(cluster))
   const { appUrl, ownerUrl } = await databaseUrls(cluster)
   const keys = keepSecrets(data.serverKeys, ['sessionPassword', 'secret'])
