@@ -43,17 +43,16 @@ export function drawLine(line: Line, options: DrawLineOptions): LineDrawing {
     rows = lay()
   }
 
-  // Rows that are broken anyway may as well fill the page: larger while it costs no row.
-  for (let count = rows.length; count > line.sides.length && scene.scale < largest;) {
-    const before = scene.scale
-    scene.scale = Math.min(largest, before * 1.04)
-    const larger = lay()
-    if (larger.length > count) {
-      scene.scale = before
-      break
-    }
-    rows = larger
+  // Rows that are broken anyway may as well fill the page: larger while it costs no row and no name.
+  const count = rows.length
+  let best = scene.scale
+  while (count > line.sides.length && rows.length === count && scene.scale < largest) {
+    scene.scale = Math.min(largest, scene.scale * 1.04)
+    rows = lay()
+    if (rows.length === count && crowded(rows, scene) === 0) best = scene.scale
   }
+  scene.scale = best
+  rows = lay()
 
   const list: Shape[] = []
   const areas: HitArea[] = []

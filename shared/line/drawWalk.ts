@@ -1,10 +1,10 @@
-import { ground, open, poly, seg, tapeTag, text, textWidth, type Drawing, type Point, type Role, type Shape } from '../drawing/displayList'
-import { FOOT, type Length, type System } from '../measure/length'
+import { ground, open, poly, seg, tapeTag, tapeTagWidth, text, type Drawing, type Point, type Role, type Shape } from '../drawing/displayList'
+import { FOOT, type Length } from '../measure/length'
 import { drawElement, fabricOf, groundUnder, type DrawnPiece } from './drawElement'
-import { bayAt, bayEnd, lineLength, stationOf } from './layLine'
+import { bayAt, bayEnd, stationOf } from './layLine'
 import { elementsOf, type Line, type LineElement } from './line'
 import type { LineMarks, LineTag } from './lineMark'
-import { stationWords } from './lineScene'
+import { drawWalkRail } from './drawWalkRail'
 
 export interface DrawWalkOptions {
   width: number
@@ -16,50 +16,13 @@ export interface DrawWalkOptions {
   words: { youAreHere: string }
 }
 
-/** Heights of the picture: rail, brackets, and the ground of the bays. */
-const RAIL = 30
+/** Where the ground of the bay in hand lies. */
 const GROUND = 146
-/** A bay of the close view is about this wide, and no element higher than this. */
+/** A bay of the close view is about this wide; what one stands at is 44 to 52 high, and nothing reaches the brackets. */
 const BAY = 82
-const HIGHEST = 52
-const MARGIN = 14
-
-interface View { x: (station: number) => number, back: boolean }
-
-function gateDiamond(x: number): Shape {
-  return poly('leaf', [[x, RAIL - 5], [x + 5, RAIL], [x, RAIL + 5], [x - 5, RAIL]], { fill: 'paper', role: 'ink', width: 1.5 })
-}
-
-/** The whole line as a rail with a post between elements and a diamond at each gate, woven up to where one stands. */
-function drawRail(line: Line, at: number, { x, back }: View, width: number, system: System): Shape[] {
-  const whole = lineLength(line)
-  const here = x(at)
-  const list: Shape[] = [seg('rail', MARGIN, RAIL, here, RAIL, { role: 'pine', width: 4 }), seg('rail', here, RAIL, width - MARGIN, RAIL, { role: 'mark' })]
-  let station = 0
-  let lastPost = -Infinity
-  const post = (s: number) => {
-    const place = x(s)
-    if (Math.abs(place - lastPost) < 1) return
-    lastPost = place
-    list.push(seg('post', place, RAIL - 6, place, RAIL + 6, { width: 1.25 }))
-  }
-  for (const element of elementsOf(line)) {
-    post(station)
-    if (element.kind === 'gate') list.push(gateDiamond(x(station + element.length / 2)))
-    station += element.length
-  }
-  post(station)
-  const [left, middle, right] = [stationWords(back ? whole : 0, system), stationWords(at, system), stationWords(back ? 0 : whole, system)]
-  const half = textWidth(middle, 14) / 2
-  const stands = Math.max(half, Math.min(width - half, here))
-  // The figures of both ends give way to the one of the place.
-  if (stands - half > MARGIN + textWidth(left, 14) + 8) list.push(text(MARGIN, 16, left, { role: 'soft' }))
-  if (stands + half < width - MARGIN - textWidth(right, 14) - 8) list.push(text(width - MARGIN, 16, right, { role: 'soft', anchor: 'end' }))
-  list.push(text(stands, 16, middle, { anchor: 'middle', weight: 500 }))
-  list.push(seg('state', here, RAIL, here, RAIL + 12), poly('state', [[here, RAIL + 9], [here + 7, RAIL + 16], [here, RAIL + 23], [here - 7, RAIL + 16]], { fill: 'pine' }))
-  list.push(seg('dim', here - 7, 56, 2, 78, { role: 'mark', width: 'hair' }), seg('dim', here + 7, 56, width - 2, 78, { role: 'mark', width: 'hair' }))
-  return list
-}
+const [LOWEST, HIGHEST, CEILING] = [44, 52, 62]
+/** Between these the close view may reach on a slope; the element in hand always stays. */
+const [TOP, FOOT_LINE] = [60, 165]
 
 /** Where bay or leaf `of` at `along` begins and ends, from the element's start. */
 function bayAround(element: LineElement, along: Length): { bay: number, from: Length, to: Length } {
@@ -84,15 +47,14 @@ function mirrored(element: LineElement): LineElement {
 export function drawWalk(line: Line, { width, here, marks = {}, backwards = false, words }: DrawWalkOptions): Drawing {
   const start = stationOf(line, here.element)
   if (start === undefined) throw new RangeError('the line has no such element; take the place from the line in force')
-  const whole = lineLength(line)
-  const at = start + here.along
-  const railScale = (width - 2 * MARGIN) / Math.max(whole, 1)
-  const list = drawRail(line, at, { back: backwards, x: station => MARGIN + (backwards ? whole - station : station) * railScale }, width, line.system)
+  const list = drawWalkRail(line, start + here.along, { width, backwards })
 
   const elements = elementsOf(line)
   const stood = elements.find(element => element.id === here.element)!
   const own = bayAround(stood, here.along)
-  const scale = Math.min(BAY / Math.max(own.to - own.from, FOOT), HIGHEST / stood.height)
+  const index = elements.indexOf(stood)
+  const ceiling = CEILING / Math.max(...elements.slice(Math.max(0, index - 1), index + 2).map(element => element.height))
+  const scale = Math.min(ceiling, Math.max(LOWEST / stood.height, Math.min(HIGHEST / stood.height, BAY / Math.max(own.to - own.from, FOOT))))
   const centre = start + (own.from + own.to) / 2
   const x = (station: number) => width / 2 + (backwards ? centre - station : station - centre) * scale
 
@@ -122,12 +84,13 @@ export function drawWalk(line: Line, { width, here, marks = {}, backwards = fals
     }
     const mark = marks[element.id] && { ...marks[element.id]!, tags: [] }
     const draw = (from: number, to: number, fabric: Role | null) => to > from || element.length === 0 ? drawElement(piece(from, to), mark, { scale, texture: 6, ground: 'paper', fabric }) : []
-    const seenBays = element.kind === 'run' ? visibleBays(element, place.station, x, width) : { from: 0, to: element.length }
+    const inSight = (along: number) => end(along) - element.height * scale >= TOP && end(along) <= FOOT_LINE
+    const seenBays = element.kind === 'run' ? visibleBays(element, along => x(place.station + along), inSight, width) : inSight(0) && inSight(element.length) ? { from: 0, to: element.length } : null
+    if (!seenBays) continue
     if (element === stood && element.kind === 'run') {
       // Woven up to the bay in hand, grey from there on.
-      const edge = backwards ? own.to : own.from
-      list.push(...draw(backwards ? Math.max(edge, seenBays.from) : seenBays.from, backwards ? seenBays.to : Math.min(edge, seenBays.to), 'pine'))
-      list.push(...draw(backwards ? seenBays.from : Math.max(edge, seenBays.from), backwards ? Math.min(edge, seenBays.to) : seenBays.to, 'line'))
+      const edge = Math.min(Math.max(backwards ? own.to : own.from, seenBays.from), seenBays.to)
+      list.push(...draw(seenBays.from, edge, backwards ? 'line' : 'pine'), ...draw(edge, seenBays.to, backwards ? 'pine' : 'line'))
     }
     else list.push(...draw(seenBays.from, seenBays.to, fabricOf(mark) ?? 'line'))
     const drawn = piece(seenBays.from, seenBays.to)
@@ -143,16 +106,17 @@ export function drawWalk(line: Line, { width, here, marks = {}, backwards = fals
   return { list, width, height: 170 }
 }
 
-/** The bays of a run that the picture shows, whole ones. */
-function visibleBays(element: LineElement, station: Length, x: (s: number) => number, width: number): { from: Length, to: Length } {
-  const shows = (bay: number) => {
-    const [a, b] = [x(station + bayEnd(element, bay - 1)), x(station + bayEnd(element, bay))]
-    return Math.max(a, b) > 0 && Math.min(a, b) < width
+/** The bays of a run that the picture shows, whole ones; on a steep slope those that would climb into the brackets or sink under the figures stay away. */
+function visibleBays(element: LineElement, x: (along: number) => number, inSight: (along: number) => boolean, width: number): { from: Length, to: Length } | null {
+  let [first, last] = [Infinity, 0]
+  for (let bay = 1; bay <= element.bays; bay++) {
+    const ends = [bayEnd(element, bay - 1), bayEnd(element, bay)]
+    const places = ends.map(x)
+    if (Math.max(...places) <= 0 || Math.min(...places) >= width || !ends.every(inSight)) continue
+    first = Math.min(first, bay)
+    last = bay
   }
-  let [first, last] = [1, element.bays]
-  while (first < last && !shows(first)) first++
-  while (last > first && !shows(last)) last--
-  return { from: bayEnd(element, first - 1), to: bayEnd(element, last) }
+  return last ? { from: bayEnd(element, first - 1), to: bayEnd(element, last) } : null
 }
 
 function closePosts(element: LineElement, station: Length, x: (s: number) => number, foot: (along: number) => number, height: number, seen: { from: Length, to: Length }): Shape[] {
@@ -168,7 +132,7 @@ function closePosts(element: LineElement, station: Length, x: (s: number) => num
 
 /** Numbers of bays under the ground, the one in hand large; other elements by their tag. */
 function bayNumbers(element: LineElement, station: Length, x: (s: number) => number, seen: { from: Length, to: Length }, inHand: number): Shape[] {
-  const number = (words: string, at: number, chosen: boolean) => text(x(station + at), 166, words, { size: chosen ? 18 : 15, weight: chosen ? 600 : 400, role: chosen ? 'ink' : 'soft', anchor: 'middle' })
+  const number = (words: string, at: number, chosen: boolean) => text(x(station + at), 166, words, { size: chosen ? 18 : 15, weight: chosen ? 600 : 400, role: chosen ? 'ink' : 'soft', anchor: 'middle', halo: 'paper' })
   if (element.kind !== 'run') return [number(element.tag, element.length / 2, inHand > 0)]
   const list: Shape[] = []
   for (let bay = 1; bay <= element.bays; bay++) {
@@ -179,13 +143,16 @@ function bayNumbers(element: LineElement, station: Length, x: (s: number) => num
   return list
 }
 
-/** Tape tied to the fabric at the very place. */
+/** Tape tied to the fabric at the very place; it flies clear of the sign for "here" in the middle. */
 function closeTags(tags: readonly LineTag[], element: LineElement, station: Length, x: (s: number) => number, foot: (along: number) => number, height: number, width: number): Shape[] {
   return tags.flatMap((tag) => {
     const along = tag.along ?? element.length / 2
     const place = x(station + along)
     if (place < 0 || place > width) return []
     const top = foot(along) - height + 2
-    return [seg('tag', place, top, place, top + 12, { role: tag.state === 'settled' ? 'slate' : tag.state === 'readAgain' ? 'brass' : 'rust' }), ...tapeTag(place, top + 10, tag.words, { state: tag.state, height: 20, size: 14 })]
+    const wide = tapeTagWidth(tag.words, 14)
+    const clear = 18
+    const left = place >= width / 2 + clear || place + wide <= width / 2 - clear ? place : place < width / 2 ? width / 2 - clear - wide : width / 2 + clear
+    return [open('tag', [[place, top], [place, top + 12], [left, top + 12]], { role: tag.state === 'settled' ? 'slate' : tag.state === 'readAgain' ? 'brass' : 'rust' }), ...tapeTag(left, top + 10, tag.words, { state: tag.state, height: 20, size: 14 })]
   })
 }
