@@ -1,3 +1,4 @@
+import { readFileSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
 
 /** The rooms that have a message file of their own under i18n/locales/<language>/. */
@@ -29,6 +30,11 @@ export default defineNuxtConfig({
     prerender: { routes: ['/w'], crawlLinks: false },
     // sharp and pg-boss carry native or dynamic parts; Nitro traces them into .output itself
     esbuild: { options: { target: 'node20' } },
+    // A checklist is read as its text (`?raw`), on the server too, where Vite is not at hand.
+    rollupConfig: { output: {}, plugins: [{
+      name: 'yaml-as-text',
+      load: (id: string) => id.endsWith('.yaml?raw') ? `export default ${JSON.stringify(readFileSync(id.slice(0, -4), 'utf8'))}` : null,
+    }] },
   },
   typescript: { strict: true },
   telemetry: false,

@@ -1,0 +1,62 @@
+import { createHash } from 'node:crypto'
+import type { KeptEntry } from '../../../shared/entry/entry'
+import { isKnown } from '../../../shared/entry/entry'
+import { readEntry } from '../../../shared/entry/readEntry'
+import type { Line } from '../../../shared/line/line'
+import type { RoundBasis } from '../../../shared/round/basis'
+import { fold } from '../../../shared/round/fold'
+import { tasksFor } from '../../../shared/round/makeBasis'
+import type { RoundOutcome } from '../../../shared/round/outcome'
+import type { LockedRound } from '../../database/queries/entry'
+import { entriesAfter } from '../../database/queries/entry'
+import { basesOf } from '../../database/queries/round'
+import type { Tx } from '../../database/withSession'
+
+const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
+
+/** Parsed entries of the rounds in hand, so that a push does not read thousands of texts again. Only a cache: checked against the round's own number. */
+const parsed = new Map<string, { accepted: number, entries: KeptEntry[] }>()
+const ROUNDS_KEPT = 24
+const bases = new Map<string, RoundBasis>()
+
+/** A basis by its digest: canonical text never changes, so it is parsed once a process. */
+export function readBasis(digest: string, text: string): RoundBasis {
+  const kept = bases.get(digest)
+  if (kept) return kept
+  const basis = JSON.parse(text) as RoundBasis
+  if (bases.size > 200) bases.clear()
+  bases.set(digest, basis)
+  return basis
+}
+
+/** All entries of a round up to its accepted number, parsed. `fresh` are those that this transaction has just stored. */
+export async function entriesOf(tx: Tx, round: { id: string, accepted: number }, fresh: KeptEntry[] = []): Promise<KeptEntry[]> {
+  const before = round.accepted - fresh.length
+  const kept = parsed.get(round.id)
+  const entries = kept && kept.accepted === before ? kept.entries : await readAll(tx, round.id, before)
+  return [...entries, ...fresh]
+}
+
+async function readAll(tx: Tx, roundId: string, upTo: number): Promise<KeptEntry[]> {
+  const rows = upTo > 0 ? await entriesAfter(tx, roundId, 0, upTo) : []
+  return rows.map((row) => {
+    const read = readEntry(row, { number: row.number, mayBeErased: true, sha256 })
+    if (read.state === 'refused') throw new Error(`a stored entry of round ${roundId}, number ${row.number}, cannot be read: ${read.refusal.code}`)
+    return read.entry
+  })
+}
+
+/** Remembers what a committed transaction left behind; after a rollback nothing is remembered and the next one reads again. */
+export function rememberEntries(roundId: string, accepted: number, entries: KeptEntry[]): void {
+  parsed.delete(roundId)
+  parsed.set(roundId, { accepted, entries })
+  if (parsed.size > ROUNDS_KEPT) parsed.delete(parsed.keys().next().value!)
+}
+
+/** What a round comes to now. */
+export async function foldRound(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ outcome: RoundOutcome, line: Line, entries: KeptEntry[], bases: Map<string, RoundBasis>, signatures: number }> {
+  const all = await entriesOf(tx, round, fresh)
+  const held = new Map((await basesOf(tx, round.jobId)).map(({ digest, text }) => [digest, readBasis(digest, text)]))
+  const outcome = fold(all, held, { basis: round.basis, tasksFor })
+  return { outcome, line: outcome.line, entries: all, bases: held, signatures: all.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length }
+}

@@ -1,0 +1,22 @@
+import type { KeptEntry } from '../../../shared/entry/entry'
+import type { LockedRound } from '../../database/queries/entry'
+import * as states from '../../database/queries/state'
+import type { Tx } from '../../database/withSession'
+import { jobSummary } from '../job/jobSummary'
+import { foldRound } from './foldRound'
+
+/**
+ * Writes the fold's result for lists, in the accepting transaction: round, checks, deficiencies, and what the list of jobs shows. Only what changed is
+ * written. A sealed round's late entries change nothing.
+ */
+export async function keepState(tx: Tx, round: LockedRound, accepted: KeptEntry[]): Promise<void> {
+  if (round.state === 'sealed') return
+  const { outcome, line, signatures } = await foldRound(tx, round, accepted)
+  const before = await states.readOutcome(tx, round.id)
+  await states.writeOutcome(tx, round.id, round.accepted, outcome)
+  await states.writeChecks(tx, round.id, before?.checks ?? [], outcome.checks)
+  await states.writeDeficiencies(tx, round.id, round.jobId, before?.deficiencies ?? [], outcome.deficiencies)
+  await states.writeJobSummary(tx, round.jobId, jobSummary(line, outcome, signatures))
+}
+
+export const countSignatures = (entries: KeptEntry[]) => entries.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length
