@@ -3,7 +3,7 @@ import fs from 'node:fs'
 import path from 'node:path'
 import process from 'node:process'
 import { data } from './dataFolder.mjs'
-import { bornAt, endGroup } from './processes.mjs'
+import { bornAt, endGroup, tellStarts } from './processes.mjs'
 import { Trouble } from './steps.mjs'
 import { writeWhole } from './secrets.mjs'
 
@@ -13,7 +13,7 @@ const mine = { pid: process.pid, born: bornAt(process.pid), what: '', children: 
 function read() {
   try { return JSON.parse(fs.readFileSync(file, 'utf8')) }
   catch (error) {
-    if (error.code === 'ENOENT' || error instanceof SyntaxError) return null
+    if (['ENOENT', 'ENOTDIR', 'EACCES'].includes(error.code) || error instanceof SyntaxError) return null // not ours, then
     throw error
   }
 }
@@ -36,13 +36,11 @@ export async function claimDataFolder(what) {
     if (error.code === 'EEXIST') throw new Trouble(`Another start is using the data folder ${data.root} at this very moment. Wait for it, or set SMOOTHSIDE_DATA to another folder.`)
     throw error
   }
+  tellStarts((name, pid) => {
+    mine.children = [...mine.children.filter(child => child.name !== name), { name, pid, born: bornAt(pid) }]
+    writeWhole(file, JSON.stringify(mine))
+  })
   return left.length ? `an earlier start was broken off; ended what it left running: ${left.map(child => child.name).join(', ')}` : data.root
-}
-
-/** Writes down a program that was started under this claim. */
-export function noteChild(name, pid) {
-  mine.children = [...mine.children.filter(child => child.name !== name), { name, pid, born: bornAt(pid) }]
-  writeWhole(file, JSON.stringify(mine))
 }
 
 export const holdsDataFolder = () => read()?.pid === process.pid

@@ -53,6 +53,8 @@ export function openDataFolder({ restoring = false } = {}) {
     if (['EACCES', 'EPERM'].includes(error.code))
       throw new Trouble(`This user may not write in the data folder ${root}${error.path && error.path !== root ? ` (${error.path})` : ''}. Start as the user who owns it, or set SMOOTHSIDE_DATA to a folder of your own.`)
     if (error.code === 'ENOTDIR') throw new Trouble(`${root} cannot be a folder, because a part of that path is a file. Set SMOOTHSIDE_DATA to another folder.`)
+    // Node says ENOENT when a disk that may not be written refuses a new folder
+    if (['EROFS', 'ENOENT'].includes(error.code)) throw new Trouble(`The data folder ${root} cannot be made or written: its disk takes no changes. Set SMOOTHSIDE_DATA to a folder on another disk.`)
     throw error
   }
   if (!restoring && fs.existsSync(data.restoreMark)) throw new Trouble(`A restore into ${root} was broken off, so what lies there is not whole. Remove that folder and restore again.`)

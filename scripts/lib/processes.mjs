@@ -20,6 +20,10 @@ export function bornAt(pid) {
 }
 
 const running = new Set()
+let note = () => { /* nobody wants to know */ }
+/** From now on every start is told: what runs, and its process number. @param {(name: string, pid: number) => void} tell */
+export const tellStarts = (tell) => { note = tell }
+
 const pause = milliseconds => new Promise(resolve => setTimeout(resolve, milliseconds))
 
 function signalGroup(pid, signal) {
@@ -44,11 +48,12 @@ export async function endAll(patience) {
 }
 
 /** Starts a program with its output in a file, or on our terminal when none is named. */
-export function startProgram(command, parameters, { env, cwd, log }) {
+export function startProgram(name, command, parameters, { env, cwd, log }) {
   const out = log ? fs.openSync(log, 'a', 0o600) : 'inherit'
   const child = spawn(command, parameters, { cwd, env, detached: true, stdio: ['ignore', out, out] })
   if (log) fs.closeSync(out)
   running.add(child)
+  if (child.pid) note(name, child.pid)
   child.once('exit', () => running.delete(child))
   child.once('error', () => running.delete(child))
   return child
@@ -61,7 +66,7 @@ export async function runProgram(what, command, parameters, { env = process.env,
   fs.mkdirSync(path.dirname(log), { recursive: true })
   fs.writeFileSync(log, '', { mode: 0o600 })
   const begin = Date.now()
-  const child = startProgram(command, parameters, { env, cwd, log })
+  const child = startProgram(what, command, parameters, { env, cwd, log })
   const life = setInterval(() => say(`still at it, ${Math.round((Date.now() - begin) / 1000)} s`), 15_000)
   try {
     const code = await new Promise((resolve, reject) => child.once('error', reject).once('exit', (status, signal) => resolve(status ?? signal)))
@@ -73,24 +78,15 @@ export async function runProgram(what, command, parameters, { env = process.env,
   finally { clearInterval(life) }
 }
 
-/**
- * Starts a program that must keep running: when it ends by itself it is started again, and given up after six quick ends.
- * @param {string} name
- * @param {() => import('node:child_process').ChildProcess} start
- * @param {{ onStart: (pid: number) => void, onGivenUp: (name: string) => void }} on
- */
-export function keepRunning(name, start, { onStart, onGivenUp }) {
+/** Starts a program that must keep running: when it ends by itself it is started again, and given up after six quick ends. */
+export function keepRunning(name, start, onGivenUp) {
   const ends = []
-  const begin = () => {
-    const child = start()
-    if (child.pid) onStart(child.pid)
-    child.once('exit', (code, signal) => {
-      if (ending) return
-      ends.push(Date.now())
-      if (ends.filter(at => Date.now() - at < 60_000).length >= 6) return onGivenUp(name)
-      console.error(`  ${name} ended unexpectedly (${signal ?? code}) and is started again`)
-      setTimeout(() => { if (!ending) begin() }, 200 * 2 ** Math.min(ends.length - 1, 4))
-    })
-  }
+  const begin = () => start().once('exit', (code, signal) => {
+    if (ending) return
+    ends.push(Date.now())
+    if (ends.filter(at => Date.now() - at < 60_000).length >= 6) return onGivenUp()
+    console.error(`  ${name} ended unexpectedly (${signal ?? code}) and is started again`)
+    setTimeout(() => { if (!ending) begin() }, 200 * 2 ** Math.min(ends.length - 1, 4))
+  })
   begin()
 }

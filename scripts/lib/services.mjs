@@ -2,7 +2,7 @@
 import fs from 'node:fs'
 import path from 'node:path'
 import process from 'node:process'
-import { holdsDataFolder, noteChild, releaseDataFolder } from './claim.mjs'
+import { holdsDataFolder, releaseDataFolder } from './claim.mjs'
 import { answeringPort, startCluster, stopCluster } from './cluster.mjs'
 import { data, projectRoot } from './dataFolder.mjs'
 import { freePort, portIsFree } from './ports.mjs'
@@ -39,8 +39,9 @@ export async function runServices(main) {
   const parent = process.ppid
   const orphaned = setInterval(() => { if (process.env.npm_lifecycle_event && process.ppid !== parent) void stopBecause('The npm that started this is gone; stopping ...', 0) }, 1000)
   orphaned.unref()
-  await runScript(main, async () => {
-    if (stopping) return new Promise(() => { /* the signal's own way ends the process */ })
+  await runScript(main, async (tell) => {
+    if (stopping) return // the signal's own way ends the process; what failed, failed because of it
+    tell()
     await stopAll().catch(error => console.error(explain(error) ?? error))
     process.exit(1)
   })
@@ -61,10 +62,7 @@ export async function webPort() {
 /** Starts one of our services and keeps it running. */
 export function startService(name, { command, parameters, ...options }) {
   if (options.log && (fs.statSync(options.log, { throwIfNoEntry: false })?.size ?? 0) > 10e6) fs.renameSync(options.log, `${options.log}.1`)
-  keepRunning(name, () => startProgram(command, parameters, options), {
-    onStart: pid => noteChild(name, pid),
-    onGivenUp: () => void stopBecause(`${name} ends again and again.${options.log ? ` The end of ${options.log}:\n${lastLines(options.log)}` : ''}`, 1),
-  })
+  keepRunning(name, () => startProgram(name, command, parameters, options), () => void stopBecause(`${name} ends again and again.${options.log ? ` The end of ${options.log}:\n${lastLines(options.log)}` : ''}`, 1))
 }
 
 /** Mail goes to the catcher unless the environment names a mail server. */

@@ -29,20 +29,24 @@ export function explain(error) {
     return `The disk is full${where ? ` (while writing ${where})` : ''}. Free some space, or set SMOOTHSIDE_DATA to a folder on another disk, and start again.`
   if (/EACCES|EPERM|Permission denied/i.test(text))
     return `This user may not read or write ${where || 'a file that is needed'} (${text.trim()}). Start as the user who owns it, or set SMOOTHSIDE_DATA to a folder of your own.`
-  if (/EROFS/.test(text)) return `${where || 'The folder'} is on a disk that cannot be written. Set SMOOTHSIDE_DATA to a folder that can.`
   return null
 }
 
-/** The outermost frame of a script: a trouble is one clear sentence on the screen, a fault of ours comes with its stack. */
-export async function runScript(main, onTrouble = async () => {}) {
+/**
+ * The outermost frame of a script: a trouble is one clear sentence on the screen, a fault of ours comes with its stack.
+ * @param {() => unknown} main
+ * @param {(tell: () => void) => unknown} [onTrouble] may do something first, or leave out the telling
+ */
+export async function runScript(main, onTrouble = tell => tell()) {
   try {
     await main()
   }
   catch (error) {
-    const sentence = explain(error)
-    console.error(`\n${paint(31, 'Stopped.')} ${sentence ?? 'Smoothside met a fault of its own:'}`)
-    if (!sentence) console.error(error)
-    await onTrouble(error)
     process.exitCode = 1
+    await onTrouble(() => {
+      const sentence = explain(error)
+      console.error(`\n${paint(31, 'Stopped.')} ${sentence ?? 'Smoothside met a fault of its own:'}`)
+      if (!sentence) console.error(error)
+    })
   }
 }
