@@ -1,7 +1,10 @@
 import type { System } from '../measure/length'
 import type { FigureKey } from './boundDistance'
-import type { Limit } from './limit'
+import type { HeldLimits, LimitsGiven } from './heldLimits'
+import type { Bound } from './limit'
 import { boundDistance, figureKey } from './boundDistance'
+import { commonFigures } from './commonFigures'
+import { heldLimits } from './heldLimits'
 import { LimitRefused } from './limitRefused'
 
 /** A reading as the rules see it; a reading's value of method `measure` fits as it is. */
@@ -47,18 +50,24 @@ const VERDICTS = ['conforms', 'withinError', 'doesNotConform'] as const
  * Simple and guarded acceptance as in ILAC G8:09/2019 with guard band w = U: conforms within [L + U, H - U], does not conform outside [L - U, H + U], else within
  * measuring error. An end that itself conforms belongs to the accepting side in both; an end that does not ("over", "under") to the other.
  *
+ * The figure of the reading's system decides; where several limits print one figure in the other system and differ only by its rounding in this one, that common figure does.
+ *
  * @param limits - one limit, several, or a record of which `options.keys` hold (all when not given); of one unit, measurand and datum
  * @throws {LimitRefused} notWhole, tooLarge, uncertainty, noSystem, noFigure, unknownLimit, unitsDiffer, measurandsDiffer, datumsDiffer
  */
-export function judge(reading: JudgedReading, limits: Limit | readonly Limit[] | Readonly<Record<string, Limit>>, options: JudgeOptions = {}): Judgement {
+export function judge(reading: JudgedReading, limits: LimitsGiven, options: JudgeOptions = {}): Judgement {
   const { amount, system } = reading
   const uncertainty = options.acceptance === 'guarded' ? reading.uncertainty ?? 0 : 0
   checkAmount(amount)
   checkAmount(uncertainty)
   if (uncertainty < 0) throw new LimitRefused('uncertainty')
   const held = heldLimits(limits, options.keys)
+  for (const [at, limit] of held.limits.entries()) {
+    if (limit.datum !== held.limits[0]!.datum) throw new LimitRefused('datumsDiffer', held.keys[at])
+  }
   const acceptance = uncertainty > 0 ? 'guarded' : 'simple'
-  const worst = appraise(held, amount, system, uncertainty, false)
+  const read: Read = { held, system, uncertainty, common: boundsOfCommonFigures(held, system) }
+  const worst = appraise(read, amount, false)
   if (worst === null) return { verdict: 'noLimit', margin: null, limit: null, end: null, decidedBy: null, otherSystemDiffers: false, acceptance, neverConforms: false }
   return {
     verdict: VERDICTS[worst.rank],
@@ -66,9 +75,9 @@ export function judge(reading: JudgedReading, limits: Limit | readonly Limit[] |
     limit: worst.limit,
     end: worst.end,
     decidedBy: worst.by,
-    otherSystemDiffers: worst.dual && appraise(held, amount, system, uncertainty, true)!.rank !== worst.rank,
+    otherSystemDiffers: worst.dual && appraise(read, amount, true)!.rank !== worst.rank,
     acceptance,
-    neverConforms: uncertainty > 0 && worst.rank > 0 && !canConform(held, amount, system, uncertainty),
+    neverConforms: uncertainty > 0 && worst.rank > 0 && !canConform(read, amount),
   }
 }
 
@@ -78,38 +87,24 @@ function checkAmount(amount: number): void {
   if (Math.abs(amount) > 2 ** 52) throw new LimitRefused('tooLarge')
 }
 
-interface Held { keys: readonly string[], limits: readonly Limit[] }
-
-function heldLimits(limits: Limit | readonly Limit[] | Readonly<Record<string, Limit>>, named: readonly string[] | undefined): Held {
-  if (isOne(limits)) return { keys: [limits.id], limits: [limits] }
-  const several: readonly Limit[] | null = Array.isArray(limits) ? limits : null
-  const record = limits as Readonly<Record<string, Limit>>
-  const keys = several ? several.map(limit => limit.id) : named ?? Object.keys(record)
-  const found = several ?? keys.map((key) => {
-    if (!Object.hasOwn(record, key)) throw new LimitRefused('unknownLimit', key)
-    return record[key]!
-  })
-  const first = found[0]
-  for (let at = 1; at < found.length; at++) {
-    const limit = found[at]!
-    if (limit.unit !== first!.unit) throw new LimitRefused('unitsDiffer', keys[at])
-    if (limit.measurand !== first!.measurand) throw new LimitRefused('measurandsDiffer', keys[at])
-    if (limit.datum !== first!.datum) throw new LimitRefused('datumsDiffer', keys[at])
-  }
-  return { keys, limits: found }
-}
-
-function isOne(limits: Limit | readonly Limit[] | Readonly<Record<string, Limit>>): limits is Limit {
-  return typeof (limits as Limit).id === 'string'
-}
-
 /** Index into {@link VERDICTS}. */
 type Rank = 0 | 1 | 2
 interface Appraisal { rank: Rank, margin: number, limit: string, end: 'low' | 'high' | 'avoid', by: FigureKey, dual: boolean }
 
+/** What a reading is held against; `common`: ends that are decided by the other system's figure, since several sources print that one alike. */
+interface Read { held: HeldLimits, system: System | undefined, uncertainty: number, common: ReadonlySet<Bound> | null }
+
+function boundsOfCommonFigures({ keys, limits }: HeldLimits, system: System | undefined): ReadonlySet<Bound> | null {
+  if (limits.length < 2 || limits[0]!.unit !== 'length' || system === undefined) return null
+  const ends = limits.flatMap(({ low, high, avoid }, at) => [low, high, avoid?.low, avoid?.high].flatMap(bound => bound ? [{ limit: keys[at]!, bound, datum: '' }] : []))
+  const groups = commonFigures(ends, system)
+  return groups.length > 0 ? new Set(groups.flatMap(group => group.ends.map(end => end.bound))) : null
+}
+
 /** The part of the limits that governs; null when there is none. */
-function appraise(held: Held, amount: number, system: System | undefined, uncertainty: number, prefersOther: boolean): Appraisal | null {
+function appraise({ held, system, uncertainty, common }: Read, amount: number, prefersOther: boolean): Appraisal | null {
   let worst: Appraisal | null = null
+  const isCommon = (bound: Bound) => common !== null && common.has(bound)
   let dual = false
   const offer = (rank: Rank, margin: number, limit: string, end: Appraisal['end'], by: FigureKey) => {
     if (worst === null) worst = { rank, margin, limit, end, by, dual }
@@ -126,20 +121,20 @@ function appraise(held: Held, amount: number, system: System | undefined, uncert
     const { unit, low, high, avoid } = held.limits[at]!
     if (low) {
       dual ||= low.imperial !== undefined && low.metric !== undefined
-      const by = figureKey(low, unit, system, key, prefersOther)
+      const by = figureKey(low, unit, system, key, prefersOther !== isCommon(low))
       const inside = boundDistance(amount, low, by, 'above', unit, system, low.inclusive)
       offer(rankOf(inside, uncertainty, low.inclusive), inside, key, 'low', by)
     }
     if (high) {
       dual ||= high.imperial !== undefined && high.metric !== undefined
-      const by = figureKey(high, unit, system, key, prefersOther)
+      const by = figureKey(high, unit, system, key, prefersOther !== isCommon(high))
       const inside = boundDistance(amount, high, by, 'below', unit, system, high.inclusive)
       offer(rankOf(inside, uncertainty, high.inclusive), inside, key, 'high', by)
     }
     if (avoid) {
       dual ||= (avoid.low.imperial !== undefined && avoid.low.metric !== undefined) || (avoid.high.imperial !== undefined && avoid.high.metric !== undefined)
-      const byLow = figureKey(avoid.low, unit, system, key, prefersOther)
-      const byHigh = figureKey(avoid.high, unit, system, key, prefersOther)
+      const byLow = figureKey(avoid.low, unit, system, key, prefersOther !== isCommon(avoid.low))
+      const byHigh = figureKey(avoid.high, unit, system, key, prefersOther !== isCommon(avoid.high))
       // An end that is inside the band does not conform; beside the band it is enough to be clear of one end.
       const below = boundDistance(amount, avoid.low, byLow, 'below', unit, system, !avoid.low.inclusive)
       const above = boundDistance(amount, avoid.high, byHigh, 'above', unit, system, !avoid.high.inclusive)
@@ -157,15 +152,16 @@ function rankOf(inside: number, uncertainty: number, endConforms: boolean): Rank
 }
 
 /** Whether any amount conforms: if one does, then one that is only just far enough above a low end or a band does. */
-function canConform(held: Held, amount: number, system: System | undefined, uncertainty: number): boolean {
+function canConform(read: Read, amount: number): boolean {
+  const { held, system, uncertainty, common } = read
   let bounded = false
   for (const [at, { unit, low, avoid }] of held.limits.entries()) {
     bounded ||= low !== null
     for (const [bound, endConforms] of [[low, low?.inclusive], [avoid?.high, avoid && !avoid.high.inclusive]] as const) {
       if (!bound) continue
-      const inside = boundDistance(amount, bound, figureKey(bound, unit, system, held.keys[at]!), 'above', unit, system, endConforms!)
+      const inside = boundDistance(amount, bound, figureKey(bound, unit, system, held.keys[at]!, common?.has(bound)), 'above', unit, system, endConforms!)
       const nearest = amount - inside + uncertainty + (endConforms ? 0 : 1)
-      if (appraise(held, nearest, system, uncertainty, false)!.rank === 0) return true
+      if (appraise(read, nearest, false)!.rank === 0) return true
     }
   }
   return !bounded
