@@ -499,7 +499,7 @@ CREATE INDEX "job_needed" ON "job" USING btree ("organisation_id","needed_by","i
 CREATE INDEX "job_state" ON "job" USING btree ("organisation_id","state","needed_by","id");--> statement-breakpoint
 CREATE INDEX "job_site" ON "job" USING btree ("organisation_id","site_id");--> statement-breakpoint
 CREATE INDEX "job_given_account" ON "job_given" USING btree ("account_id","organisation_id");--> statement-breakpoint
-CREATE UNIQUE INDEX "provision_in_force" ON "provision" USING btree ("organisation_id","authority_id","client_id","setting","measurand") WHERE ended_at is null;--> statement-breakpoint
+CREATE INDEX "provision_in_force" ON "provision" USING btree ("organisation_id","measurand") WHERE ended_at is null;--> statement-breakpoint
 CREATE INDEX "site_client" ON "site" USING btree ("organisation_id","client_id");--> statement-breakpoint
 CREATE INDEX "delivery_recipient" ON "delivery_event" USING btree ("organisation_id","recipient_id");--> statement-breakpoint
 CREATE INDEX "log_leaf_record" ON "log_leaf" USING btree ("record_id");--> statement-breakpoint

@@ -58,7 +58,7 @@ export const provision = pgTable('provision', {
   primaryKey({ columns: [table.organisationId, table.id] }),
   foreignKey({ columns: [table.organisationId, table.authorityId], foreignColumns: [authority.organisationId, authority.id] }),
   foreignKey({ columns: [table.organisationId, table.clientId], foreignColumns: [client.organisationId, client.id] }),
-  uniqueIndex('provision_in_force').on(table.organisationId, table.authorityId, table.clientId, table.setting, table.measurand).where(sql`ended_at is null`),
+  index('provision_in_force').on(table.organisationId, table.measurand).where(sql`ended_at is null`),
 ])
 
 export const job = pgTable('job', {

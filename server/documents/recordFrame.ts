@@ -1,0 +1,113 @@
+import type { Drawing } from '../../shared/drawing/displayList'
+import { diamond, path, type DiamondState } from '../../shared/drawing/displayList'
+import type { LineElement } from '../../shared/line/line'
+import { elementsOf } from '../../shared/line/line'
+import type { RecordCheck, RecordDocument } from '../../shared/record/record'
+import { PAPER } from './paper'
+import type { Sheet, Words } from './sheet'
+import type { Speech } from './speech'
+import { fill, grouped } from './wording'
+
+/** What the parts of a record share while it is built. */
+export interface Frame {
+  sheet: Sheet
+  record: RecordDocument
+  say: Speech
+  digest: string
+  elements: Map<string, LineElement>
+  /** Number of each photo on the pages, by digest. */
+  photoNumbers: Map<string, number>
+}
+
+export function frameOf(sheet: Sheet, record: RecordDocument, say: Speech, digest: string): Frame {
+  return {
+    sheet, record, say, digest,
+    elements: new Map(elementsOf(record.line).map(element => [element.id, element])),
+    photoNumbers: new Map(record.photos.map((photo, at) => [photo.digest, at + 1])),
+  }
+}
+
+/** The short name of an element; elements that a later version of the line struck keep their id as a name. */
+export function tagOf({ elements }: Frame, element: string | null): string {
+  return element === null ? '' : elements.get(element)?.tag ?? element.slice(0, 8)
+}
+
+/** The verdict of a check as its diamond has it. */
+export function diamondStateOf(check: Pick<RecordCheck, 'verdict' | 'settled'>): DiamondState {
+  return check.settled && check.verdict === 'conforms' ? 'settled' : check.verdict
+}
+
+/** A verdict diamond beside its word, painted as an artifact: the word says it. */
+export function placeDiamond(sheet: Sheet, state: DiamondState, x: number, top: number, size: number): void {
+  sheet.drawing({ list: diamond(state, 0, 0, 24), width: 24, height: 24 }, x, top, size / 24, null)
+}
+
+/** The heading of a part: light, then in medium weight what it is about; on a new page unless there is room for it and what follows. */
+export function heading({ sheet }: Frame, [light, strong]: string[], room = 150): void {
+  sheet.room(room)
+  if (sheet.y > PAPER.top) sheet.y += 22
+  const block = sheet.lay([{ text: light!, weight: 300 }, { text: strong!, weight: 500 }], PAPER.right - PAPER.left, { size: 20.25, lead: 25 })
+  sheet.place(block, PAPER.left, sheet.y - 6, 'H1')
+  sheet.y += block.height + 4
+}
+
+/** A smaller heading under a rule, for a column. */
+export function columnHeading({ sheet }: Frame, words: string, x: number, top: number, width: number): number {
+  sheet.rule(top, { x1: x, x2: x + width })
+  const block = sheet.lay(words, width, { size: 9.75, weight: 500, lead: 13 })
+  sheet.place(block, x, top + 4.5, 'H2')
+  return top + 4.5 + block.height + 2.5
+}
+
+export interface Column { x: number, width: number, head?: string }
+
+/** A row of a table whose cells are texts; the first is the row's head where `head` says so. Keeps a row on one page. */
+export function tableRow({ sheet }: Frame, columns: Column[], cells: (Words | null)[], { head = false, size = 8.6, before = 5, after = 5, rule = true, marks = [] as { column: number, state: DiamondState }[] } = {}): void {
+  const inset = (at: number) => marks.some(mark => mark.column === at) ? 15 : 0
+  const blocks = columns.map((column, at) => sheet.lay(cells[at] ?? '', column.width - inset(at), { size, lead: size * 1.38, ...(head && { weight: 500, role: 'soft' as const }) }))
+  const height = Math.max(...blocks.map(block => block.height))
+  sheet.room(before + height + after)
+  const top = sheet.y + before
+  sheet.structure.within('TR', () => blocks.forEach((block, at) => {
+    const column = columns[at]!
+    const mark = marks.find(one => one.column === at)
+    if (mark) placeDiamond(sheet, mark.state, column.x, top + size * 0.1, size * 1.2)
+    sheet.structure.within(head || at === 0 ? 'TH' : 'TD', () => sheet.place(block, column.x + inset(at), top, null), head ? { scope: 'Column' } : at === 0 ? { scope: 'Row' } : {})
+  }))
+  sheet.y = top + height + after
+  if (rule) sheet.rule(sheet.y, head ? {} : { width: 0.75, role: 'line' })
+}
+
+const LOGO: Drawing = {
+  width: 32, height: 32,
+  list: [path('text', 'M18.8 5.2L29.6 16L16 29.6L2.4 16L14.2 4.2Q16.4 2 18.6 4.2Q21 6.8 18.4 9.6L12.6 15.4', { role: 'pine', width: 3.2 })],
+}
+
+/** Running head and foot of one page. */
+export function paintHeadAndFoot(sheet: Sheet, { name, head, foot, check, page }: { name: string, head: string, foot: string, check: string, page: string }): void {
+  sheet.drawing(LOGO, PAPER.left, 38.5, 0.4, null)
+  sheet.placeArtifact(sheet.lay(name, 250, { size: 9, weight: 500, lead: 13 }), PAPER.left + 18.75, 38)
+  sheet.placeArtifact(oneLine(sheet, head, 270), PAPER.right - 270, 38, 'right')
+  sheet.rule(56.5)
+  sheet.rule(733, { width: 0.75 })
+  sheet.placeArtifact(sheet.lay(foot, 420, { size: 8.25, role: 'soft', lead: 12 }), PAPER.left, 737.5)
+  sheet.placeArtifact(sheet.lay(check, 500, { size: 8.25, role: 'soft', lead: 12 }), PAPER.left, 749.5)
+  sheet.placeArtifact(sheet.lay(page, 84, { size: 8.25, role: 'soft', lead: 12 }), PAPER.right - 84, 737.5, 'right')
+}
+
+/** A head that is too long loses its end, visibly: it only repeats what page 1 says in full. */
+function oneLine(sheet: Sheet, text: string, width: number) {
+  const style = { size: 9, role: 'soft' as const, lead: 13 }
+  let short = text
+  while (short.length > 8 && sheet.lay(short, width, style).lines.length > 1) short = `${short.slice(0, -2).trimEnd()}\u2026`
+  return sheet.lay(short, width, style)
+}
+
+export function scopeTitle({ record, say }: Pick<Frame, 'record' | 'say'>): string {
+  return fill(say.w.titles.scope[record.scope], { n: record.number })
+}
+
+/** A digest short enough for a foot, still telling: its first and last figures. */
+export function shortDigest(digest: string): string {
+  return `${grouped(digest.slice(0, 16))} \u2026 ${digest.slice(-4)}`
+}

@@ -1,0 +1,26 @@
+import type { z } from 'zod'
+import type { numberInputSchema, numbersOfSchema } from '../../../shared/api/numbers'
+import type { Provision } from '../../../shared/provision/provision'
+import * as provisions from '../../database/queries/provision'
+import type { Session } from '../../database/withSession'
+import { withSession } from '../../database/withSession'
+import { Failure, notFound } from '../failure'
+
+/** The numbers in force of an authority, a client's specification or the organisation itself. */
+export const listProvisions = (who: Session, of: z.infer<typeof numbersOfSchema>): Promise<Provision[]> => withSession(who, tx => provisions.listProvisions(tx, of.authorityId ?? null, of.clientId ?? null))
+
+/** Writes a number. One on the same measurand, setting and condition of the same source ends: numbers are never edited. */
+export async function putProvision(who: Session & { accountId: string }, input: z.infer<typeof numberInputSchema>): Promise<void> {
+  await withSession(who, async (tx) => {
+    if (await provisions.isThere(tx, input.provision.id)) return
+    await provisions.endSame(tx, input)
+    await provisions.insertProvision(tx, input, who.accountId).catch((error: { code?: string }) => {
+      if (error.code === '23503') throw new Failure('invalid', 'Choose whose number it is again: the authority or client is not here.', [{ pointer: '/authorityId', code: 'unknown', detail: 'Choose it again.' }])
+      throw error
+    })
+  })
+}
+
+export const endProvision = (who: Session, id: string) => withSession(who, async (tx) => {
+  if (!await provisions.endOne(tx, id)) throw notFound('number')
+})

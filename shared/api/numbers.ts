@@ -1,0 +1,12 @@
+import { z } from 'zod'
+import { SETTINGS } from '../line/line'
+import { provisionSchema } from '../provision/provision'
+
+/** Whose numbers: an authority's, or a client's standing specification, or (neither) the organisation's own. */
+export const numbersOfSchema = z.object({ authorityId: z.string().uuid().optional(), clientId: z.string().uuid().optional() }).strict()
+  .refine(of => !(of.authorityId && of.clientId), 'Numbers are an authority\'s or a client\'s, not both.')
+export const numberInputSchema = z.object({ authorityId: z.string().uuid().nullable(), clientId: z.string().uuid().nullable(), provision: provisionSchema }).strict()
+  .refine(({ provision }) => z.string().uuid().safeParse(provision.id).success, { path: ['provision', 'id'], message: 'The id has to be a UUID made by the caller.' })
+  .refine(({ authorityId, clientId, provision }) => provision.kind === (authorityId ? 'authority' : clientId ? 'specification' : 'organisation'), { path: ['provision', 'kind'], message: 'The kind has to fit whose number it is.' })
+export const numberEndSchema = z.object({ id: z.string().uuid() }).strict()
+export const settingSchema = z.enum(SETTINGS)
