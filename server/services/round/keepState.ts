@@ -18,5 +18,3 @@ export async function keepState(tx: Tx, round: LockedRound, accepted: KeptEntry[
   await states.writeDeficiencies(tx, round.id, round.jobId, before?.deficiencies ?? [], outcome.deficiencies)
   await states.writeJobSummary(tx, round.jobId, jobSummary(line, outcome, signatures))
 }
-
-export const countSignatures = (entries: KeptEntry[]) => entries.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length

@@ -1,0 +1,140 @@
+import type { PDFImage } from 'pdf-lib'
+import { tapeTag, tapeTagWidth } from '../../shared/drawing/displayList'
+import { tapeOf } from '../../shared/line/lineMark'
+import type { RecordDeficiency, RecordPhoto, RecordStep } from '../../shared/record/record'
+import { MEASURE, PAPER } from './paper'
+import type { Frame } from './recordFrame'
+import { heading, tagOf } from './recordFrame'
+import { fill, sentence } from './wording'
+
+export type Images = Map<string, PDFImage>
+const GAP = 16
+const PHOTO = { width: (MEASURE - 2 * GAP) / 3, height: 116 }
+
+/** Each deficiency from its finding to where it stands, what is open first, with its photos in the order of its history. */
+export function paintDeficiencies(frame: Frame, images: Images): void {
+  const { sheet, record, say } = frame
+  sheet.newPage()
+  sheet.structure.within('Sect', () => {
+    heading(frame, say.w.titles.deficiencies)
+    if (record.deficiencies.length === 0) sheet.paragraph(say.w.phrases.noDeficiency)
+    const open = (one: RecordDeficiency) => one.state.startsWith('ended') ? 1 : 0
+    for (const one of [...record.deficiencies].sort((a, b) => open(a) - open(b))) paintDeficiency(frame, one, images)
+  })
+}
+
+function paintDeficiency(frame: Frame, one: RecordDeficiency, images: Images): void {
+  const { sheet, record, say } = frame
+  const { states, classes } = say.w
+  const check = record.checks.find(each => each.element === one.element && each.check === one.check)
+  const place = say.place(one.place)
+  const photos = photosOf(frame, one)
+  const x = PAPER.left + 60
+  const title = sheet.lay([{ text: `${tagOf(frame, one.element)}: ${check?.title ?? one.check}`, weight: 500 }], PAPER.right - x, { size: 10.5, lead: 14 })
+  const state = fill(states[one.state], { who: one.assignedTo ?? '', for: one.waitsFor ?? '' })
+  const stands = sheet.lay([{ text: sentence(state), weight: 500 }, { text: ` \u00b7 ${classes[one.class]}${place ? ` \u00b7 ${place}` : ''}`, role: 'soft' }], PAPER.right - x, { size: 8.8, lead: 12.4 })
+  const steps = one.steps.map((step, at) => ({ words: sheet.lay(stepWords(frame, step, at), PAPER.right - x - 140, { size: 8.8, lead: 12.2 }), who: sheet.lay(fill(say.w.phrases.writtenBy, { by: step.by, at: say.at(step.at) }), 132, { size: 8.25, lead: 12.2, role: 'soft' }) }))
+  const first = steps[0]!
+  sheet.room(22 + title.height + stands.height + Math.max(first.words.height, first.who.height) + (photos.length > 0 && steps.length < 4 ? PHOTO.height + 40 : 0))
+  sheet.rule(sheet.y, { width: 0.75, role: 'line' })
+  const top = sheet.y + 9
+  sheet.structure.within('Sect', () => {
+    const tape = tapeOf(one.state) ?? 'settled'
+    const size = 15
+    const list = tapeTag(5, 1, one.tag, { state: tape, height: 20, size })
+    const width = tapeTagWidth(one.tag, size) + 7
+    const scale = Math.min(0.75, 52 / width)
+    sheet.structure.within('H2', () => {
+      sheet.drawing({ list, width, height: 22 }, PAPER.left, top - 1, scale, fill(say.w.phrases.tag, { tag: one.tag }))
+      sheet.place(title, x, top - 1, null)
+    })
+    sheet.place(stands, x, top - 1 + title.height)
+    sheet.y = top + title.height + stands.height + 3
+    sheet.structure.within('L', () => {
+      for (const { words, who } of steps) {
+        sheet.room(Math.max(words.height, who.height) + 2)
+        const y = sheet.y
+        sheet.structure.within('LI', () => sheet.structure.within('LBody', () => {
+          sheet.place(words, x, y, 'P')
+          sheet.place(who, PAPER.right - 132, y, 'P', 'right')
+        }))
+        sheet.y = y + Math.max(words.height, who.height) + 2
+      }
+    })
+    paintPhotos(frame, photos, images)
+  })
+  sheet.y += 8
+}
+
+function stepWords({ say }: Frame, step: RecordStep, at: number): string {
+  const { phrases, helds, findings, whys, decisions } = say.w
+  void whys
+  if (step.erased) return phrases.erased
+  const person = step.person ?? step.by
+  const words = step.words ? `: ${step.words}` : ''
+  const deviation = [...(step.condition ? [fill(phrases.condition, { words: step.condition })] : []), ...(step.until ? [fill(phrases.until, { on: say.day(step.until) })] : [])].map(part => `, ${part}`).join('')
+  switch (step.kind) {
+    case 'reading': {
+      const look = step.value?.method === 'look' ? (step.value.found === 'clear' ? phrases.clear : findings[step.value.finding ?? 'other']) : step.value ? say.reading(step.value, { unit: step.value.method === 'measure' ? 'length' : null }) : ''
+      return `${at === 0 ? phrases.found : phrases.readAgainStep}: ${look}${step.words ? `, ${step.words}` : ''}`
+    }
+    case 'correction': return fill(phrases.corrected, { person }) + words
+    case 'assignment': return fill(phrases.assigned, { person }) + (step.due ? `, ${fill(phrases.due, { at: say.at(step.due) })}` : '') + words
+    case 'cannot': return fill(phrases.cannot, { for: step.waitsFor ?? '' }) + words
+    case 'dangerNow': return fill(phrases.dangerNow, { done: sentence(step.done ? helds[step.done] : ''), person, at: step.toldAt ? say.time(step.toldAt) : '' }) + words
+    case 'deviationOffered': return phrases.offered + words + deviation
+    case 'deviationAccepted': return fill(step.accepted ? phrases.accepted : phrases.declined, { person, for: step.actsFor ?? '' }) + words + deviation
+    case 'decided': return fill(phrases.decided, { person, decision: step.decision ? decisions[step.decision] : '', document: step.document ?? '', on: step.on ? say.day(step.on) : '' }) + words
+    case 'referred': return fill(phrases.referred, { person, on: step.on ? say.day(step.on) : '' }) + words
+    case 'enteredInError': return fill(phrases.enteredInError, { reason: step.reason ?? '' })
+    case 'settled': return fill(phrases.settled, { reason: step.reason ?? '' })
+    case 'disputed': return phrases.disputed + words
+    default: return phrases.noted + words
+  }
+}
+
+interface Shown { photo: RecordPhoto, what: string }
+
+function photosOf({ record, say }: Frame, one: RecordDeficiency): Shown[] {
+  const corrected = one.steps.findIndex(step => step.kind === 'correction')
+  return one.steps.flatMap((step, at) => step.photos.flatMap((digest) => {
+    const photo = record.photos.find(each => each.digest === digest)
+    const what = corrected === -1 ? say.w.labels.found : at < corrected ? say.w.labels.before : say.w.labels.after
+    return photo ? [{ photo, what: `${what}, ${one.tag}` }] : []
+  }))
+}
+
+/** Photos that no deficiency shows. */
+export function paintOtherPhotos(frame: Frame, images: Images): void {
+  const { sheet, record, say } = frame
+  const shown = new Set(record.deficiencies.flatMap(one => one.steps.flatMap(step => step.photos)))
+  const others = record.photos.filter(photo => !shown.has(photo.digest))
+  if (others.length === 0) return
+  sheet.structure.within('Sect', () => {
+    heading(frame, say.w.titles.photos, PHOTO.height + 90)
+    paintPhotos(frame, others.map(photo => ({ photo, what: [tagOf(frame, photo.element), say.w.entryKinds[photo.of]].filter(part => part).join(', ') })), images)
+  })
+}
+
+/** Photos in rows of three, each with its number and who took it when. */
+function paintPhotos(frame: Frame, shown: Shown[], images: Images): void {
+  const { sheet, say, photoNumbers } = frame
+  const { phrases } = say.w
+  for (let from = 0; from < shown.length; from += 3) {
+    const row = shown.slice(from, from + 3).map(({ photo, what }) => {
+      const gallery = photo.taken.origin === 'gallery' ? `, ${photo.taken.at ? fill(phrases.fromGallery, { at: say.at(photo.taken.at) }) : phrases.fromGalleryUnknown}` : ''
+      const caption = fill(phrases.photoCaption, { n: photoNumbers.get(photo.digest)!, what, by: photo.by, at: say.at(photo.taken.at ?? photo.at) }) + gallery
+      const scale = Math.min(PHOTO.width / photo.width, PHOTO.height / photo.height)
+      return { photo, what, caption: sheet.lay(caption, PHOTO.width, { size: 8.25, lead: 11, role: 'soft' }), width: photo.width * scale, height: photo.height * scale }
+    })
+    const tallest = Math.max(...row.map(one => one.height))
+    sheet.room(tallest + 10 + Math.max(...row.map(one => one.caption.height)))
+    const top = sheet.y + 5
+    row.forEach(({ photo, what, caption, width, height }, at) => {
+      const x = PAPER.left + at * (PHOTO.width + GAP)
+      sheet.photo(images.get(photo.digest)!, x, top, width, height, fill(phrases.photoAlt, { n: photoNumbers.get(photo.digest)!, what }))
+      sheet.place(caption, x, top + tallest + 3, 'Caption')
+    })
+    sheet.y = top + tallest + 5 + Math.max(...row.map(one => one.caption.height))
+  }
+}

@@ -1,0 +1,130 @@
+import type { RecordSignature } from '../../shared/record/record'
+import { PAPER } from './paper'
+import type { Frame } from './recordFrame'
+import { heading, tableRow, tagOf } from './recordFrame'
+import type { Sheet, Words } from './sheet'
+import type { Speech } from './speech'
+import { squareCode } from './squareCode'
+import { signatureDrawing } from './strokes'
+import { fill, grouped, listed, sentence } from './wording'
+
+export function paintNotes(frame: Frame): void {
+  const { sheet, record, say, photoNumbers } = frame
+  if (record.notes.length === 0) return
+  const { phrases, labels, titles } = say.w
+  const columns = [{ x: PAPER.left, width: 34 }, { x: PAPER.left + 38, width: 310 }, { x: PAPER.left + 360, width: 144 }]
+  sheet.structure.within('Sect', () => {
+    heading(frame, titles.notes, 90)
+    sheet.structure.within('Table', () => {
+      tableRow(frame, columns, [labels.element, labels.note, labels.who], { head: true, before: 0 })
+      for (const note of record.notes) {
+        const photos = note.photos.flatMap(digest => photoNumbers.get(digest) ?? [])
+        const words = photos.length === 0 ? note.words : `${note.words} (${fill(photos.length === 1 ? phrases.photo : phrases.photos, { n: listed(photos.map(String), say.w.and) })})`
+        tableRow(frame, columns, [tagOf(frame, note.element), words, fill(phrases.writtenBy, { by: note.by, at: say.at(note.at) })])
+      }
+    })
+  })
+}
+
+/** What a block of a signature shows; the record's and an acceptance's are painted alike. */
+export type ShownSignature = Pick<RecordSignature, 'state' | 'meaningText' | 'signer' | 'role' | 'known' | 'presence' | 'at' | 'sheetDigest' | 'strokes' | 'typed' | 'words'>
+
+export function paintSignatures(frame: Frame): void {
+  const { sheet, record, say } = frame
+  sheet.structure.within('Sect', () => {
+    heading(frame, say.w.titles.signatures, 220)
+    if (record.signatures.length === 0) sheet.paragraph(say.w.phrases.noSignatures)
+    record.signatures.forEach(signature => paintSignature(sheet, say, signature))
+  })
+}
+
+export function paintSignature(sheet: Sheet, say: Speech, one: ShownSignature): void {
+  const { phrases, known, knownAlone } = say.w
+  const [x, width] = [PAPER.left + 216, PAPER.right - PAPER.left - 216]
+  const name = [one.signer.name, one.signer.title].filter(part => part).join(', ')
+  const how = one.known === 'onDevice' && one.presence === null ? knownAlone : fill(known[one.known], { presence: one.presence ?? '' })
+  const small = { size: 8.6, lead: 12 }
+  const blocks = [
+    sheet.lay(one.meaningText, width, { size: 10.2, weight: 500, lead: 14 }),
+    sheet.lay(fill(phrases.signedBy, { name, role: one.role }), width, small),
+    sheet.lay(one.state === 'signed' ? fill(phrases.signedAt, { at: say.at(one.at), known: how }) : fill(phrases.writtenBy, { by: sentence(phrases[one.state]), at: say.at(one.at) }), width, { ...small, role: 'soft' }),
+    ...(one.words ? [sheet.lay(fill(phrases.ownWords, { words: one.words }), width, small)] : []),
+    ...(one.sheetDigest ? [sheet.lay(fill(phrases.sheetDigest, { digest: grouped(one.sheetDigest) }), width, { size: 8.25, lead: 11, role: 'soft' })] : []),
+  ]
+  const height = Math.max(70, blocks.reduce((sum, block) => sum + block.height, 0) + 4)
+  sheet.room(height + 18)
+  sheet.rule(sheet.y, { width: 0.75, role: 'line' })
+  const top = sheet.y + 9
+  sheet.structure.within('Sect', () => {
+    paintHand(sheet, say, one, name, top)
+    let y = top - 2
+    for (const block of blocks) {
+      sheet.place(block, x, y)
+      y += block.height
+    }
+  })
+  sheet.y = top + height + 9
+}
+
+/** What the signer's hand left: strokes, a typed name, or the plain word that there is no signature. */
+function paintHand(sheet: Sheet, say: Speech, one: ShownSignature, name: string, top: number): void {
+  const { phrases } = say.w
+  const line = top + 58
+  if (one.state === 'signed' && one.strokes && one.strokes.length > 0) {
+    const drawing = signatureDrawing(one.strokes)
+    const scale = Math.min(190 / drawing.width, 54 / drawing.height, 0.9)
+    sheet.drawing(drawing, PAPER.left + 6, line - 2 - drawing.height * scale, scale, fill(phrases.signatureAlt, { name, n: one.strokes.length }))
+  }
+  else {
+    const [words, note] = one.state === 'signed' ? [one.typed ?? one.signer.name, phrases.typedName] : [phrases[one.state], '']
+    const block = sheet.lay(words, 195, { size: 15, weight: 300, lead: 19, role: one.state === 'signed' ? 'ink' : 'soft' })
+    sheet.place(block, PAPER.left, line - 4 - block.height)
+    if (note) sheet.place(sheet.lay(note, 195, { size: 8.25, lead: 11, role: 'soft' }), PAPER.left, line + 3)
+  }
+  sheet.rule(line, { x1: PAPER.left, x2: PAPER.left + 198, width: 0.75 })
+}
+
+/** The sealed set, what came too late for it, and devices that were not waited for. */
+export function paintSet(frame: Frame): void {
+  const { sheet, record, say } = frame
+  const { phrases, titles, entryKinds } = say.w
+  const [first, last] = [record.entries[0], record.entries[record.entries.length - 1]]
+  sheet.structure.within('Sect', () => {
+    heading(frame, titles.set, 140)
+    if (first && last) sheet.paragraph(fill(phrases.sealedSet, { n: record.entries.length, from: first.number, to: last.number }), { after: 5 })
+    sheet.paragraph(fill(phrases.basisOf, {
+      rules: record.rules, basis: grouped(record.basis.slice(0, 16)), line: record.line.version, renderer: record.renderer,
+      checklists: listed(record.checklists.map(({ id, version }) => fill(phrases.checklistVersion, { id, version })), say.w.and),
+    }), { role: 'soft', after: 8 })
+    const list = (none: string, some: string, lines: string[]) => {
+      sheet.paragraph(lines.length === 0 ? none : some, { after: 3, weight: lines.length === 0 ? 400 : 500 })
+      if (lines.length > 0) sheet.structure.within('L', () => lines.forEach(line => sheet.structure.within('LI', () => sheet.paragraph(line, { x: PAPER.left + 12, type: 'LBody', after: 2, size: 8.8 }))))
+      sheet.y += 5
+    }
+    list(phrases.lateNone, phrases.lateSome, record.late.map(entry => fill(phrases.lateLine, { kind: [tagOf(frame, entry.element), entryKinds[entry.kind as keyof typeof entryKinds] ?? entry.kind].filter(part => part).join(' '), by: entry.by, at: say.at(entry.madeAt), digest: grouped(entry.digest.slice(0, 16)) })))
+    list(phrases.devicesNone, phrases.devicesSome, record.devicesOut.map(({ device, holder, takenAt, reason }) => fill(phrases.deviceLine, { device, holder, at: say.at(takenAt), reason })))
+  })
+}
+
+/** How anybody checks the paper, with the square code beside it. */
+export function paintChecking(frame: Frame): void {
+  const { sheet, say } = frame
+  sheet.structure.within('Sect', () => {
+    heading(frame, say.w.titles.checking, 200)
+    paintCheckSteps(sheet, say, frame.record.checkAddress, frame.digest)
+  })
+}
+
+export function paintCheckSteps(sheet: Sheet, say: Speech, address: string, digest: string): void {
+  const { phrases } = say.w
+  const x = PAPER.left + 136
+  sheet.room(150)
+  const code = squareCode(address)
+  const top = sheet.y
+  // The quiet zone stands outside the margin, so that the modules line up with the text.
+  const scale = 112 / (code.width - 8)
+  sheet.drawing(code, PAPER.left - 4 * scale, top + 3 - 4 * scale, scale, fill(phrases.qrAlt, { address }))
+  const steps: Words[] = [fill(phrases.checkStep1, { address }), phrases.checkStep2, [{ text: `${phrases.checkStep3}\n` }, { text: grouped(digest), weight: 500 }], phrases.checkStep4, phrases.checkStep5]
+  sheet.structure.within('L', () => steps.forEach(step => sheet.structure.within('LI', () => sheet.paragraph(step, { x, type: 'LBody', after: 4 }))))
+  sheet.y = Math.max(sheet.y, top + 122)
+}

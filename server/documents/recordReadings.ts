@@ -1,0 +1,163 @@
+import type { Verdict } from '../../shared/round/outcome'
+import type { RecordCheck, RecordReading } from '../../shared/record/record'
+import { liveDrawing } from './liveDrawing'
+import { PAPER } from './paper'
+import type { Frame } from './recordFrame'
+import { diamondStateOf, heading, placeDiamond, tableRow, tagOf } from './recordFrame'
+import type { Block } from './sheet'
+import { fill, listed } from './wording'
+
+/** Gravest first: the order in which readings are shown. */
+const ORDER: Verdict[] = ['doesNotConform', 'withinError', 'groundNotFinished', 'noLimit', 'notRead', 'conforms', 'notInspected', 'notApplicable']
+const PICTURE = { x: PAPER.left + 37.5, width: 112.5 }
+const TEXT = { x: PICTURE.x + PICTURE.width + 12, width: 231 }
+const FIGURE = { x: PAPER.right - 111, width: 111 }
+
+/** A look that was clear from the start says nothing more than that: it goes into the short list, all others get a row of their own. */
+function isPlainLook(check: RecordCheck): boolean {
+  return check.verdict === 'conforms' && !check.settled && !check.readAgain && check.earlier.length === 0
+    && check.readings.every(({ value, note, photos, disagreesWith }) => value.method === 'look' && note === null && photos.length === 0 && disagreesWith.length === 0)
+}
+
+export function paintReadings(frame: Frame): void {
+  const { sheet, record, say } = frame
+  const shown = record.checks.filter(check => !isPlainLook(check) && (check.readings.length > 0 || check.verdict === 'notRead'))
+  // Sorting is stable: within one verdict the rows keep the order of the walk.
+  shown.sort((a, b) => ORDER.indexOf(a.verdict) - ORDER.indexOf(b.verdict))
+  if (shown.length > 0) {
+    sheet.newPage()
+    sheet.structure.within('Sect', () => {
+      heading(frame, say.w.titles.readings)
+      shown.forEach((check, at) => paintReading(frame, check, at === 0))
+    })
+  }
+  paintClear(frame, record.checks.filter(isPlainLook))
+  paintSetAside(frame)
+}
+
+function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
+  const { sheet, record, say } = frame
+  const { phrases, verdicts } = say.w
+  const [governing, ...others] = check.readings
+  const limits = check.limits.flatMap(key => record.limits[key] ? [record.limits[key]] : [])
+  const element = frame.elements.get(check.element)
+  const drawing = governing && element ? liveDrawing(check, governing, limits, element, record, say) : null
+
+  const wide = drawing ? TEXT : { x: PICTURE.x, width: TEXT.x + TEXT.width - PICTURE.x }
+  const small = { size: 8.6, lead: 12 }
+  const said: Block[] = [
+    sheet.lay(check.title, wide.width, { size: 10.5, weight: 500, lead: 14 }),
+    ...limits.map(limit => sheet.lay([{ text: say.limit(limit) }, { text: `\n${say.basis(limit.basis)}`, role: 'soft' }], wide.width, small)),
+    ...conditions(check, frame).map(words => sheet.lay(words, wide.width, small)),
+    ...(governing ? [sheet.lay(circumstances(governing, check, frame), wide.width, { ...small, role: 'soft' })] : []),
+    ...others.map(reading => sheet.lay([{ text: fill(phrases.moreReadings, { list: say.reading(reading.value, check, limits) }) }, { text: ` (${circumstances(reading, check, frame)})`, role: 'soft' }], wide.width, small)),
+    ...check.earlier.map(reading => sheet.lay(earlier(reading, check, frame), wide.width, { ...small, role: 'soft' })),
+    ...(check.readAgain ? [sheet.lay(phrases.readAgain, wide.width, { ...small, weight: 500 })] : []),
+  ]
+  const figure = governing ? sheet.lay(say.reading(governing.value, check, limits), FIGURE.width, { size: governing.value.method === 'template' ? 10.5 : 15, weight: 300, lead: governing.value.method === 'template' ? 14 : 18 }) : null
+  const margin = governing ? say.margin(governing, check, record.limits) : null
+  const state = diamondStateOf(check)
+  const verdict = sheet.lay([...(margin ? [{ text: `${margin}\n`, weight: 600 as const }] : []), { text: state === 'settled' ? say.w.settledVerdict : verdicts[check.verdict] }], FIGURE.width - 23, { size: 9, lead: 11.8 })
+
+  const scale = drawing ? Math.min(0.75, PICTURE.width / drawing.width) : 0
+  const heightText = said.reduce((sum, block) => sum + block.height, 0)
+  const height = Math.max(heightText, (figure?.height ?? 0) + 5 + verdict.height, drawing ? drawing.height * scale : 0)
+  sheet.room(height + 15)
+  if (!first) sheet.rule(sheet.y, { width: 0.75, role: 'line' })
+  const top = sheet.y + 8
+  sheet.structure.within('Sect', () => {
+    const tag = sheet.lay(tagOf(frame, check.element), PICTURE.x - PAPER.left, { size: 15, weight: 300, lead: 17 })
+    sheet.structure.within('H2', () => {
+      sheet.place(tag, PAPER.left, top - 2, null)
+      sheet.place(said[0]!, wide.x, top - 2, null)
+    })
+    if (drawing && governing) sheet.drawing(drawing, PICTURE.x, top, scale, [tagOf(frame, check.element), check.title, say.reading(governing.value, check, limits), margin].filter(part => part).join(', '))
+    let y = top - 2 + said[0]!.height
+    for (const block of said.slice(1)) {
+      sheet.place(block, wide.x, y)
+      y += block.height
+    }
+    if (figure) sheet.place(figure, FIGURE.x, top - 2)
+    const under = top + (figure ? figure.height + 3 : 0)
+    placeDiamond(sheet, state, FIGURE.x, under + Math.max(0, (verdict.height - 16) / 2), 16)
+    sheet.place(verdict, FIGURE.x + 23, under)
+  })
+  sheet.y = top + height + 7
+}
+
+/** What the answer was held against, where that is no limit with a figure. */
+function conditions(check: RecordCheck, { say }: Frame): string[] {
+  const { phrases } = say.w
+  if (check.method === 'trial') return [listed(check.tries.map(each => fill(phrases.triesFrom, { times: each.times, label: each.label })), say.w.and)]
+  if (check.method === 'template' && check.conformsWhen) return [check.conformsWhen === 'passes' ? phrases.passesConforms : phrases.stopsConforms]
+  if (check.method !== 'look' && check.limits.length === 0) return [check.noLimit ?? phrases.noLimit]
+  return []
+}
+
+/** With what, where, by whom and when it was read, and what else was noted. */
+function circumstances(reading: RecordReading, check: RecordCheck, { say, photoNumbers, record }: Frame): string {
+  const { phrases, dimensions } = say.w
+  const { value } = reading
+  const numbers = reading.photos.flatMap(digest => photoNumbers.get(digest) ?? [])
+  return [
+    ...(value.method === 'measure' && value.instrument ? [value.instrument] : []),
+    ...(value.method === 'measure' && value.dimension ? [dimensions[value.dimension]] : []),
+    ...(value.method === 'measure' && value.uncertainty ? [fill(phrases.uncertainty, { x: say.amount(value.uncertainty, check.unit, { system: value.system, beside: [0] }) })] : []),
+    ...(value.method === 'measure' && value.system !== record.system ? [fill(phrases.typed, { text: value.text })] : []),
+    ...(reading.place ? [say.place(reading.place)] : check.face ? [say.w.faces[check.face]] : []),
+    fill(phrases.writtenBy, { by: reading.by, at: say.at(reading.madeAt) }),
+    ...(numbers.length > 0 ? [fill(numbers.length === 1 ? phrases.photo : phrases.photos, { n: listed(numbers.map(String), say.w.and) })] : []),
+    ...(reading.tag ? [fill(phrases.tag, { tag: reading.tag })] : []),
+    ...(reading.note ? [fill(phrases.note, { words: reading.note })] : []),
+    ...(reading.otherSystemDiffers ? [phrases.otherSystem] : []),
+    ...(reading.disagreesWith.length > 0 ? [fill(phrases.disagrees, { n: reading.disagreesWith.length + 1 })] : []),
+  ].filter(part => part).join(' \u00b7 ')
+}
+
+function earlier(reading: RecordReading, check: RecordCheck, { say }: Frame): string {
+  const { phrases } = say.w
+  const values = { reading: say.reading(reading.value, check), by: reading.by, at: say.at(reading.madeAt) }
+  return reading.replacedBy === null
+    ? `${values.reading} (${fill(phrases.writtenBy, values)})`
+    : fill(reading.reason ? phrases.replaced : phrases.replacedNoReason, { ...values, reason: reading.reason ?? '' }).trim()
+}
+
+/** Looks that were clear, by element, in few words: who looked and when is the same for most. */
+function paintClear(frame: Frame, checks: RecordCheck[]): void {
+  if (checks.length === 0) return
+  const { sheet, say } = frame
+  const columns = [{ x: PAPER.left, width: 34 }, { x: PAPER.left + 38, width: 318 }, { x: PAPER.left + 372, width: 132 }]
+  sheet.structure.within('Sect', () => {
+    heading(frame, say.w.titles.clear)
+    sheet.structure.within('Table', () => {
+      tableRow(frame, columns, [say.w.labels.element, say.w.labels.checks, say.w.labels.who], { head: true, before: 0 })
+      for (const element of new Set(checks.map(check => check.element))) {
+        const own = checks.filter(check => check.element === element)
+        const titles = own.map(check => check.face ? `${check.title} (${say.w.faces[check.face]})` : check.title)
+        const readings = own.flatMap(check => check.readings)
+        const who = listed([...new Set(readings.map(reading => reading.by))], say.w.and)
+        tableRow(frame, columns, [tagOf(frame, element), titles.join(' \u00b7 '), fill(say.w.phrases.writtenBy, { by: who, at: say.days(readings.map(reading => reading.madeAt)) })], { marks: [{ column: 1, state: 'conforms' }] })
+      }
+    })
+  })
+}
+
+/** What was set aside, with its reason and who set it aside. */
+function paintSetAside(frame: Frame): void {
+  const { record, sheet, say } = frame
+  const checks = record.checks.filter(check => check.verdict === 'notInspected' || check.verdict === 'notApplicable')
+  if (checks.length === 0) return
+  const { whys, verdicts, phrases, titles } = say.w
+  const columns = [{ x: PAPER.left, width: 34 }, { x: PAPER.left + 38, width: 220 }, { x: PAPER.left + 270, width: 234 }]
+  sheet.structure.within('Sect', () => {
+    heading(frame, titles.setAside, 90)
+    sheet.structure.within('Table', () => {
+      tableRow(frame, columns, [say.w.labels.element, say.w.labels.checks, say.w.labels.state], { head: true, before: 0 })
+      for (const check of checks) {
+        const aside = check.setAside
+        const why = aside ? [whys[aside.why as keyof typeof whys] ?? aside.why, aside.words, fill(phrases.writtenBy, { by: aside.by, at: say.at(aside.at) })].filter(part => part).join(', ') : ''
+        tableRow(frame, columns, [tagOf(frame, check.element), check.title, [verdicts[check.verdict], why].filter(part => part).join(': ')], { marks: [{ column: 2, state: check.verdict }] })
+      }
+    })
+  })
+}
