@@ -70,6 +70,8 @@ export function buildRecord({ particulars, basis, basisDigest, entries: given, o
     line: basis.line,
     elements: outcome.elements,
     limits: Object.fromEntries(recordChecks.flatMap(check => check.limits).sort(byCodeUnit).map(key => [key, basis.limits[key]])),
+    limitsSetAside: basis.setAside ?? [],
+    provisions: basis.provisions ?? [],
     checks: recordChecks,
     deficiencies: outcome.deficiencies.map(one => deficiencyRecord(one, source)),
     notes: entries.filter(is('note')).flatMap(entry => entry.payload === null ? [] : [{ ...about(entry, source), element: entry.envelope.element, words: entry.payload.words, photos: digestsOf(entry.payload.photos) }]),
@@ -167,7 +169,7 @@ function deficiencyRecord(one: DeficiencyOutcome, source: Source): RecordDeficie
 function stepRecord(entry: AnyEntry, source: Source): RecordStep {
   const step: RecordStep = {
     ...about(entry, source), kind: entry.envelope.kind, erased: entry.payload === null,
-    words: null, reason: null, person: null, actsFor: null, done: null, toldAt: null, due: null, waitsFor: null, on: null, document: null,
+    words: null, reason: null, person: null, actsFor: null, done: null, toldAt: null, due: null, waitsFor: null, on: null, document: null, decision: null,
     accepted: null, condition: null, until: null, value: null, photos: [],
   }
   if (entry.payload === null) return step
@@ -181,7 +183,7 @@ function stepRecord(entry: AnyEntry, source: Source): RecordStep {
     words: read<string>(kind === 'reading' ? 'note' : 'words') || null,
     reason: read<string>('reason') || null,
     person: person?.name ?? null,
-    actsFor: read('for'), done: read('done'), toldAt: read('toldAt'), due: read('due'), waitsFor: read('waitsFor'), on: read('on'), document: read('document'),
+    actsFor: read('for'), done: read('done'), toldAt: read('toldAt'), due: read('due'), waitsFor: read('waitsFor'), on: read('on'), document: read('document'), decision: read('as'),
     accepted: read('accepted'), condition: read('condition'), until: read('until'), value: read('value'),
     photos: digestsOf(read<PhotoRef[]>('photos') ?? []),
   }

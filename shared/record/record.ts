@@ -1,9 +1,10 @@
 import { z } from 'zod'
 import { DEFICIENCY_CLASSES, DRAWINGS, METHODS } from '../checklist/check'
-import { digestSchema, ENTRY_KINDS, MEANINGS, placeSchema, readingValueSchema, strokeSchema } from '../entry/entry'
-import { basisSchema, limitSchema, UNITS } from '../limit/limit'
+import { DECISIONS, digestSchema, ENTRY_KINDS, MEANINGS, placeSchema, readingValueSchema, strokeSchema } from '../entry/entry'
+import { limitSchema, UNITS } from '../limit/limit'
 import { FACES, lineSchema } from '../line/line'
 import { SYSTEMS } from '../measure/length'
+import { provisionSchema } from '../provision/provision'
 import { DEFICIENCY_STATES, VERDICTS } from '../round/outcome'
 
 /** The version of the code that paints a record; a record keeps the one that it was built with. */
@@ -62,8 +63,6 @@ export const recordParticularsSchema = z.object({
   round: z.object({ id: uuid, number: z.number().int().min(1) }).strict(),
   /** The earlier record that this one changes; null for one that stands for itself. */
   amends: z.object({ id: uuid, code: z.string().min(3).max(40), digest: digestSchema, how: z.enum(AMENDMENTS), elements: z.array(uuid), why: words }).strict().nullable(),
-  /** Notes of the authority, client or organisation in force beside the numbers. */
-  provisionNotes: z.array(z.object({ words, basis: basisSchema }).strict()),
   /** What was asked and has no answer yet. */
   questions: z.array(z.object({ words, askedOf: short, on: day }).strict()),
   /** Devices that had taken the round along and had not come back when it was sealed, and why that was not waited for. */
@@ -146,6 +145,7 @@ export const recordStepSchema = z.object({
   waitsFor: z.string().nullable(),
   on: day.nullable(),
   document: z.string().nullable(),
+  decision: z.enum(DECISIONS).nullable(),
   accepted: z.boolean().nullable(),
   condition: z.string().nullable(),
   until: day.nullable(),
@@ -231,6 +231,10 @@ export const recordSchema = recordParticularsSchema.extend({
     tasks: z.number().int().min(0), answered: z.number().int().min(0),
   }).strict()),
   limits: z.record(z.string(), limitSchema),
+  /** Limits that would have held, and the key of the one that stands in their place. */
+  limitsSetAside: z.array(z.object({ limit: limitSchema, by: z.string(), why: z.enum(['replaced', 'looser']) }).strict()),
+  /** Local numbers and notes of the job as they were pinned. */
+  provisions: z.array(provisionSchema),
   checks: z.array(recordCheckSchema),
   deficiencies: z.array(recordDeficiencySchema),
   notes: z.array(z.object({ entry: uuid, element: uuid.nullable(), by: short, at: instant, words, photos: photoDigests }).strict()),

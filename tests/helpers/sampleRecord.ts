@@ -86,6 +86,8 @@ const LIMITS_OF: Record<string, string[]> = { 'latch-release-height': ['latch'],
 const PEOPLE = { inspector: uuid(1, 9), crew: uuid(2, 9), manager: uuid(3, 9) }
 const NAMES = { [PEOPLE.inspector]: 'Dana Okafor', [PEOPLE.crew]: 'Luis Barrientos', [PEOPLE.manager]: 'Priya Lindqvist' }
 const [ORGANISATION, JOB, ROUND, WALK, DEVICE] = [uuid(1, 10), uuid(2, 10), uuid(3, 10), uuid(4, 10), uuid(5, 10)]
+/** The basis that the entries were made under; the record's own is another, later one. */
+const PINNED = '0'.repeat(64)
 
 /** Photos by digest, made from gradients and seeded noise: JPEG, sRGB, upright, no metadata, as the program keeps them. */
 export async function samplePhotos(count: number, [width, height]: [number, number]): Promise<Map<string, Uint8Array>> {
@@ -116,11 +118,11 @@ export async function sampleRecord({ language = 'en', system = 'imperial', photo
   const entries: AnyEntry[] = []
   const write = <K extends EntryKind>(kind: K, madeAt: string, payload: Omit<PayloadOf<K>, 'salt'>, more: { author?: string, element?: string, check?: string, place?: Place, answers?: string[], replaces?: string[] } = {}): string => {
     const id = uuid(++serial, 20)
-    const { entry } = makeEntry<K>({ kind, id, salt: serial.toString(16).padStart(32, '0'), madeAt, organisation: ORGANISATION, job: JOB, round: ROUND, walk: WALK, author: more.author ?? PEOPLE.inspector, device: DEVICE, basis: null, ...more, payload })
+    const { entry } = makeEntry<K>({ kind, id, salt: serial.toString(16).padStart(32, '0'), madeAt, organisation: ORGANISATION, job: JOB, round: ROUND, walk: WALK, author: more.author ?? PEOPLE.inspector, device: DEVICE, basis: kind === 'signature' ? null : PINNED, ...more, payload })
     entries.push({ ...entry, number: serial } as unknown as AnyEntry)
     return id
   }
-  write('walkOpened', '2027-03-02T09:12:00-05:00', { basis: '0'.repeat(64), device: 'phone 3' })
+  write('walkOpened', '2027-03-02T09:12:00-05:00', { basis: PINNED, device: 'phone 3' })
 
   const outcomes: CheckOutcome[] = []
   const tasks: RoundBasis['tasks'] = []
@@ -186,7 +188,10 @@ export async function sampleRecord({ language = 'en', system = 'imperial', photo
     while (spare.length > (elements.length - elements.indexOf(one) - 1) * Math.ceil(photoCount / elements.length)) write('note', '2027-03-03T12:40:00-05:00', { words: `As found at ${one.tag}.`, photos: picture('2027-03-03T12:39:00-05:00') }, { element: one.id })
   }
 
-  const basis: RoundBasis = { rules: 1, line, checklists: [{ id: 'school-grounds', version: 2 }], checks: CHECKS, limits: LIMITS, tasks }
+  const basis: RoundBasis = { rules: 1, line, checklists: [{ id: 'school-grounds', version: 2 }], checks: CHECKS, limits: LIMITS, tasks,
+    provisions: [{ id: 'pool-season', kind: 'authority', measurand: 'latch-release-height', setting: 'pool', effect: 'add', limit: null, note: 'Pool gates are looked at again by the county before the season opens.', name: 'Velmor County', citation: 'letter', confirmedBy: 'R. Tamm', confirmedOn: '2027-02-12' }],
+    setAside: [{ limit: { ...LIMITS.latch!, id: 'latch-built-in', low: { imperial: 48 * INCH, inclusive: true }, basis: GUIDE }, by: 'latch', why: 'replaced' }],
+  }
   const order = (a: CheckOutcome, b: CheckOutcome) => elements.findIndex(one => one.id === a.element) - elements.findIndex(one => one.id === b.element)
   outcomes.sort(order)
   const RANK: Verdict[] = ['doesNotConform', 'withinError', 'groundNotFinished', 'noLimit', 'notRead', 'notInspected', 'notApplicable', 'conforms']
@@ -219,7 +224,6 @@ export async function sampleRecord({ language = 'en', system = 'imperial', photo
       site: { id: uuid(1, 32), name: 'Wrenfold Elementary', address: '40 Mill Road, Marl', onSite: { name: 'J. Marchetti', title: 'custodian', phone: '(555) 010-0117' }, emergency: { name: 'District line', phone: '(555) 010-0199' } },
       job: { id: JOB, number: 'LS-0417', title: 'New line round the school grounds', neededBy: '2027-03-08', keys: { permit: 'HC-27-0093, Velmor County', contract: 'W-2291' } },
       round: { id: ROUND, number: 2 }, amends: null,
-      provisionNotes: [{ words: 'Pool gates are looked at again by the county before the season opens.', basis: { kind: 'authority', name: 'Velmor County', citation: 'letter of 12 Feb 2027' } }],
       questions: final ? [] : [{ words: 'G3: pool limit and reach limit clash by 1 1/2 in.', askedOf: 'Velmor County Building Division', on: '2027-03-03' }],
       devicesOut: final ? [] : [{ device: 'tablet 2', holder: 'Luis Barrientos', takenAt: '2027-03-02T08:00:00-05:00', reason: 'It was charged at the yard; the crew lead says that it holds nothing.' }],
       late: final ? [] : [{ id: uuid(900, 20), digest: digestOf('late'), number: 900, kind: 'note', by: 'Luis Barrientos', madeAt: '2027-03-03T14:58:00-05:00', element: byTag('R9'), check: null }],
