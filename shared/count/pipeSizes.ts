@@ -8,7 +8,7 @@ const thousandths = (count: number): Length => count * (LENGTH_UNIT.in.size / 10
 
 /**
  * Pipe by the fence trade's names. A name is a label: what is measured with the caliper is the outside diameter.
- * Trade names: COMMON PRACTICE, no source. Diameters: pipe tables NPS 1 to 3-1/2 (ASME B36.10M, FROM MEMORY).
+ * Trade names: COMMON PRACTICE, no source (NPS 3 goes by none). Diameters: ASTM A53 table (published-limits F50 to F56).
  */
 export const PIPE_SIZES: readonly PipeSize[] = [
   { trade: ['1-3/8'], nps: '1', outsideDiameter: thousandths(1315) },
@@ -16,6 +16,7 @@ export const PIPE_SIZES: readonly PipeSize[] = [
   { trade: ['1-7/8', '2'], nps: '1-1/2', outsideDiameter: thousandths(1900) },
   { trade: ['2-3/8', '2-1/2'], nps: '2', outsideDiameter: thousandths(2375) },
   { trade: ['2-7/8', '3'], nps: '2-1/2', outsideDiameter: thousandths(2875) },
+  { trade: [], nps: '3', outsideDiameter: thousandths(3500) },
   { trade: ['4'], nps: '3-1/2', outsideDiameter: thousandths(4000) },
 ]
 

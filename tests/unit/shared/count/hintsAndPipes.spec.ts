@@ -17,7 +17,7 @@ describe('tensionBandHints', () => {
 })
 
 describe('pipe sizes', () => {
-  // Names: COMMON PRACTICE; outside diameters: pipe tables NPS 1 to 3-1/2, FROM MEMORY.
+  // Names: COMMON PRACTICE; outside diameters: published-limits F50 to F56.
   it.each([
     ['1-3/8', '1.315 in'], ['1-5/8', '1.660 in'], ['1-7/8', '1.900 in'], ['2', '1.900 in'], ['2-3/8', '2.375 in'], ['2-1/2', '2.375 in'], ['2-7/8', '2.875 in'], ['3', '2.875 in'], ['4', '4 in'],
   ])('%s is %s across', (name, diameter) => {
@@ -27,6 +27,7 @@ describe('pipe sizes', () => {
   it('knows what it does not know', () => {
     expect(pipeByTradeName('5')).toBeNull()
     expect(pipesByDiameter(length('3 1/4 in'), length('1/16 in'))).toEqual([])
+    expect(pipeByTradeName('')).toBeNull()
   })
 
   it('finds the size from the caliper, nearest first, and never picks between two', () => {
