@@ -8,6 +8,15 @@ export async function readOutcome(tx: Tx, roundId: string): Promise<RoundOutcome
   return rows[0]?.outcome ?? null
 }
 
+/** The sealed outcome that a round goes on from; undefined for the first. */
+export async function outcomeBefore(tx: Tx, jobId: string, number: number): Promise<RoundOutcome | undefined> {
+  if (number <= 1) return undefined
+  const { rows } = await tx.client.query<{ outcome: RoundOutcome }>(
+    `select s.outcome from round r join round_state s on s.organisation_id = r.organisation_id and s.round_id = r.id
+      where r.organisation_id = app_organisation() and r.job_id = $1 and r.number = $2`, [jobId, number - 1])
+  return rows[0]?.outcome
+}
+
 export async function writeOutcome(tx: Tx, roundId: string, accepted: number, outcome: RoundOutcome): Promise<void> {
   await tx.client.query(
     `insert into round_state (organisation_id, round_id, accepted, outcome) values (app_organisation(), $1, $2, $3)

@@ -10,6 +10,7 @@ import type { RoundOutcome } from '../../../shared/round/outcome'
 import type { LockedRound } from '../../database/queries/entry'
 import { entriesAfter } from '../../database/queries/entry'
 import { basesOf } from '../../database/queries/round'
+import { outcomeBefore } from '../../database/queries/state'
 import type { Tx } from '../../database/withSession'
 
 const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
@@ -54,9 +55,10 @@ export function rememberEntries(roundId: string, accepted: number, entries: Kept
 }
 
 /** What a round comes to now. */
-export async function foldRound(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ outcome: RoundOutcome, line: Line, entries: KeptEntry[], bases: Map<string, RoundBasis>, signatures: number }> {
+export async function foldRound(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'number' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ outcome: RoundOutcome, line: Line, entries: KeptEntry[], bases: Map<string, RoundBasis>, signatures: number }> {
   const all = await entriesOf(tx, round, fresh)
   const held = new Map((await basesOf(tx, round.jobId)).map(({ digest, text }) => [digest, readBasis(digest, text)]))
-  const outcome = fold(all, held, { basis: round.basis, tasksFor })
+  const startsFrom = await outcomeBefore(tx, round.jobId, round.number)
+  const outcome = fold(all, held, { basis: round.basis, startsFrom, tasksFor: (element, basis) => tasksFor(basis, element).tasks })
   return { outcome, line: outcome.line, entries: all, bases: held, signatures: all.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length }
 }
