@@ -5,14 +5,16 @@ import { nuxtProgram } from './lib/build.mjs'
 import { claimDataFolder } from './lib/claim.mjs'
 import { openDataFolder, projectRoot } from './lib/dataFolder.mjs'
 import { layGround } from './lib/ground.mjs'
-import { runServices, startMailCatcher, startService, watchDatabase, webPort } from './lib/services.mjs'
+import { assertPortFree, runServices, startMailCatcher, startService, watchDatabase, webPort } from './lib/services.mjs'
 import { say, step } from './lib/steps.mjs'
 
 await runServices(async () => {
-  const port = await webPort()
-  await step('Opening the data folder', () => {
+  const port = webPort()
+  await step('Opening the data folder', async () => {
     openDataFolder()
-    return claimDataFolder(`the development server runs at http://127.0.0.1:${port}`)
+    const said = await claimDataFolder(`the development server runs at http://127.0.0.1:${port}`)
+    await assertPortFree(port) // after the claim, which may have ended what a killed start left on that port
+    return said
   })
   const ground = await layGround(port)
   watchDatabase(ground.cluster.port)

@@ -9,7 +9,7 @@ import { layGround } from './lib/ground.mjs'
 import { claimDataFolder } from './lib/claim.mjs'
 import { runProgram } from './lib/processes.mjs'
 import { step, say } from './lib/steps.mjs'
-import { runServices, startMailCatcher, startService, waitUntilReady, watchDatabase, webPort } from './lib/services.mjs'
+import { assertPortFree, runServices, startMailCatcher, startService, waitUntilReady, watchDatabase, webPort } from './lib/services.mjs'
 
 /** Signs of a demo that was broken off half-way: its loader is then called again. */
 const demoMark = path.join(data.run, 'demo-unfinished')
@@ -35,10 +35,12 @@ function tellSignIns() {
 
 await runServices(async () => {
   console.log('Starting Smoothside.')
-  const port = await webPort()
-  await step('Opening the data folder', () => {
+  const port = webPort()
+  await step('Opening the data folder', async () => {
     openDataFolder()
-    return claimDataFolder(`Smoothside runs at http://127.0.0.1:${port}`)
+    const said = await claimDataFolder(`Smoothside runs at http://127.0.0.1:${port}`)
+    await assertPortFree(port) // after the claim, which may have ended what a killed start left on that port
+    return said
   })
   const ground = await layGround(port)
   const { cluster, environment, workerPort, logOf } = ground

@@ -10,7 +10,7 @@ import { projectRoot } from './lib/dataFolder.mjs'
 import { forTesting, installMissing } from './lib/debianPackages.mjs'
 import { installNodeModules } from './lib/nodeModules.mjs'
 import { endAll, endGroup } from './lib/processes.mjs'
-import { explain } from './lib/steps.mjs'
+import { explain, Trouble } from './lib/steps.mjs'
 
 const projects = ['unit', 'published', 'documents', 'database', 'api', 'browser']
 /** A part that hangs must not hide the others. */
@@ -58,7 +58,7 @@ async function run(parameters, { env = process.env, milliseconds = patience.ordi
 
 async function mustSucceed(parameters, options) {
   const code = await run(parameters, options)
-  if (code !== 0) throw new Error(`ended with ${code}`)
+  if (code !== 0) throw new Trouble(code === null ? 'took too long' : `ended with ${code}`)
   return one
 }
 

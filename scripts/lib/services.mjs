@@ -47,16 +47,20 @@ export async function runServices(main) {
   })
 }
 
-/** The port of the web, from PORT or 4600; says so when another program has it. */
-export async function webPort() {
+/** The port of the web, from PORT or 4600. */
+export function webPort() {
   const port = Number(process.env.PORT || 4600)
   if (!Number.isInteger(port) || port < 1 || port > 65_535) throw new Trouble(`PORT is "${process.env.PORT}", which is no port. Give a number from 1024 to 65535, for example: PORT=4600 npm start`)
+  return port
+}
+
+/** Says so when another program has the port. */
+export async function assertPortFree(port) {
   const free = await portIsFree(port).catch((error) => {
     if (error.code === 'EACCES') throw new Trouble(`This user may not use port ${port}. Take a port from 1024 up, for example: PORT=4600 npm start`)
     throw error
   })
-  if (!free) throw new Trouble(`Port ${port} is in use by another program (or by Smoothside itself). Stop that one, or take another port: PORT=${await freePort(port + 1)} npm start`)
-  return port
+  if (!free) throw new Trouble(`Port ${port} is in use by another program. Stop that one, or take another port: PORT=${await freePort(port + 1)} npm start`)
 }
 
 /** Starts one of our services and keeps it running. */
