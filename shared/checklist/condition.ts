@@ -125,6 +125,7 @@ function treeOf(node: ASTNode): ConditionTree {
   }
 }
 
+const answers = new WeakMap<Facts, Map<string, boolean>>()
 const compiled = new Map<string, Condition>()
 
 /**
@@ -152,7 +153,20 @@ export function compileCondition(text: string): Condition {
     throw new ConditionError(/Unknown variable|No such key/i.test(why) ? 'unknown-fact' : 'type', `${why}. Facts: ${Object.keys(FACTS).join(', ')}.`)
   }
   const tree = treeOf(parsed.ast)
-  const condition: Condition = { text, tree, holds: facts => parsed(facts as unknown as Record<string, unknown>) === true }
+  const condition: Condition = {
+    text,
+    tree,
+    holds(facts) {
+      // Many checks share a condition: it is worked out once for each set of facts.
+      const known = answers.get(facts) ?? new Map<string, boolean>()
+      answers.set(facts, known)
+      const earlier = known.get(text)
+      if (earlier !== undefined) return earlier
+      const answer = parsed(facts as unknown as Record<string, unknown>) === true
+      known.set(text, answer)
+      return answer
+    },
+  }
   compiled.set(text, condition)
   return condition
 }

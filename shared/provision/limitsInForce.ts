@@ -31,12 +31,26 @@ export interface LimitsInForce {
 const byCodePoint = (one: { id: string }, other: { id: string }) => one.id < other.id ? -1 : one.id > other.id ? 1 : 0
 const rank = (limit: Limit) => BASIS_KINDS.indexOf(limit.basis.kind)
 
-function limitOf(provision: Provision, measurand: string): Limit | null {
+// A limit is made once for each source, so that a walk list of thousands of tasks shares it and can tell it by identity.
+const plain = new WeakMap<Check['limits'][number], Limit>()
+const provided = new WeakMap<Provision, Limit>()
+
+function withoutCondition(limit: Check['limits'][number]): Limit {
+  const earlier = plain.get(limit)
+  if (earlier) return earlier
+  const { when: _, ...made } = limit
+  plain.set(limit, made)
+  return made
+}
+
+function limitOf(provision: Provision): Limit | null {
   if (!provision.limit) return null
+  const earlier = provided.get(provision)
+  if (earlier) return earlier
   const { kind, name, citation, edition, confirmedBy, confirmedOn } = provision
-  return {
+  const made: Limit = {
     id: provision.id,
-    measurand,
+    measurand: provision.measurand,
     datum: provision.limit.datum,
     unit: provision.limit.unit,
     low: provision.limit.low,
@@ -44,6 +58,8 @@ function limitOf(provision: Provision, measurand: string): Limit | null {
     avoid: provision.limit.avoid,
     basis: { kind, name, citation, ...(edition === undefined ? {} : { edition }), confirmedBy, confirmedOn },
   }
+  provided.set(provision, made)
+  return made
 }
 
 /** -1 when `one` asks less than `other` at this end, 0 alike, 1 more; null when no common system tells, or the systems contradict each other. */
@@ -88,16 +104,16 @@ const holds = (when: string | undefined, at: readonly Facts[]) => when === undef
  * - Nothing is dropped silently: every limit that would have held is in `limits` or in `setAside`. The order of the provisions does not matter.
  */
 export function limitsAt(check: Check, at: readonly Facts[], provisions: readonly Provision[]): LimitsInForce {
-  const builtIn = check.limits.filter(limit => holds(limit.when, at)).map(({ when: _, ...limit }): Limit => limit)
+  const builtIn = check.limits.filter(limit => holds(limit.when, at)).map(withoutCondition)
   const { measurand, datum, unit } = check
-  if (measurand === undefined) return { limits: builtIn, setAside: [], notLoosened: [], notes: [] }
+  if (measurand === undefined || provisions.length === 0) return { limits: builtIn, setAside: [], notLoosened: [], notes: [] }
 
   const fitting = provisions
     .filter(provision => provision.measurand === measurand
       && (provision.setting === null || at.some(facts => facts.face.settings.includes(provision.setting!)))
       && holds(provision.when, at))
     .sort(byCodePoint)
-  const own = fitting.flatMap(provision => limitOf(provision, measurand) ?? [])
+  const own = fitting.flatMap(provision => limitOf(provision) ?? [])
   let limits = [...builtIn, ...own.filter(limit => limit.datum === datum && limit.unit === unit)]
   const setAside: SetAside[] = []
   const notLoosened: LimitsInForce['notLoosened'] = []

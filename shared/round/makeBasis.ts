@@ -2,7 +2,6 @@ import type { Check, Checklist } from '../checklist/check'
 import { elementsOf } from '../line/line'
 import type { Line, LineElement } from '../line/line'
 import type { Provision } from '../provision/provision'
-import { canonicalJson } from '../record/canonicalJson'
 import { RULES_VERSION } from './basis'
 import type { RoundBasis } from './basis'
 import { walkList } from './walkList'
@@ -17,6 +16,14 @@ export class ChecklistsDiffer extends Error {
   }
 }
 
+/** Whether two JSON values are alike, whatever the order of their keys: a checklist that was stored comes back in another order. */
+function alike(one: unknown, other: unknown): boolean {
+  if (one === other) return true
+  if (typeof one !== 'object' || typeof other !== 'object' || one === null || other === null || Array.isArray(one) !== Array.isArray(other)) return false
+  const keys = Object.keys(one)
+  return keys.length === Object.keys(other).length && keys.every(key => Object.hasOwn(other, key) && alike((one as Record<string, unknown>)[key], (other as Record<string, unknown>)[key]))
+}
+
 function checksOf(checklists: readonly Checklist[]): Check[] {
   const kept = new Map<string, { check: Check, from: string }>()
   for (const { id: from, checks } of checklists) {
@@ -24,7 +31,7 @@ function checksOf(checklists: readonly Checklist[]): Check[] {
       const earlier = kept.get(check.id)
       if (!earlier) kept.set(check.id, { check, from })
       // Sections are shared: alike but for what they disturb, since a checklist names only its own checks there.
-      else if (canonicalJson({ ...check, disturbs: [] }) !== canonicalJson({ ...earlier.check, disturbs: [] })) throw new ChecklistsDiffer(check.id, [earlier.from, from])
+      else if (!alike({ ...check, disturbs: [] }, { ...earlier.check, disturbs: [] })) throw new ChecklistsDiffer(check.id, [earlier.from, from])
       else if (check.disturbs.some(id => !earlier.check.disturbs.includes(id))) earlier.check = { ...earlier.check, disturbs: [...new Set([...earlier.check.disturbs, ...check.disturbs])] }
     }
   }
@@ -40,7 +47,8 @@ function checksOf(checklists: readonly Checklist[]): Check[] {
  */
 export function makeBasis(line: Line, checklists: readonly Checklist[], provisions: readonly Provision[]): RoundBasis {
   const checks = checksOf(checklists)
-  const pinned = [...provisions].sort((one, other) => one.id < other.id ? -1 : one.id > other.id ? 1 : 0)
+  // Through JSON once: rows bring members that are there and undefined, which have no canonical form.
+  const pinned = (JSON.parse(JSON.stringify(provisions)) as Provision[]).sort((one, other) => one.id < other.id ? -1 : one.id > other.id ? 1 : 0)
   const { tasks, limits, setAside } = walkList(elementsOf(line), checks, pinned, line.system)
   return {
     rules: RULES_VERSION,

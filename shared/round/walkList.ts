@@ -3,7 +3,7 @@ import { compileCondition, factsNamed } from '../checklist/condition'
 import { factsOf } from '../checklist/facts'
 import type { Facts } from '../checklist/facts'
 import type { Limit } from '../limit/limit'
-import { FACES } from '../line/line'
+import { ELEMENT_KINDS, FACES } from '../line/line'
 import type { Face, LineElement } from '../line/line'
 import type { System } from '../measure/length'
 import { facesAsking, limitsAt } from '../provision/limitsInForce'
@@ -29,7 +29,7 @@ export class LimitsDiffer extends Error {
 
 type Planned = Omit<WalkTask, 'element'>
 
-const at = (facts: Facts, path: string): unknown => path.split('.').reduce<unknown>((value, key) => (value as Record<string, unknown>)[key], facts)
+const valueAt = (facts: Facts, path: readonly string[]): unknown => path.reduce<unknown>((value, key) => (value as Record<string, unknown>)[key], facts)
 
 /**
  * The walk list of elements in the order given; within an element in the order of the checks, outer face before inner.
@@ -41,26 +41,31 @@ const at = (facts: Facts, path: string): unknown => path.split('.').reduce<unkno
  */
 export function walkList(elements: readonly LineElement[], checks: readonly Check[], provisions: readonly Provision[], system: System): WalkList {
   const conditions = [...checks.flatMap(check => [check.when, ...check.limits.map(limit => limit.when)]), ...provisions.map(provision => provision.when)]
-  const paths = [...new Set(['element.kind', 'face.settings', ...conditions.flatMap(text => text === undefined ? [] : factsNamed(compileCondition(text).tree))])].sort()
+  const paths = [...new Set(['element.kind', 'face.settings', ...conditions.flatMap(text => text === undefined ? [] : factsNamed(compileCondition(text).tree))])].map(path => path.split('.'))
   const limits: Record<string, Limit> = {}
+  const kept = new Set<Limit>()
   const setAside = new Map<string, SetAside>()
-  const texts = new Map<string, string>()
+  const provisionsOn = new Map<string, Provision[]>()
+  for (const provision of provisions) provisionsOn.set(provision.measurand, [...provisionsOn.get(provision.measurand) ?? [], provision])
 
   const keep = (limit: Limit): string => {
-    const text = JSON.stringify(limit)
-    const earlier = texts.get(limit.id)
-    if (earlier !== undefined && earlier !== text) throw new LimitsDiffer(limit.id)
-    texts.set(limit.id, text)
-    limits[limit.id] = limit
+    if (kept.has(limit)) return limit.id
+    const earlier = limits[limit.id]
+    // Two checks may hold the same limit, each its own copy; the first stands for both.
+    if (earlier !== undefined && JSON.stringify(earlier) !== JSON.stringify(limit)) throw new LimitsDiffer(limit.id)
+    limits[limit.id] ??= limit
+    kept.add(limit)
     return limit.id
   }
-  const plan = (faces: Record<Face, Facts>, kind: LineElement['kind']): Planned[] => checks.filter(check => check.elements.includes(kind)).flatMap((check) => {
-    const asking = facesAsking(check, FACES.map(face => faces[face]))
+  const checksOf = new Map(ELEMENT_KINDS.map(kind => [kind, checks.filter(check => check.elements.includes(kind))]))
+  const plan = (both: Facts[], kind: LineElement['kind']): Planned[] => checksOf.get(kind)!.flatMap((check) => {
+    const asking = facesAsking(check, both)
+    if (asking.length === 0) return []
     const places: { face: Face | null, of: Facts[] }[] = check.answeredFor === 'face'
       ? asking.map(facts => ({ face: facts.face.name as Face, of: [facts] }))
-      : asking.length > 0 ? [{ face: null, of: asking }] : []
+      : [{ face: null, of: asking }]
     return places.map(({ face, of }) => {
-      const force = limitsAt(check, of, provisions)
+      const force = limitsAt(check, of, provisionsOn.get(check.measurand ?? '') ?? [])
       for (const one of force.setAside) setAside.set(`${one.limit.id} ${one.by}`, one)
       return { check: check.id, face, limits: force.limits.map(keep) }
     })
@@ -70,8 +75,8 @@ export function walkList(elements: readonly LineElement[], checks: readonly Chec
   const tasks: WalkTask[] = []
   for (const element of elements) {
     const faces = factsOf(element, system)
-    const key = FACES.map(face => paths.map(path => String(at(faces[face], path))).join('|')).join('/')
-    const plans = planned.get(key) ?? plan(faces, element.kind)
+    const key = FACES.map(face => paths.map(path => String(valueAt(faces[face], path))).join('|')).join('/')
+    const plans = planned.get(key) ?? plan(FACES.map(face => faces[face]), element.kind)
     planned.set(key, plans)
     for (const { check, face, limits: keys } of plans) tasks.push({ element: element.id, check, face, limits: keys })
   }
