@@ -10,6 +10,11 @@ export type Verdict = (typeof VERDICTS)[number]
 export const DEFICIENCY_STATES = ['open', 'assigned', 'cannot', 'corrected', 'offered', 'disputed', 'endedCorrected', 'endedAccepted', 'endedDecided', 'endedReferred', 'endedInError'] as const
 export type DeficiencyState = (typeof DEFICIENCY_STATES)[number]
 
+/** Whether a deficiency has come to one of its five ends. */
+export function isEnded(deficiency: { state: DeficiencyState }): boolean {
+  return deficiency.state.startsWith('ended')
+}
+
 /** A reading that is the newest word at its place, with what it comes to. */
 export interface Head {
   entry: string

@@ -1,0 +1,58 @@
+import { worse } from './checkOutcomes'
+import type { CheckOutcome, DeficiencyOutcome, ElementOutcome, Verdict } from './outcome'
+import { isEnded } from './outcome'
+import type { WalkSlots } from './walkSlots'
+
+/**
+ * The outcome of each element in walking order, and the checks that are shown: what was found on a struck element or beside the list is shown for as long as it
+ * is open, and on a standing element for good.
+ */
+export function elementOutcomes(slots: WalkSlots, outcomes: readonly CheckOutcome[], deficiencies: readonly DeficiencyOutcome[]): { elements: ElementOutcome[], checks: CheckOutcome[] } {
+  const openOf = new Map<string, DeficiencyOutcome[]>()
+  for (const one of deficiencies) if (!isEnded(one)) openOf.set(one.element, [...openOf.get(one.element) ?? [], one])
+
+  const walking = new Map(slots.elements.map((element, at) => [element.id, at]))
+  const turn = (element: string) => walking.get(element) ?? Infinity
+  const planned: CheckOutcome[] = []
+  const beside: CheckOutcome[] = []
+  for (const [at, slot] of slots.all.entries()) {
+    const outcome = outcomes[at]!
+    if (slot.planned) planned.push(outcome)
+    else if (walking.has(slot.element) || openOf.get(slot.element)?.some(one => one.check === slot.check.id)) beside.push(outcome)
+  }
+  beside.sort((a, b) => order(turn(a.element), turn(b.element)) || order(a.element, b.element) || order(a.check, b.check) || order(a.face ?? '', b.face ?? ''))
+  const checks = [...planned, ...beside]
+
+  const checksOf = new Map<string, CheckOutcome[]>()
+  for (const check of checks) {
+    const list = checksOf.get(check.element)
+    if (list) list.push(check)
+    else checksOf.set(check.element, [check])
+  }
+  const struck = [...checksOf.keys()].filter(id => !walking.has(id)).sort()
+  return { checks, elements: [...walking.keys(), ...struck].map(id => elementOutcome(id, checksOf.get(id) ?? [], openOf.get(id) ?? [], slots.unplanned.has(id))) }
+}
+
+function elementOutcome(element: string, checks: readonly CheckOutcome[], open: readonly DeficiencyOutcome[], unplanned: boolean): ElementOutcome {
+  const outOfUse = open.some(one => one.class === 'outOfUse')
+  const looked = checks.length === 0 || checks.some(check => check.verdict !== 'notInspected' || check.setAside?.why === 'outOfScope')
+  return {
+    element,
+    verdict: checks.reduce<Verdict>((sum, check) => worse(sum, check.verdict), unplanned ? 'notRead' : 'notApplicable'),
+    settled: open.length === 0 && checks.some(check => check.settled),
+    released: !unplanned && looked && open.every(one => one.class === 'ownerMayAccept') && checks.every(isAnswered),
+    outOfUse,
+    tasks: checks.length,
+    answered: checks.filter(check => check.verdict !== 'notRead' && !check.readAgain).length,
+  }
+}
+
+/** Read, or set aside for a reason that is not merely "not yet"; nothing to be measured or looked at again. */
+function isAnswered(check: CheckOutcome): boolean {
+  return !check.readAgain && check.verdict !== 'notRead' && check.verdict !== 'withinError' && check.verdict !== 'groundNotFinished'
+    && !(check.verdict === 'notInspected' && check.setAside?.why === 'notYet')
+}
+
+function order<T extends string | number>(a: T, b: T): number {
+  return a < b ? -1 : a > b ? 1 : 0
+}
