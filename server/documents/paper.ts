@@ -1,7 +1,7 @@
 import type { Role } from '../../shared/drawing/displayList'
 
 /** A letter sheet in points, as the design studies measure it (0.75 in left and right). */
-export const PAPER = { width: 612, height: 792, left: 54, right: 558, top: 96, bottom: 706 } as const
+export const PAPER = { width: 612, height: 792, left: 54, right: 558, top: 72, bottom: 718 } as const
 /** Width between the margins. */
 export const MEASURE = PAPER.right - PAPER.left
 

@@ -2,14 +2,17 @@ import type { PDFImage } from 'pdf-lib'
 import { tapeTag, tapeTagWidth } from '../../shared/drawing/displayList'
 import { tapeOf } from '../../shared/line/lineMark'
 import type { RecordDeficiency, RecordPhoto, RecordStep } from '../../shared/record/record'
-import { MEASURE, PAPER } from './paper'
+import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { heading, tagOf } from './recordFrame'
 import { fill, sentence } from './wording'
 
 export type Images = Map<string, PDFImage>
 const GAP = 16
-const PHOTO = { width: (MEASURE - 2 * GAP) / 3, height: 116 }
+/** Histories hang beside their tags; photos stand under them in the same column. */
+const HANG = 60
+const WHO = 172
+const PHOTO = { height: 116 }
 
 /** Each deficiency from its finding to where it stands, what is open first, with its photos in the order of its history. */
 export function paintDeficiencies(frame: Frame, images: Images): void {
@@ -29,11 +32,11 @@ function paintDeficiency(frame: Frame, one: RecordDeficiency, images: Images): v
   const check = record.checks.find(each => each.element === one.element && each.check === one.check)
   const place = say.place(one.place)
   const photos = photosOf(frame, one)
-  const x = PAPER.left + 60
+  const x = PAPER.left + HANG
   const title = sheet.lay([{ text: `${tagOf(frame, one.element)}: ${check?.title ?? one.check}`, weight: 500 }], PAPER.right - x, { size: 10.5, lead: 14 })
   const state = fill(states[one.state], { who: one.assignedTo ?? '', for: one.waitsFor ?? '' })
   const stands = sheet.lay([{ text: sentence(state), weight: 500 }, { text: ` \u00b7 ${classes[one.class]}${place ? ` \u00b7 ${place}` : ''}`, role: 'soft' }], PAPER.right - x, { size: 8.8, lead: 12.4 })
-  const steps = one.steps.map((step, at) => ({ words: sheet.lay(stepWords(frame, step, at), PAPER.right - x - 140, { size: 8.8, lead: 12.2 }), who: sheet.lay(fill(say.w.phrases.writtenBy, { by: step.by, at: say.at(step.at) }), 132, { size: 8.25, lead: 12.2, role: 'soft' }) }))
+  const steps = one.steps.map((step, at) => ({ words: sheet.lay(stepWords(frame, step, at), PAPER.right - x - WHO - 10, { size: 8.8, lead: 12.2 }), who: sheet.lay(fill(say.w.phrases.writtenBy, { by: step.by, at: say.at(step.at) }), WHO, { size: 8.25, lead: 12.2, role: 'soft' }) }))
   const first = steps[0]!
   sheet.room(22 + title.height + stands.height + Math.max(first.words.height, first.who.height) + (photos.length > 0 && steps.length < 4 ? PHOTO.height + 40 : 0))
   sheet.rule(sheet.y, { width: 0.75, role: 'line' })
@@ -56,19 +59,18 @@ function paintDeficiency(frame: Frame, one: RecordDeficiency, images: Images): v
         const y = sheet.y
         sheet.structure.within('LI', () => sheet.structure.within('LBody', () => {
           sheet.place(words, x, y, 'P')
-          sheet.place(who, PAPER.right - 132, y, 'P', 'right')
+          sheet.place(who, PAPER.right - WHO, y, 'P', 'right')
         }))
         sheet.y = y + Math.max(words.height, who.height) + 2
       }
     })
-    paintPhotos(frame, photos, images)
+    paintPhotos(frame, photos, images, x)
   })
   sheet.y += 8
 }
 
 function stepWords({ say }: Frame, step: RecordStep, at: number): string {
-  const { phrases, helds, findings, whys, decisions } = say.w
-  void whys
+  const { phrases, helds, findings, decisions } = say.w
   if (step.erased) return phrases.erased
   const person = step.person ?? step.by
   const words = step.words ? `: ${step.words}` : ''
@@ -99,7 +101,7 @@ function photosOf({ record, say }: Frame, one: RecordDeficiency): Shown[] {
   const corrected = one.steps.findIndex(step => step.kind === 'correction')
   return one.steps.flatMap((step, at) => step.photos.flatMap((digest) => {
     const photo = record.photos.find(each => each.digest === digest)
-    const what = corrected === -1 ? say.w.labels.found : at < corrected ? say.w.labels.before : say.w.labels.after
+    const what: string = corrected === -1 ? say.w.labels.found : at < corrected ? say.w.labels.before : say.w.labels.after
     return photo ? [{ photo, what: `${what}, ${one.tag}` }] : []
   }))
 }
@@ -117,21 +119,22 @@ export function paintOtherPhotos(frame: Frame, images: Images): void {
 }
 
 /** Photos in rows of three, each with its number and who took it when. */
-function paintPhotos(frame: Frame, shown: Shown[], images: Images): void {
+function paintPhotos(frame: Frame, shown: Shown[], images: Images, left: number = PAPER.left): void {
   const { sheet, say, photoNumbers } = frame
   const { phrases } = say.w
+  const wide = (PAPER.right - left - 2 * GAP) / 3
   for (let from = 0; from < shown.length; from += 3) {
     const row = shown.slice(from, from + 3).map(({ photo, what }) => {
       const gallery = photo.taken.origin === 'gallery' ? `, ${photo.taken.at ? fill(phrases.fromGallery, { at: say.at(photo.taken.at) }) : phrases.fromGalleryUnknown}` : ''
       const caption = fill(phrases.photoCaption, { n: photoNumbers.get(photo.digest)!, what, by: photo.by, at: say.at(photo.taken.at ?? photo.at) }) + gallery
-      const scale = Math.min(PHOTO.width / photo.width, PHOTO.height / photo.height)
-      return { photo, what, caption: sheet.lay(caption, PHOTO.width, { size: 8.25, lead: 11, role: 'soft' }), width: photo.width * scale, height: photo.height * scale }
+      const scale = Math.min(wide / photo.width, PHOTO.height / photo.height)
+      return { photo, what, caption: sheet.lay(caption, wide, { size: 8.25, lead: 11, role: 'soft' }), width: photo.width * scale, height: photo.height * scale }
     })
     const tallest = Math.max(...row.map(one => one.height))
     sheet.room(tallest + 10 + Math.max(...row.map(one => one.caption.height)))
     const top = sheet.y + 5
     row.forEach(({ photo, what, caption, width, height }, at) => {
-      const x = PAPER.left + at * (PHOTO.width + GAP)
+      const x = left + at * (wide + GAP)
       sheet.photo(images.get(photo.digest)!, x, top, width, height, fill(phrases.photoAlt, { n: photoNumbers.get(photo.digest)!, what }))
       sheet.place(caption, x, top + tallest + 3, 'Caption')
     })

@@ -10,7 +10,7 @@ import { fill, listed, sentence } from './wording'
 export function paintElements(frame: Frame): void {
   const { sheet, record, say } = frame
   const { labels, phrases, works, legend, titles } = say.w
-  const columns = [{ x: PAPER.left, width: 34 }, { x: PAPER.left + 38, width: 168 }, { x: PAPER.left + 214, width: 112 }, { x: PAPER.left + 336, width: 92 }, { x: PAPER.left + 436, width: 68 }]
+  const columns = [{ x: PAPER.left, width: 46 }, { x: PAPER.left + 50, width: 152 }, { x: PAPER.left + 208, width: 112 }, { x: PAPER.left + 326, width: 108 }, { x: PAPER.left + 438, width: 66 }]
   sheet.structure.within('Sect', () => {
     heading(frame, titles.elements)
     sheet.structure.within('Table', () => {
@@ -21,6 +21,7 @@ export function paintElements(frame: Frame): void {
         const use = !of ? '' : of.outOfUse ? (element.gate?.exit ? phrases.attended : phrases.outOfUse) : of.released ? phrases.released : phrases.notReleased
         tableRow(frame, columns, [element.tag, what(element), size(element), legend[state], use], { before: 3.2, after: 3.2, marks: [{ column: 3, state }] })
       }
+      for (const element of record.struck) tableRow(frame, columns, [element.tag, what(element), size(element), phrases.struck, ''], { before: 3.2, after: 3.2 })
     })
   })
 

@@ -12,7 +12,7 @@ export function paintNotes(frame: Frame): void {
   const { sheet, record, say, photoNumbers } = frame
   if (record.notes.length === 0) return
   const { phrases, labels, titles } = say.w
-  const columns = [{ x: PAPER.left, width: 34 }, { x: PAPER.left + 38, width: 310 }, { x: PAPER.left + 360, width: 144 }]
+  const columns = [{ x: PAPER.left, width: 46 }, { x: PAPER.left + 50, width: 272 }, { x: PAPER.left + 334, width: 170 }]
   sheet.structure.within('Sect', () => {
     heading(frame, titles.notes, 90)
     sheet.structure.within('Table', () => {
@@ -96,6 +96,8 @@ export function paintSet(frame: Frame): void {
       rules: record.rules, basis: grouped(record.basis.slice(0, 16)), line: record.line.version, renderer: record.renderer,
       checklists: listed(record.checklists.map(({ id, version }) => fill(phrases.checklistVersion, { id, version })), say.w.and),
     }), { role: 'soft', after: 8 })
+    if (record.conflicts.length > 0) sheet.paragraph(fill(phrases.conflicts, { n: record.conflicts.length }), { weight: 500, after: 5 })
+    if (record.erased.length > 0) sheet.paragraph(fill(phrases.erasedSome, { n: record.erased.length }), { after: 5 })
     const list = (none: string, some: string, lines: string[]) => {
       sheet.paragraph(lines.length === 0 ? none : some, { after: 3, weight: lines.length === 0 ? 400 : 500 })
       if (lines.length > 0) sheet.structure.within('L', () => lines.forEach(line => sheet.structure.within('LI', () => sheet.paragraph(line, { x: PAPER.left + 12, type: 'LBody', after: 2, size: 8.8 }))))

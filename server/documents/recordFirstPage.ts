@@ -18,22 +18,23 @@ const RIGHT = PAPER.left + COLUMN + GAP
 export function paintFirstPage(frame: Frame): void {
   const { sheet, record, say } = frame
   const { titles, phrases } = say.w
-  sheet.y = 71
   sheet.paragraph([{ text: `${record.sentence.lead} `, weight: 500 }, { text: record.sentence.rest }], { type: 'H1', size: 18.75, weight: 300, lead: 23.4, after: 3 })
-  const walked = record.walks.length === 0 ? phrases.notWalked : fill(phrases.walked, { days: say.days(record.walks.map(walk => walk.at)), names: listed([...new Set(record.walks.map(walk => walk.by))], say.w.and) })
+  const read = [...record.walks.map(({ at, by }) => ({ at, by })), ...record.checks.flatMap(check => check.readings.map(({ madeAt, by }) => ({ at: madeAt, by })))]
+  const walked = read.length === 0 ? phrases.notWalked : fill(phrases.walked, { days: say.days(read.map(one => one.at)), names: listed([...new Set(read.map(one => one.by))], say.w.and) })
   sheet.paragraph(walked, { role: 'soft', after: 8 })
   paintAmended(frame)
-  paintLine(frame)
-  paintLegend(frame)
-
-  twoColumns(frame, [titles.whoAndWhere, definitions(frame)], [titles.held, held(frame)])
-  twoColumns(frame, [titles.notSeen, [notSeen(frame)]], [titles.asked, [record.questions.length === 0 ? phrases.nothingAsked : record.questions.map(({ words, askedOf, on }) => fill(phrases.putTo, { words: closed(words), to: askedOf, on: say.day(on) })).join('\n')]])
+  const columns: [Part[], Part[]] = [
+    [[titles.whoAndWhere, definitions(frame)]],
+    [[titles.held, held(frame)], [titles.notSeen, [notSeen(frame)]], [titles.asked, asked(frame)]],
+  ]
+  const body = sheet.lay(record.isNot, MEASURE, SMALL)
+  paintLine(frame, columnsHeight(frame, columns) + body.height + 30)
+  paintColumns(frame, columns)
   sheet.structure.within('Sect', () => {
-    const body = sheet.lay(record.isNot, MEASURE)
     sheet.room(20 + body.height)
     sheet.y = columnHeading(frame, titles.isNot, PAPER.left, sheet.y, MEASURE)
     sheet.place(body, PAPER.left, sheet.y)
-    sheet.y += body.height + 9
+    sheet.y += body.height + 8
   })
   paintCautions(frame)
 }
@@ -57,15 +58,18 @@ export function marksOf(record: RecordDocument): LineMarks {
   }))
 }
 
-function paintLine({ sheet, record, say }: Frame): void {
+/** The line, drawn smaller (never under two thirds) where what must stand on this page would not fit under it. */
+function paintLine(frame: Frame, below: number): void {
+  const { sheet, record, say } = frame
   const marks = marksOf(record)
-  const drawing = drawLine(record.line, { variant: 'paper', width: MEASURE / 0.75, marks })
   const words = elementsOf(record.line).map(element => `${element.tag} ${say.w.legend[diamondOf(marks[element.id]!)]}`)
-  // A very long line may not leave room for anything else on the page; it is made smaller rather than cut.
-  const scale = Math.min(0.75, (PAPER.bottom - PAPER.top - 60) / drawing.height)
+  const legend = 36
+  const drawn = [0.75, 0.66, 0.58, 0.5].map(scale => ({ scale, drawing: drawLine(record.line, { variant: 'paper', width: MEASURE / scale, marks }) }))
+  const { scale, drawing } = drawn.find(({ scale, drawing }) => sheet.y + drawing.height * scale + legend + below <= PAPER.bottom) ?? drawn[0]!
   sheet.room(drawing.height * scale)
   sheet.drawing(drawing, PAPER.left, sheet.y, scale, fill(say.w.phrases.lineAlt, { elements: words.join(', ') }))
   sheet.y += drawing.height * scale + 5
+  paintLegend(frame)
 }
 
 /** The diamonds that the line wears, and no others. */
@@ -97,17 +101,34 @@ type Cells = [string, Words][]
 /** What a column holds: pairs of a label and its words (with the width of the labels), or paragraphs. */
 type ColumnBody = { pairs: Cells, labels: number, ruled?: boolean } | string[]
 
-function twoColumns(frame: Frame, [leftTitle, left]: [string, ColumnBody], [rightTitle, right]: [string, ColumnBody]): void {
+type Part = [title: string, body: ColumnBody]
+
+/** Two columns of parts, each column for itself: what is held, not seen and asked stands beside who and where. */
+function paintColumns(frame: Frame, columns: [Part[], Part[]]): void {
   const { sheet } = frame
-  const height = Math.max(heightOf(frame, left), heightOf(frame, right)) + 20
-  sheet.room(height)
+  const whole = columnsHeight(frame, columns)
+  sheet.room(whole)
   const top = sheet.y
-  sheet.structure.within('Sect', () => paintColumn(frame, columnHeading(frame, leftTitle, PAPER.left, top, COLUMN), PAPER.left, left))
-  sheet.structure.within('Sect', () => paintColumn(frame, columnHeading(frame, rightTitle, RIGHT, top, COLUMN), RIGHT, right))
-  sheet.y = top + height + 9
+  columns.forEach((parts, at) => {
+    const x = at === 0 ? PAPER.left : RIGHT
+    let y = top
+    for (const [title, body] of parts) {
+      const from = y
+      sheet.structure.within('Sect', () => paintColumn(frame, columnHeading(frame, title, x, from, COLUMN), x, body))
+      y += heightOf(frame, body) + PART
+    }
+  })
+  sheet.y = top + whole
 }
 
-const PAIR = { size: 9.2, lead: 12.6 }
+/** Heading and the room after a part. */
+const PART = 20 + 8
+function columnsHeight(frame: Frame, columns: [Part[], Part[]]): number {
+  return Math.max(...columns.map(parts => parts.reduce((sum, [, body]) => sum + heightOf(frame, body) + PART, 0)))
+}
+
+const SMALL = { size: 9.2, lead: 12.8 }
+const PAIR = SMALL
 function layPairs({ sheet }: Frame, body: Exclude<ColumnBody, string[]>) {
   return body.pairs.map(([label, words]) => {
     const [a, b] = [sheet.lay(label, body.labels - 6, { ...PAIR, role: body.ruled ? 'ink' : 'soft' }), sheet.lay(words, COLUMN - body.labels, PAIR)]
@@ -178,6 +199,12 @@ function held(frame: Frame): ColumnBody {
     return [tagOf(frame, element), frame.elements.get(element)?.gate?.exit ? fill(phrases.heldWayOut, { how: words }) : words]
   })
   return { pairs, labels: 38, ruled: true }
+}
+
+function asked({ record, say }: Frame): string[] {
+  const { phrases } = say.w
+  if (record.questions.length === 0) return [phrases.nothingAsked]
+  return record.questions.map(({ words, askedOf, on }) => fill(phrases.putTo, { words: closed(words), to: askedOf, on: say.day(on) }))
 }
 
 /** What nobody saw: set aside with a reason, not read in full, ground that is still to come, and what no walk ever sees. */

@@ -22,12 +22,12 @@ export interface Frame {
 export function frameOf(sheet: Sheet, record: RecordDocument, say: Speech, digest: string): Frame {
   return {
     sheet, record, say, digest,
-    elements: new Map(elementsOf(record.line).map(element => [element.id, element])),
+    elements: new Map([...record.struck, ...elementsOf(record.line)].map(element => [element.id, element])),
     photoNumbers: new Map(record.photos.map((photo, at) => [photo.digest, at + 1])),
   }
 }
 
-/** The short name of an element; elements that a later version of the line struck keep their id as a name. */
+/** The short name of an element, also of one that was struck. */
 export function tagOf({ elements }: Frame, element: string | null): string {
   return element === null ? '' : elements.get(element)?.tag ?? element.slice(0, 8)
 }
@@ -47,8 +47,8 @@ export function heading({ sheet }: Frame, [light, strong]: string[], room = 150)
   sheet.room(room)
   if (sheet.y > PAPER.top) sheet.y += 22
   const block = sheet.lay([{ text: light!, weight: 300 }, { text: strong!, weight: 500 }], PAPER.right - PAPER.left, { size: 20.25, lead: 25 })
-  sheet.place(block, PAPER.left, sheet.y - 6, 'H1')
-  sheet.y += block.height + 4
+  sheet.place(block, PAPER.left, sheet.y, 'H1')
+  sheet.y += block.height + 8
 }
 
 /** A smaller heading under a rule, for a column. */

@@ -66,7 +66,7 @@ function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
   if (!first) sheet.rule(sheet.y, { width: 0.75, role: 'line' })
   const top = sheet.y + 8
   sheet.structure.within('Sect', () => {
-    const tag = sheet.lay(tagOf(frame, check.element), PICTURE.x - PAPER.left, { size: 15, weight: 300, lead: 17 })
+    const tag = sheet.lay(tagOf(frame, check.element), PICTURE.x - PAPER.left - 2, { size: 15, weight: 300, lead: 17 })
     sheet.structure.within('H2', () => {
       sheet.place(tag, PAPER.left, top - 2, null)
       sheet.place(said[0]!, wide.x, top - 2, null)
@@ -111,6 +111,7 @@ function circumstances(reading: RecordReading, check: RecordCheck, { say, photoN
     ...(reading.note ? [fill(phrases.note, { words: reading.note })] : []),
     ...(reading.otherSystemDiffers ? [phrases.otherSystem] : []),
     ...(reading.disagreesWith.length > 0 ? [fill(phrases.disagrees, { n: reading.disagreesWith.length + 1 })] : []),
+    ...(reading.overruledBy ? [phrases.overruled] : []),
   ].filter(part => part).join(' \u00b7 ')
 }
 
@@ -122,22 +123,26 @@ function earlier(reading: RecordReading, check: RecordCheck, { say }: Frame): st
     : fill(reading.reason ? phrases.replaced : phrases.replacedNoReason, { ...values, reason: reading.reason ?? '' }).trim()
 }
 
-/** Looks that were clear, by element, in few words: who looked and when is the same for most. */
+/** Looks that were clear, in few words: elements on which the same was looked at by the same people on the same days share a row. */
 function paintClear(frame: Frame, checks: RecordCheck[]): void {
   if (checks.length === 0) return
   const { sheet, say } = frame
-  const columns = [{ x: PAPER.left, width: 34 }, { x: PAPER.left + 38, width: 318 }, { x: PAPER.left + 372, width: 132 }]
+  const columns = [{ x: PAPER.left, width: 132 }, { x: PAPER.left + 144, width: 230 }, { x: PAPER.left + 386, width: 118 }]
+  const rows = new Map<string, { tags: string[], titles: string, who: string }>()
+  for (const element of new Set(checks.map(check => check.element))) {
+    const own = checks.filter(check => check.element === element)
+    const titles = own.map(check => check.face ? `${check.title} (${say.w.faces[check.face]})` : check.title).join(' \u00b7 ')
+    const readings = own.flatMap(check => check.readings)
+    const who = fill(say.w.phrases.writtenBy, { by: listed([...new Set(readings.map(reading => reading.by))], say.w.and), at: say.days(readings.map(reading => reading.madeAt)) })
+    const row = rows.get(`${titles}\u0000${who}`) ?? { tags: [], titles, who }
+    row.tags.push(tagOf(frame, element))
+    rows.set(`${titles}\u0000${who}`, row)
+  }
   sheet.structure.within('Sect', () => {
     heading(frame, say.w.titles.clear)
     sheet.structure.within('Table', () => {
       tableRow(frame, columns, [say.w.labels.element, say.w.labels.checks, say.w.labels.who], { head: true, before: 0 })
-      for (const element of new Set(checks.map(check => check.element))) {
-        const own = checks.filter(check => check.element === element)
-        const titles = own.map(check => check.face ? `${check.title} (${say.w.faces[check.face]})` : check.title)
-        const readings = own.flatMap(check => check.readings)
-        const who = listed([...new Set(readings.map(reading => reading.by))], say.w.and)
-        tableRow(frame, columns, [tagOf(frame, element), titles.join(' \u00b7 '), fill(say.w.phrases.writtenBy, { by: who, at: say.days(readings.map(reading => reading.madeAt)) })], { marks: [{ column: 1, state: 'conforms' }] })
-      }
+      for (const { tags, titles, who } of rows.values()) tableRow(frame, columns, [listed(tags, say.w.and), titles, who], { marks: [{ column: 1, state: 'conforms' }] })
     })
   })
 }
@@ -148,7 +153,7 @@ function paintSetAside(frame: Frame): void {
   const checks = record.checks.filter(check => check.verdict === 'notInspected' || check.verdict === 'notApplicable')
   if (checks.length === 0) return
   const { whys, verdicts, phrases, titles } = say.w
-  const columns = [{ x: PAPER.left, width: 34 }, { x: PAPER.left + 38, width: 220 }, { x: PAPER.left + 270, width: 234 }]
+  const columns = [{ x: PAPER.left, width: 46 }, { x: PAPER.left + 50, width: 200 }, { x: PAPER.left + 262, width: 242 }]
   sheet.structure.within('Sect', () => {
     heading(frame, titles.setAside, 90)
     sheet.structure.within('Table', () => {

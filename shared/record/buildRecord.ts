@@ -1,8 +1,11 @@
 import type { Both, Check } from '../checklist/check'
 import type { AnyEntry, Entry, PhotoRef, PayloadOf } from '../entry/entry'
+import type { LineElement } from '../line/line'
 import { elementsOf } from '../line/line'
 import type { RoundBasis } from '../round/basis'
+import { tasksFor } from '../round/makeBasis'
 import type { CheckOutcome, DeficiencyOutcome, RoundOutcome } from '../round/outcome'
+import { isEnded } from '../round/outcome'
 import type { Caution, RecordCheck, RecordDeficiency, RecordDocument, RecordParticulars, RecordPhoto, RecordReading, RecordSignature, RecordStep } from './record'
 import { recordSchema, RENDERER_VERSION } from './record'
 import type { RecordTexts } from './recordSentence'
@@ -22,7 +25,7 @@ export class RecordError extends Error {
 
 export interface RecordSources {
   particulars: RecordParticulars
-  /** The basis in force, with the line as built. */
+  /** The basis in force. */
   basis: RoundBasis
   /** Its digest; must be the one that the outcome was folded over. */
   basisDigest: string
@@ -52,10 +55,11 @@ export function buildRecord({ particulars, basis, basisDigest, entries: given, o
   const checks = new Map(basis.checks.map(check => [check.id, check]))
   const checkOf = (id: string): Check => checks.get(id) ?? raise('unknownCheck', `The outcome names check ${id}, which is not in the basis; fold over the basis in force.`)
   const replacedBy = new Map(entries.flatMap(entry => entry.envelope.replaces.map(id => [id, entry] as const)))
-  const ignored = new Set(outcome.ignored.map(one => one.entry))
-  const source: Source = { entries, entryOf, names, nameOf, replacedBy, ignored }
+  const source: Source = { entries, entryOf, names, nameOf, replacedBy }
 
-  const recordChecks = outcome.checks.map(one => checkRecord(one, checkOf(one.check), basis, say, source))
+  const built = elementsOf(outcome.line)
+  const walkList = walkListOf(basis, built)
+  const recordChecks = outcome.checks.map(one => checkRecord(one, checkOf(one.check), walkList.tasks, say, source))
   return recordSchema.parse({
     ...particulars,
     format: 'smoothside-record',
@@ -65,11 +69,12 @@ export function buildRecord({ particulars, basis, basisDigest, entries: given, o
     basis: basisDigest,
     checklists: basis.checklists,
     walks: entries.filter(is('walkOpened')).map(entry => ({ entry: entry.envelope.id, at: entry.envelope.madeAt, by: nameOf(entry.envelope.author), device: entry.payload?.device ?? '' })),
-    sentence: recordSentence(basis.line, outcome, texts.sentence),
+    sentence: recordSentence(outcome.line, outcome, texts.sentence),
     isNot: texts.isNot,
-    line: basis.line,
+    line: outcome.line,
+    struck: elementsOf(basis.line).filter(element => built.every(one => one.id !== element.id)),
     elements: outcome.elements,
-    limits: Object.fromEntries(recordChecks.flatMap(check => check.limits).sort(byCodeUnit).map(key => [key, basis.limits[key]])),
+    limits: Object.fromEntries(recordChecks.flatMap(check => check.limits).sort(byCodeUnit).map(key => [key, walkList.limits[key]])),
     limitsSetAside: basis.setAside ?? [],
     provisions: basis.provisions ?? [],
     checks: recordChecks,
@@ -77,9 +82,12 @@ export function buildRecord({ particulars, basis, basisDigest, entries: given, o
     notes: entries.filter(is('note')).flatMap(entry => entry.payload === null ? [] : [{ ...about(entry, source), element: entry.envelope.element, words: entry.payload.words, photos: digestsOf(entry.payload.photos) }]),
     photos: photosOf(source),
     signatures: entries.filter(is('signature')).flatMap(entry => entry.payload === null ? [] : [signatureRecord(entry, entry.payload, texts)]),
-    cautions: cautionsOf(basis).map(caution => ({ caution, text: texts.cautions[caution] })),
+    cautions: cautionsOf(built).map(caution => ({ caution, text: texts.cautions[caution] })),
     entries: entries.map(entry => ({ id: entry.envelope.id, digest: entry.digest, number: numberOf(entry), kind: entry.envelope.kind, madeAt: entry.envelope.madeAt })),
     ignored: outcome.ignored,
+    refusedLinks: outcome.refusedLinks,
+    erased: outcome.erased,
+    conflicts: outcome.conflicts,
   })
 }
 
@@ -89,7 +97,13 @@ interface Source {
   names: Record<string, string>
   nameOf: (account: string) => string
   replacedBy: Map<string, AnyEntry>
-  ignored: Set<string>
+}
+
+/** Tasks and limits of the basis, and those of elements that the walk brought. */
+function walkListOf(basis: RoundBasis, built: LineElement[]): Pick<RoundBasis, 'tasks' | 'limits'> {
+  const planned = new Set(elementsOf(basis.line).map(element => element.id))
+  const brought = built.filter(element => !planned.has(element.id)).map(element => tasksFor(basis, element))
+  return { tasks: [...basis.tasks, ...brought.flatMap(list => list.tasks)], limits: Object.assign({}, basis.limits, ...brought.map(list => list.limits)) as RoundBasis['limits'] }
 }
 
 function raise(code: RecordFault, sentence: string): never {
@@ -97,6 +111,8 @@ function raise(code: RecordFault, sentence: string): never {
 }
 
 const is = <K extends AnyEntry['envelope']['kind']>(kind: K) => (entry: AnyEntry): entry is Extract<AnyEntry, Entry<K>> => entry.envelope.kind === kind
+/** The payload of an entry of that kind; null for another kind and for an erased one. */
+const payloadOf = <K extends AnyEntry['envelope']['kind']>(entry: AnyEntry, kind: K): PayloadOf<K> | null => is(kind)(entry) ? entry.payload as PayloadOf<K> | null : null
 const digestsOf = (photos: PhotoRef[]) => photos.map(photo => photo.digest)
 const byCodeUnit = (a: string, b: string) => a < b ? -1 : a > b ? 1 : 0
 const about = (entry: AnyEntry, { nameOf }: Source) => ({ entry: entry.envelope.id, at: entry.envelope.madeAt, by: nameOf(entry.envelope.author) })
@@ -108,23 +124,17 @@ function numberOf(entry: AnyEntry): number {
 function refuseUnfinished(particulars: RecordParticulars, outcome: RoundOutcome): void {
   if (outcome.unknown.length > 0) throw new RecordError('unknownEntry', `${outcome.unknown.length} entries are of a kind that these rules do not know; update before sealing.`)
   if (outcome.waiting.length > 0) throw new RecordError('unknownEntry', `${outcome.waiting.length} entries wait for entries that have not come; let every device send first.`)
-  const open = outcome.deficiencies.some(one => !one.state.startsWith('ended')) || outcome.elements.some(element => !element.released)
+  const open = outcome.deficiencies.some(one => !isEnded(one)) || outcome.elements.some(element => !element.released)
   if (particulars.scope === 'final' && open) throw new RecordError('openInFinal', 'Something is still open, so the record cannot be final; seal an interim record or close what is open first.')
 }
 
-function checkRecord(one: CheckOutcome, check: Check, basis: RoundBasis, say: (both: Both) => string, source: Source): RecordCheck {
-  const task = basis.tasks.find(task => task.element === one.element && task.check === one.check && task.face === one.face)
-  const here = (entry: AnyEntry) => entry.envelope.element === one.element && (entry.envelope.place?.face ?? null) === one.face && !source.ignored.has(entry.envelope.id)
-  const heads = new Set(one.heads.map(head => head.entry))
+function checkRecord(one: CheckOutcome, check: Check, tasks: RoundBasis['tasks'], say: (both: Both) => string, source: Source): RecordCheck {
+  const task = tasks.find(task => task.element === one.element && task.check === one.check && task.face === one.face)
   const readings = one.heads.map(head => readingRecord(source.entryOf(head.entry), source, head))
-  // The first reading governs: stable, so that the others keep the order of the fold.
+  // The reading that governs comes first; sorting is stable, so the others keep the order of the fold.
   readings.sort((a, b) => Number(b.entry === one.governs) - Number(a.entry === one.governs))
-  const earlier = source.entries.filter(entry => entry.envelope.kind === 'reading' && entry.envelope.check === one.check && here(entry) && !heads.has(entry.envelope.id) && entry.payload !== null)
-  const asides = one.verdict !== 'notApplicable' && one.verdict !== 'notInspected'
-    ? []
-    : source.entries.filter(is('setAside')).filter(entry => entry.payload?.as === one.verdict && !source.replacedBy.has(entry.envelope.id) && !source.ignored.has(entry.envelope.id)
-      && entry.envelope.element === one.element && (entry.envelope.check === null || (entry.envelope.check === one.check && [null, one.face].includes(entry.envelope.place?.face ?? null))))
-  const aside = asides[asides.length - 1]
+  const earlier = one.earlier.map(source.entryOf).filter(entry => entry.payload !== null)
+  const aside = one.setAside === null ? null : source.entryOf(one.setAside.entry)
   return {
     element: one.element, check: one.check, face: one.face,
     title: say(check.title), task: say(check.task), note: say(check.note), caution: check.caution ? say(check.caution) : null,
@@ -136,23 +146,22 @@ function checkRecord(one: CheckOutcome, check: Check, basis: RoundBasis, say: (b
     verdict: one.verdict, settled: one.settled, readAgain: one.readAgain,
     readings,
     earlier: earlier.map(entry => readingRecord(entry, source, null)),
-    setAside: aside?.payload
-      ? { ...about(aside, source), as: aside.payload.as, why: aside.payload.why, words: aside.payload.words ?? null, photos: digestsOf(aside.payload.photos) }
-      : null,
+    setAside: aside === null || one.setAside === null
+      ? null
+      : { ...about(aside, source), as: one.setAside.as, why: one.setAside.why, words: payloadOf(aside, 'setAside')?.words ?? null, photos: digestsOf(payloadOf(aside, 'setAside')?.photos ?? []) },
   }
 }
 
 function readingRecord(entry: AnyEntry, source: Source, head: CheckOutcome['heads'][number] | null): RecordReading {
-  if (entry.envelope.kind !== 'reading' || entry.payload === null) return raise('unknownEntry', `Entry ${entry.envelope.id} stands as a reading but is none that can be read; fold again.`)
-  const payload = entry.payload as PayloadOf<'reading'>
+  const payload = payloadOf(entry, 'reading') ?? raise('unknownEntry', `Entry ${entry.envelope.id} stands as a reading but is none that can be read; fold again.`)
   const next = source.replacedBy.get(entry.envelope.id)
   return {
     entry: entry.envelope.id, by: source.nameOf(entry.envelope.author), madeAt: entry.envelope.madeAt, place: entry.envelope.place, value: payload.value,
     verdict: head?.verdict ?? null, margin: head?.margin ?? null, limit: head?.limit ?? null,
-    otherSystemDiffers: head?.otherSystemDiffers ?? false, disagreesWith: head?.disagreesWith ?? [],
+    otherSystemDiffers: head?.otherSystemDiffers ?? false, disagreesWith: head?.disagreesWith ?? [], overruledBy: head?.overruledBy ?? null,
     note: payload.note || null, tag: payload.tag ?? null, photos: digestsOf(payload.photos),
     replacedBy: next?.envelope.id ?? null,
-    reason: next?.envelope.kind === 'reading' ? (next.payload as PayloadOf<'reading'> | null)?.reason || null : null,
+    reason: (next && payloadOf(next, 'reading')?.reason) || null,
   }
 }
 
@@ -219,8 +228,7 @@ function signatureRecord(entry: AnyEntry, payload: PayloadOf<'signature'>, texts
 }
 
 /** The cautions that the line itself calls for, in a fixed order. */
-function cautionsOf(basis: RoundBasis): Caution[] {
-  const elements = elementsOf(basis.line)
+function cautionsOf(elements: LineElement[]): Caution[] {
   const settings = new Set(elements.flatMap(element => [...element.faces.outer.settings, ...element.faces.inner.settings]))
   const gates = elements.flatMap(element => element.gate ? [element.gate] : [])
   const wanted: [Caution, boolean][] = [

@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { DEFICIENCY_CLASSES, DRAWINGS, METHODS } from '../checklist/check'
 import { DECISIONS, digestSchema, ENTRY_KINDS, MEANINGS, placeSchema, readingValueSchema, strokeSchema } from '../entry/entry'
 import { limitSchema, UNITS } from '../limit/limit'
-import { FACES, lineSchema } from '../line/line'
+import { elementSchema, FACES, lineSchema } from '../line/line'
 import { SYSTEMS } from '../measure/length'
 import { provisionSchema } from '../provision/provision'
 import { DEFICIENCY_STATES, VERDICTS } from '../round/outcome'
@@ -86,6 +86,8 @@ export const recordReadingSchema = z.object({
   limit: z.string().nullable(),
   otherSystemDiffers: z.boolean(),
   disagreesWith: z.array(uuid),
+  /** The settlement by which another reading at this place stands; this one is shown and does not count. */
+  overruledBy: uuid.nullable(),
   note: z.string().nullable(),
   tag: z.string().nullable(),
   photos: photoDigests,
@@ -225,7 +227,10 @@ export const recordSchema = recordParticularsSchema.extend({
   sentence: z.object({ lead: shown, rest: shown }).strict(),
   /** What this record is not, as printed on page 1. */
   isNot: shown,
+  /** As built: with the edits of the walk. */
   line: lineSchema,
+  /** Elements that the walk struck from the line; readings on them stay in the record. */
+  struck: z.array(elementSchema),
   elements: z.array(z.object({
     element: uuid, verdict: z.enum(VERDICTS), settled: z.boolean(), released: z.boolean(), outOfUse: z.boolean(),
     tasks: z.number().int().min(0), answered: z.number().int().min(0),
@@ -245,5 +250,11 @@ export const recordSchema = recordParticularsSchema.extend({
   entries: z.array(z.object({ id: uuid, digest: digestSchema, number: z.number().int().min(1), kind: z.string().max(40), madeAt: instant }).strict()),
   /** Entries of that set which the rules set aside, and why. */
   ignored: z.array(z.object({ entry: uuid, why: z.string() }).strict()),
+  /** Links between entries that the rules do not follow. */
+  refusedLinks: z.array(z.object({ entry: uuid, target: uuid, why: z.string() }).strict()),
+  /** Readings whose payload was erased under a reason and by two people. */
+  erased: z.array(uuid),
+  /** Changes of the basis or the line that stand side by side and that nobody has settled. */
+  conflicts: z.array(z.object({ of: z.enum(['basis', 'line']), entries: z.array(uuid) }).strict()),
 }).strict()
 export type RecordDocument = z.infer<typeof recordSchema>

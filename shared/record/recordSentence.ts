@@ -2,7 +2,8 @@ import { z } from 'zod'
 import { MEANINGS } from '../entry/entry'
 import type { Line } from '../line/line'
 import { elementsOf } from '../line/line'
-import type { DeficiencyOutcome, RoundOutcome } from '../round/outcome'
+import type { RoundOutcome } from '../round/outcome'
+import { isEnded } from '../round/outcome'
 import { CAUTIONS } from './record'
 
 const text = z.string().min(1)
@@ -20,9 +21,6 @@ export const recordTextsSchema = z.object({
   }).strict(),
 }).strict()
 export type RecordTexts = z.infer<typeof recordTextsSchema>
-
-/** States in which a deficiency has come to its end. */
-export const isEnded = (deficiency: Pick<DeficiencyOutcome, 'state'>) => deficiency.state.startsWith('ended')
 
 /**
  * The outcome in one sentence, in two parts: what is released, and what is not. Says nothing that the fold did not decide.

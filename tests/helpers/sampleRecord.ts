@@ -30,7 +30,7 @@ function element(n: number, tag: string, kind: 'run' | 'gate', feet: number, mor
   const face = { settings: ['school' as const, ...(more.name === 'pool' ? ['pool' as const] : [])], ground: { finished: true, surface: 'soft' as const } }
   const { name: _, ...rest } = more
   return {
-    id: uuid(n, 2), kind, tag, work: 'new', length: feet * FOOT, height: 5 * FOOT, rise: 0, bays: kind === 'run' ? Math.max(1, Math.round(feet / 10)) : 1,
+    id: uuid(n, 2), kind, tag, work: 'new', length: feet * FOOT, height: 6 * FOOT, rise: 0, bays: kind === 'run' ? Math.max(1, Math.round(feet / 10)) : 1,
     ...(kind === 'run' ? { mesh: 2 * INCH } : {}), topRail: true, bottom: 'tensionWire', faces: { outer: face, inner: face }, ...rest,
   }
 }
@@ -125,22 +125,23 @@ export async function sampleRecord({ language = 'en', system = 'imperial', photo
   write('walkOpened', '2027-03-02T09:12:00-05:00', { basis: PINNED, device: 'phone 3' })
 
   const outcomes: CheckOutcome[] = []
+  const plain = { earlier: [], setAside: null, disturbedBy: [], baysMissing: 0 }
   const tasks: RoundBasis['tasks'] = []
   const head = (id: string, value: ReadingValue, verdict: Verdict, margin: number | null, limit: string | null, place: Place | null): Head =>
-    ({ entry: id, place, value, verdict, margin, limit, otherSystemDiffers: false, author: PEOPLE.inspector, madeAt: entries.find(one => one.envelope.id === id)!.envelope.madeAt, disagreesWith: [] })
+    ({ entry: id, place, value, verdict, margin, limit, otherSystemDiffers: false, author: PEOPLE.inspector, madeAt: entries.find(one => one.envelope.id === id)!.envelope.madeAt, disagreesWith: [], overruledBy: null })
   const place = (bay: number | null, face: Face | null, height: number | null = null): Place => ({ bay, face, from: null, height })
   const read = (element: string, checkId: string, value: ReadingValue, verdict: Verdict, { margin = null as number | null, at = '2027-03-03T10:20:00-05:00', where = null as Place | null, tag = undefined as string | undefined, note = undefined as string | undefined, settled = false, photo = false, answers = [] as string[], replaces = [] as string[] } = {}) => {
     const id = write('reading', at, { value, photos: photo ? picture(at) : [], ...(tag && { tag, class: 'correctFirst' as const }), ...(note && { note }) }, { element, check: checkId, ...(where && { place: where }), answers, replaces })
     const limits = LIMITS_OF[checkId] ?? []
     tasks.push({ element, check: checkId, face: null, limits })
     // The sample's tasks are of the element as a whole, so a place carries no face for the check itself.
-    outcomes.push({ element, check: checkId, face: null, verdict, settled, readAgain: false, heads: [head(id, value, verdict, margin, limits[0] ?? null, where)], governs: id })
+    outcomes.push({ ...plain, element, check: checkId, face: null, verdict, settled, readAgain: false, heads: [head(id, value, verdict, margin, limits[0] ?? null, where)], governs: id })
     return id
   }
   const metres = (amount: number, text: string): ReadingValue => ({ method: 'measure', amount, text, system: 'imperial', instrument: 'tape 3' })
   const deficiencies: DeficiencyOutcome[] = []
   const deficient = (tag: string, element: string, checkId: string, state: DeficiencyOutcome['state'], history: string[], more: Partial<DeficiencyOutcome> = {}) =>
-    deficiencies.push({ id: history[0]!, tag, element, check: checkId, place: null, class: 'correctFirst', state, history, assignedTo: null, due: null, waitsFor: null, until: null, held: null, ...more })
+    deficiencies.push({ id: history[0]!, tag, element, check: checkId, place: null, class: 'correctFirst', state, history, standing: [], assignedTo: null, due: null, waitsFor: null, until: null, held: null, ...more })
 
   const unseen = new Set(final ? [] : [byTag('G5')])
   for (const one of elements.filter(each => !unseen.has(each.id))) {
@@ -168,10 +169,9 @@ export async function sampleRecord({ language = 'en', system = 'imperial', photo
     read(byTag('R8'), 'mesh-width', { ...metres(in64(4 * 64), '4'), dimension: 'diagonal', uncertainty: in64(4) } as ReadingValue, 'withinError', { margin: in64(1) })
     LIMITS_OF['mesh-width'] = []
     const aside = write('setAside', '2027-03-03T12:00:00-05:00', { as: 'notInspected', why: 'noAccess', words: 'no key on 3 March', photos: [] }, { element: byTag('G5') })
-    void aside
     for (const id of ['tie-ends', 'sphere']) {
       tasks.push({ element: byTag('G5'), check: id, face: null, limits: [] })
-      outcomes.push({ element: byTag('G5'), check: id, face: null, verdict: 'notInspected', settled: false, readAgain: false, heads: [], governs: null })
+      outcomes.push({ ...plain, setAside: { entry: aside, as: 'notInspected', why: 'noAccess' }, element: byTag('G5'), check: id, face: null, verdict: 'notInspected', settled: false, readAgain: false, heads: [], governs: null })
     }
   }
   // A finding that was corrected and read again, with photos before and after.
@@ -204,7 +204,7 @@ export async function sampleRecord({ language = 'en', system = 'imperial', photo
   })
   const basisDigest = digestOf(basis)
   const outcome: RoundOutcome = {
-    rules: 1, basis: basisDigest, elements: elementOutcomes, checks: outcomes, deficiencies, waiting: [], unknown: [], ignored: [],
+    rules: 1, basis: basisDigest, elements: elementOutcomes, checks: outcomes, deficiencies, waiting: [], unknown: [], ignored: [], refusedLinks: [], erased: [], conflicts: [], line,
     tally: { conforms: 0, doesNotConform: 0, withinError: 0, groundNotFinished: 0, noLimit: 0, notApplicable: 0, notInspected: 0, notRead: 0 },
   }
   const sheet = JSON.stringify({ meaning: 'present', round: ROUND })
