@@ -19,7 +19,7 @@ import surroundings from '../../../templates/checklists/sections/surroundings.ya
 import ties from '../../../templates/checklists/sections/ties.yaml?raw'
 import facts from '../../../templates/facts/published-limits.json'
 import type { Checklist } from '#shared/checklist/check'
-import { parseChecklists } from '#shared/checklist/parseChecklist'
+import { parseChecklists } from '#shared/checklist/parseChecklists'
 import { publishedFactsSchema } from '#shared/checklist/publishedFact'
 import type { PublishedFact } from '#shared/checklist/publishedFact'
 
