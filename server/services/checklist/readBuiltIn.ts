@@ -1,3 +1,4 @@
+// eslint-disable-next-line @typescript-eslint/triple-slash-reference -- an ambient module, which the tests type-check without the server folder around it
 /// <reference path="./yamlText.d.ts" />
 import schoolGroundsList from '../../../templates/checklists/school-grounds.yaml?raw'
 import playgroundList from '../../../templates/checklists/playground.yaml?raw'

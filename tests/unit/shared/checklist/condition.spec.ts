@@ -95,9 +95,10 @@ function textOf(node: ConditionTree): string {
 }
 
 function judge(node: ConditionTree, facts: Facts): boolean {
-  if (node.op === 'and') return judge(node.of[0], facts) && judge(node.of[1], facts)
-  if (node.op === 'or') return judge(node.of[0], facts) || judge(node.of[1], facts)
-  if (node.op === 'not') return !judge(node.of, facts)
+  if (!('fact' in node)) {
+    if (node.op === 'not') return !judge(node.of, facts)
+    return node.op === 'and' ? judge(node.of[0], facts) && judge(node.of[1], facts) : judge(node.of[0], facts) || judge(node.of[1], facts)
+  }
   const value = node.fact.split('.').reduce<unknown>((at, key) => (at as Record<string, unknown>)[key], facts)
   const plain = typeof value === 'bigint' ? Number(value) : value
   switch (node.op) {
