@@ -64,8 +64,11 @@ function paintLine(frame: Frame, below: number): void {
   const marks = marksOf(record)
   const words = elementsOf(record.line).map(element => `${element.tag} ${say.w.legend[diamondOf(marks[element.id]!)]}`)
   const legend = 36
-  const drawn = [0.75, 0.66, 0.58, 0.5].map(scale => ({ scale, drawing: drawLine(record.line, { variant: 'paper', width: MEASURE / scale, marks }) }))
-  const { scale, drawing } = drawn.find(({ scale, drawing }) => sheet.y + drawing.height * scale + legend + below <= PAPER.bottom) ?? drawn[0]!
+  let [scale, drawing] = [0.75, drawLine(record.line, { variant: 'paper', width: MEASURE / 0.75, marks })]
+  while (scale > 0.5 && sheet.y + drawing.height * scale + legend + below > PAPER.bottom) {
+    scale -= 0.05
+    drawing = drawLine(record.line, { variant: 'paper', width: MEASURE / scale, marks })
+  }
   sheet.room(drawing.height * scale)
   sheet.drawing(drawing, PAPER.left, sheet.y, scale, fill(say.w.phrases.lineAlt, { elements: words.join(', ') }))
   sheet.y += drawing.height * scale + 5
@@ -167,7 +170,7 @@ function paintColumn(frame: Frame, top: number, x: number, body: ColumnBody): vo
 function definitions({ record, say }: Frame): ColumnBody {
   const { labels, phrases } = say.w
   const { job, site, client, organisation, inspectors } = record
-  const named = (person: { name: string, title?: string, phone?: string }) => [person.name, person.title, person.phone].filter(part => part).join(', ')
+  const named = (person: { name: string, title?: string, phone?: string }) => [person.name, person.title, person.phone?.replace(/ /g, '\u00a0')].filter(part => part).join(', ')
   const pairs: Cells = [
     [labels.site, [site.name, site.address].filter(part => part).join(', ')],
     [labels.client, [client.name, ...(client.contact ? [named(client.contact)] : [])].join(', ')],

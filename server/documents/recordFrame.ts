@@ -87,17 +87,17 @@ const LOGO: Drawing = {
 export function paintHeadAndFoot(sheet: Sheet, { name, head, foot, check, page }: { name: string, head: string, foot: string, check: string, page: string }): void {
   sheet.drawing(LOGO, PAPER.left, 38.5, 0.4, null)
   sheet.placeArtifact(sheet.lay(name, 250, { size: 9, weight: 500, lead: 13 }), PAPER.left + 18.75, 38)
-  sheet.placeArtifact(oneLine(sheet, head, 270), PAPER.right - 270, 38, 'right')
+  sheet.placeArtifact(oneLine(sheet, head, 270, 9), PAPER.right - 270, 38, 'right')
   sheet.rule(56.5)
   sheet.rule(733, { width: 0.75 })
-  sheet.placeArtifact(sheet.lay(foot, 420, { size: 8.25, role: 'soft', lead: 12 }), PAPER.left, 737.5)
-  sheet.placeArtifact(sheet.lay(check, 500, { size: 8.25, role: 'soft', lead: 12 }), PAPER.left, 749.5)
+  sheet.placeArtifact(oneLine(sheet, foot, 425), PAPER.left, 737.5)
+  sheet.placeArtifact(oneLine(sheet, check, 500), PAPER.left, 749.5)
   sheet.placeArtifact(sheet.lay(page, 84, { size: 8.25, role: 'soft', lead: 12 }), PAPER.right - 84, 737.5, 'right')
 }
 
-/** A head that is too long loses its end, visibly: it only repeats what page 1 says in full. */
-function oneLine(sheet: Sheet, text: string, width: number) {
-  const style = { size: 9, role: 'soft' as const, lead: 13 }
+/** A head or foot that is too long loses its end, visibly: it only repeats what page 1 says in full. */
+function oneLine(sheet: Sheet, text: string, width: number, size = 8.25) {
+  const style = { size, role: 'soft' as const, lead: size + 3.75 }
   let short = text
   while (short.length > 8 && sheet.lay(short, width, style).lines.length > 1) short = `${short.slice(0, -2).trimEnd()}\u2026`
   return sheet.lay(short, width, style)

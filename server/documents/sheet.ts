@@ -22,8 +22,8 @@ interface Word { atoms: Atom[], width: number, space: Atom | null, breaks: boole
 export interface Block { lines: Word[][], size: number, lead: number, height: number, width: number }
 
 const BODY = 9.375
-/** Stands for a space at which a line may not break. */
-const TIED = '\u0001'
+/** A space at which a line may not break. */
+const TIED = '\u00a0'
 const UNITS = 'in|ft|mm|cm|m|lbf|N|s|of|de'
 
 /** The pages of a document from top to bottom: lays out text, breaks pages, paints, and keeps the logical structure beside what it paints. */

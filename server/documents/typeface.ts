@@ -70,7 +70,7 @@ function hasLetter(code: number): boolean {
 }
 
 /** Other spellings of marks that Lexend lacks but has a plain form of. */
-const PLAIN: Record<string, string> = { '\u2032': '\'', '\u2033': '"', '\u2010': '-', '\u2011': '-', '\u2012': '\u2013', '\u2015': '\u2014', '\u00a0': ' ', '\u202f': ' ', '\u2009': ' ', '\u2007': ' ', '\u2264': '<=', '\u2265': '>=' }
+const PLAIN: Record<string, string> = { '\u2032': '\'', '\u2033': '"', '\u2010': '-', '\u2011': '-', '\u2012': '\u2013', '\u2015': '\u2014', '\u202f': '\u00a0', '\u2009': ' ', '\u2007': ' ', '\u2264': '<=', '\u2265': '>=' }
 
 /**
  * A text with every letter that the typeface can draw; one that it cannot is replaced by its number in brackets ("[U+4E2D]"), visibly, since a missing
@@ -81,6 +81,7 @@ export function guardGlyphs(text: string): string {
   for (const letter of text.normalize('NFC')) {
     const code = letter.codePointAt(0)!
     if (code === 10) safe += '\n'
+    else if (code === 0xA0) safe += letter
     else if (code < 32 || (code >= 0x7F && code < 0xA0)) safe += ' '
     else if (PLAIN[letter] !== undefined) safe += PLAIN[letter]
     // Joiners, direction marks and variation selectors draw nothing by themselves.
