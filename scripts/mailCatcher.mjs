@@ -7,7 +7,7 @@ import path from 'node:path'
 import process from 'node:process'
 import { simpleParser } from 'mailparser'
 import { SMTPServer } from 'smtp-server'
-import { listPage, messagePage, notFoundPage, styleSheet } from './lib/mailPages.mjs'
+import { fontFile, listPage, messagePage, notFoundPage, styleSheet } from './lib/mailPages.mjs'
 
 const folder = process.env.MAIL_CATCHER_FOLDER
 const smtpPort = Number(process.env.MAIL_CATCHER_SMTP_PORT ?? 0)
@@ -71,6 +71,8 @@ const idPattern = /^\/messages\/([0-9TZ-]+-[0-9a-f]{8})(?:\/(html|source|attachm
 async function answer(pathname) {
   if (pathname === '/') return [200, 'text/html; charset=utf-8', listPage(all())]
   if (pathname === '/style.css') return [200, 'text/css; charset=utf-8', styleSheet()]
+  const [, weight] = /^\/lexend-([46]00)\.woff2$/.exec(pathname) ?? []
+  if (weight) return [200, 'font/woff2', fontFile(weight)]
   if (pathname === '/messages.json') return [200, 'application/json; charset=utf-8', JSON.stringify(all())]
   const [, id, part, number] = idPattern.exec(pathname) ?? []
   if (!id || !fs.existsSync(path.join(folder, `${id}.json`))) return [404, 'text/html; charset=utf-8', notFoundPage()]
@@ -92,7 +94,7 @@ const page = http.createServer((request, response) => {
       'cache-control': 'no-store',
       'x-content-type-options': 'nosniff',
       'referrer-policy': 'no-referrer',
-      'content-security-policy': 'default-src \'none\'; style-src \'self\'; frame-src \'self\'; base-uri \'none\'; form-action \'none\'; frame-ancestors \'none\'',
+      'content-security-policy': 'default-src \'none\'; style-src \'self\'; font-src \'self\'; frame-src \'self\'; base-uri \'none\'; form-action \'none\'; frame-ancestors \'none\'',
       ...more,
     })
     response.end(request.method === 'HEAD' ? undefined : body)

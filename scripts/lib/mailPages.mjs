@@ -36,8 +36,13 @@ export function messagePage({ id, subject, from, to, envelope, received, text, h
 
 export const notFoundPage = () => page('Not here', '<h1>Not here</h1><p>There is no such message. <a href="/">See all caught mail</a>.</p>')
 
+/** Lexend as the application ships it. @param {string} weight */
+export const fontFile = weight => fs.readFileSync(path.join(projectRoot, `node_modules/@fontsource/lexend/files/lexend-latin-${weight}-normal.woff2`))
+
 /** The application's own roles of colour and measure, so that this page looks of one piece with it. */
 export const styleSheet = () => `${fs.readFileSync(path.join(projectRoot, 'app/assets/css/tokens.css'), 'utf8')}
+${[400, 600].map(weight => `@font-face { font-family: Lexend; font-weight: ${weight}; src: url(/lexend-${weight}.woff2) format('woff2') }`).join('\n')}
+* { box-sizing: border-box }
 body { margin: 0; background: var(--page); color: var(--ink); font: 400 var(--t-body)/var(--lead-text) Lexend, system-ui, sans-serif }
 header { background: var(--paper); border-bottom: var(--w-line) solid var(--mark) }
 header a { display: inline-block; padding: var(--s-3) var(--s-4); min-height: 24px; font-weight: 600; text-decoration: none }
