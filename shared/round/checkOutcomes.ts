@@ -59,18 +59,22 @@ export function checkOutcomes(sources: CheckSources): CheckOutcome[] {
 const NOBODY: string[] = []
 
 function checkOutcome(slot: Slot, disturbing: readonly number[], deficiencies: readonly DeficiencyOutcome[], sources: CheckSources): CheckOutcome {
-  const { links, threads, carried } = sources
-  const standing = slot.readings.filter(at => isHead(links, threads, at))
+  const { links, threads, carried, overruled } = sources
+  const standing: number[] = []
+  let erased = false
+  for (const at of slot.readings) {
+    if (isHead(links, threads, at)) standing.push(at)
+    else if (links.entries[at]!.payload === null && threads.replaced[at] === 0 && threads.reread[at] === 0 && threads.voided[at] === 0) erased = true
+  }
   const heads = standing.length === 0 ? [] : headsOf(slot, standing, sources)
   const uncovered = disturbing.filter(at => !isCovered(slot, at, standing, sources))
   const open = deficiencies.some(one => !isEnded(one))
-  const erased = slot.readings.some(at => links.entries[at]!.payload === null && threads.replaced[at] === 0 && threads.reread[at] === 0 && threads.voided[at] === 0)
   const setAside = asideOf(slot, sources)
   const baysUnread = slot.check.answeredFor === 'bay' ? missingBays(slot, heads) : 0
   const baysMissing = baysUnread === 0 ? 0 : missingBays(slot, heads, asidePlaces(slot, setAside, links))
 
   let verdict: Verdict = 'notRead'
-  const counted = heads.find(head => head.overruledBy === null)
+  const counted = overruled.size === 0 ? heads[0] : heads.find(head => head.overruledBy === null)
   if (counted) verdict = counted.verdict
   else if (setAside) verdict = setAside.as
   // A bay that was set aside is part of the word on a check that wants every bay.
@@ -93,13 +97,25 @@ function checkOutcome(slot: Slot, disturbing: readonly number[], deficiencies: r
   }
 }
 
-/** The newest words at each place, worst first. */
-function headsOf(slot: Slot, standing: readonly number[], { links, judged, overruled }: CheckSources): Head[] {
-  const heads = standing.map((at): Head => {
-    const { envelope, payload } = links.entries[at]!
+/** The newest words at each place, worst first; sorts `standing` likewise. */
+function headsOf(slot: Slot, standing: number[], { links, judged, overruled }: CheckSources): Head[] {
+  const { entries } = links
+  let alike = true
+  if (standing.length > 1) {
+    const first = judged[standing[0]!]!
+    for (const at of standing) alike &&= judged[at]!.verdict === first.verdict
+    standing.sort((a, b) => {
+      const one = judged[a]!
+      const other = judged[b]!
+      return (alike ? 0 : SEVERITY[one.verdict] - SEVERITY[other.verdict]) || (one.margin === other.margin ? 0 : (one.margin ?? Infinity) - (other.margin ?? Infinity)) || (entries[a]!.digest < entries[b]!.digest ? -1 : 1)
+    })
+  }
+  const heads: Head[] = []
+  for (const at of standing) {
+    const { envelope, payload } = entries[at]!
     const { verdict, margin, limit, otherSystemDiffers } = judged[at]!
-    const by = overruled.get(at)
-    return {
+    const by = overruled.size === 0 ? undefined : overruled.get(at)
+    heads.push({
       entry: envelope.id,
       place: envelope.place,
       value: (payload as PayloadOf<'reading'>).value,
@@ -107,13 +123,11 @@ function headsOf(slot: Slot, standing: readonly number[], { links, judged, overr
       author: envelope.author,
       madeAt: envelope.madeAt,
       disagreesWith: [],
-      overruledBy: by === undefined ? null : links.entries[by]!.envelope.id,
-    }
-  })
-  if (heads.length === 1) return heads
-  const digests = new Map(standing.map(at => [links.entries[at]!.envelope.id, links.entries[at]!.digest]))
-  heads.sort((a, b) => SEVERITY[a.verdict] - SEVERITY[b.verdict] || (a.margin ?? Infinity) - (b.margin ?? Infinity) || (digests.get(a.entry)! < digests.get(b.entry)! ? -1 : 1))
-  disagreements(slot, heads)
+      overruledBy: by === undefined ? null : entries[by]!.envelope.id,
+    })
+  }
+  // What comes to the same does not disagree.
+  if (!alike) disagreements(slot, heads)
   return heads
 }
 

@@ -11,7 +11,7 @@ import { judgeReading } from './judgeReading'
 import { lineAsBuilt, neighboursOf } from './lineAsBuilt'
 import type { EntryLinks } from './linkEntries'
 import { linkEntries } from './linkEntries'
-import type { RoundOutcome, Verdict } from './outcome'
+import type { CheckOutcome, DeficiencyOutcome, RoundOutcome, Verdict } from './outcome'
 import { VERDICTS } from './outcome'
 import { isHead, settleReadings } from './settleReadings'
 import { threadReadings } from './threadReadings'
@@ -79,14 +79,12 @@ export function fold(entries: readonly KeptEntry[], bases: ReadonlyMap<string, R
   const found = elementOutcomes(slots, checks, all)
   const tally = Object.fromEntries(VERDICTS.map(verdict => [verdict, 0])) as Record<Verdict, number>
   for (const check of found.checks) tally[check.verdict]++
-  const turnOf = new Map(found.checks.map((check, at) => [`${check.element} ${check.check}`, at]))
-  const turn = (one: { element: string, check: string }) => turnOf.get(`${one.element} ${one.check}`) ?? Infinity
   return {
     rules: force.basis.rules,
     basis: force.digest,
     elements: found.elements,
     checks: found.checks,
-    deficiencies: all.sort((a, b) => compare(turn(a), turn(b)) || compare(a.tag, b.tag) || compare(a.id, b.id)),
+    deficiencies: inWalkingOrder(all, found.checks),
     waiting: links.waiting,
     unknown: links.unknown,
     ignored: links.ignored.sort((a, b) => compare(a.entry, b.entry) || compare(a.why, b.why)),
@@ -100,6 +98,19 @@ export function fold(entries: readonly KeptEntry[], bases: ReadonlyMap<string, R
 
 function compare<T extends string | number>(a: T, b: T): number {
   return a < b ? -1 : a > b ? 1 : 0
+}
+
+/** Deficiencies along the walk; within a check by tag. Those whose check is no longer shown come last. */
+function inWalkingOrder(deficiencies: readonly DeficiencyOutcome[], checks: readonly CheckOutcome[]): DeficiencyOutcome[] {
+  const turns = new Map<string, Map<string, number>>()
+  for (const [turn, { element, check }] of checks.entries()) {
+    const onElement = turns.get(element)
+    if (onElement) onElement.set(check, turn)
+    else turns.set(element, new Map([[check, turn]]))
+  }
+  return deficiencies.map(one => ({ one, turn: turns.get(one.element)?.get(one.check) ?? Infinity }))
+    .sort((a, b) => compare(a.turn, b.turn) || compare(a.one.tag, b.one.tag) || compare(a.one.id, b.one.id))
+    .map(({ one }) => one)
 }
 
 const KINDS = ['walkOpened', 'basisChanged', 'reading', 'setAside', 'correction', 'settled', 'lineEdit', 'deviationAccepted', 'decided', 'referred'] as const
