@@ -41,7 +41,7 @@ function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
   const [governing, ...others] = check.readings
   const limits = check.limits.flatMap(key => record.limits[key] ? [record.limits[key]] : [])
   const element = frame.elements.get(check.element)
-  const drawing = governing && element ? liveDrawing(check, governing, limits, element, record, say) : null
+  const drawing = governing && element ? liveDrawing(check, governing, limits, element, say) : null
 
   const wide = drawing ? TEXT : { x: PICTURE.x, width: TEXT.x + TEXT.width - PICTURE.x }
   const small = { size: 8.6, lead: 12 }
@@ -71,7 +71,7 @@ function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
       sheet.place(tag, PAPER.left, top - 2, null)
       sheet.place(said[0]!, wide.x, top - 2, null)
     })
-    if (drawing && governing) sheet.drawing(drawing, PICTURE.x, top, scale, [tagOf(frame, check.element), check.title, say.reading(governing.value, check, limits), margin].filter(part => part).join(', '))
+    if (drawing && governing) sheet.drawing(drawing, PICTURE.x, top, scale, `${tagOf(frame, check.element)}, ${check.title}: ${drawing.summary}`)
     let y = top - 2 + said[0]!.height
     for (const block of said.slice(1)) {
       sheet.place(block, wide.x, y)

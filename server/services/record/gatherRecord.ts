@@ -1,0 +1,60 @@
+import { isKnown, type AnyEntry } from '../../../shared/entry/entry'
+import { jobCode } from '../../../shared/api/job'
+import { fold } from '../../../shared/round/fold'
+import { tasksFor } from '../../../shared/round/makeBasis'
+import { buildRecord } from '../../../shared/record/buildRecord'
+import type { RecordDocument, RecordParticulars } from '../../../shared/record/record'
+import { readJobRow } from '../../database/queries/job'
+import { basesOf, contactsOf, devicesOf, peopleOf, roundOf } from '../../database/queries/round'
+import type { SealingRow } from '../../database/queries/sealing'
+import { namesOf, sealedOf } from '../../database/queries/sealing'
+import { outcomeBefore } from '../../database/queries/state'
+import type { Session } from '../../database/withSession'
+import { withSession } from '../../database/withSession'
+import { recordTexts } from '../../documents/wording'
+import { useSettings } from '../../settings'
+import { notFound } from '../failure'
+import { entriesOf, readBasis } from '../round/foldRound'
+import { instantAt, zoneNames } from './zoneNames'
+
+const WHY_REPLACED = { en: 'The work went on, and this record speaks of all of it.', es: 'El trabajo siguió, y esta acta habla de todo él.' }
+
+/** Gathers all that a record is made of and builds its canonical document: from the entries up to the border alone, so that a resume builds the same. */
+export async function gatherRecord(session: Session, row: SealingRow): Promise<RecordDocument> {
+  return withSession(session, async (tx) => {
+    const job = await readJobRow(tx, row.jobId)
+    const round = await roundOf(tx, row.roundId)
+    if (!job || !round) throw notFound('job')
+    const entries = (await entriesOf(tx, { id: round.id, accepted: round.accepted })).filter(entry => entry.number! <= row.border)
+    const known = entries.filter(isKnown)
+    const bases = new Map((await basesOf(tx, row.jobId)).map(({ digest, text }) => [digest, readBasis(digest, text)]))
+    const startsFrom = await outcomeBefore(tx, row.jobId, round.number)
+    const outcome = fold(entries, bases, { basis: round.basis, startsFrom, tasksFor: (element, basis) => tasksFor(basis, element).tasks })
+    const [people, contacts, devices, names, [earlier]] = [await peopleOf(tx), await contactsOf(tx, job.clientId), await devicesOf(tx, round.id), await namesOf(tx), await sealedOf(tx, row.jobId)]
+    const sealedAt = instantAt(row.requestedAt, job.timeZone)
+    const inspectors = [...new Set(known.filter(entry => ['reading', 'setAside', 'walkOpened'].includes(entry.envelope.kind)).map(entry => entry.envelope.author))]
+    const named = (name: string, phone: string) => name ? { name, ...(phone ? { phone } : {}) } : null
+    const owner = contacts.find(contact => contact.accepts)
+    const particulars: RecordParticulars = {
+      id: row.id, number: row.number, code: row.code, scope: row.scope, language: job.language, system: job.system, sealedAt,
+      zones: zoneNames([sealedAt, ...known.map(entry => entry.envelope.madeAt)], job.timeZone),
+      checkAddress: `${useSettings().origin}/check/${row.code}`,
+      organisation: { id: session.organisationId!, name: job.organisationName, address: [] },
+      inspectors: inspectors.map(account => ({ name: names[account] ?? people.find(one => one.accountId === account)?.name ?? '', employer: job.organisationName, builtTheFence: true })),
+      client: { id: job.clientId, name: job.clientName, contact: owner ? { name: owner.name, ...(owner.title ? { title: owner.title } : {}) } : null },
+      site: { id: job.siteId, name: job.siteName, address: job.siteAddress, onSite: named(job.onsiteName, job.onsitePhone), emergency: named(job.emergencyName, job.emergencyPhone) },
+      job: {
+        id: job.id, number: jobCode(job.organisationCode, job.number), title: job.title, neededBy: job.neededBy,
+        keys: Object.fromEntries((['contract', 'permit', 'buildingCode', 'gateTag'] as const).flatMap(key => job[key] ? [[key, job[key]]] : [])),
+      },
+      round: { id: round.id, number: round.number },
+      amends: earlier ? { id: earlier.id, code: earlier.code, digest: earlier.documentDigest!, how: 'replacesAll', elements: [], why: WHY_REPLACED[job.language] } : null,
+      questions: [],
+      devicesOut: row.overDevices
+        ? devices.filter(device => !device.emptyAt).map(device => ({ device: device.name, holder: names[device.accountId] ?? '', takenAt: instantAt(new Date(device.takenAt), job.timeZone), reason: row.overDevices! }))
+        : [],
+      late: [],
+    }
+    return buildRecord({ particulars, basis: bases.get(outcome.basis)!, basisDigest: outcome.basis, entries: known as AnyEntry[], outcome, names, texts: recordTexts(job.language) })
+  })
+}
