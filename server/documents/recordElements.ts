@@ -1,7 +1,7 @@
 import { FOOT, MILLIMETRE } from '../../shared/measure/length'
 import { formatLength } from '../../shared/measure/formatLength'
 import { elementsOf, type LineElement } from '../../shared/line/line'
-import { PAPER } from './paper'
+import { MEASURE, PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { diamondStateOf, heading, tableRow } from './recordFrame'
 import { fill, listed, sentence } from './wording'
@@ -10,18 +10,18 @@ import { fill, listed, sentence } from './wording'
 export function paintElements(frame: Frame): void {
   const { sheet, record, say } = frame
   const { labels, phrases, works, legend, titles } = say.w
-  const columns = [{ x: PAPER.left, width: 46 }, { x: PAPER.left + 50, width: 152 }, { x: PAPER.left + 208, width: 112 }, { x: PAPER.left + 326, width: 108 }, { x: PAPER.left + 438, width: 66 }]
+  const columns = [0, 50, 238, 302, 354, 440].map((x, at, all) => ({ x: PAPER.left + x, width: (all[at + 1] ?? MEASURE + 6) - x - 6 }))
   sheet.structure.within('Sect', () => {
     heading(frame, titles.elements)
     sheet.structure.within('Table', () => {
-      tableRow(frame, columns, [labels.element, labels.what, labels.size, labels.verdict, labels.state], { head: true, before: 0 })
+      tableRow(frame, columns, [labels.element, labels.what, labels.length, labels.height, labels.verdict, labels.state], { head: true, before: 0 })
       for (const element of elementsOf(record.line)) {
         const of = record.elements.find(one => one.element === element.id)
         const state = of ? diamondStateOf(of) : 'notRead'
         const use = !of ? '' : of.outOfUse ? (element.gate?.exit ? phrases.attended : phrases.outOfUse) : of.released ? phrases.released : phrases.notReleased
-        tableRow(frame, columns, [element.tag, what(element), size(element), legend[state], use], { before: 3.2, after: 3.2, marks: [{ column: 3, state }] })
+        tableRow(frame, columns, [element.tag, what(element), element.length === 0 ? '' : feetOrMetres(element.length), feetOrMetres(element.height), legend[state], use], { before: 3.2, after: 3.2, marks: [{ column: 4, state }] })
       }
-      for (const element of record.struck) tableRow(frame, columns, [element.tag, what(element), size(element), phrases.struck, ''], { before: 3.2, after: 3.2 })
+      for (const element of record.struck) tableRow(frame, columns, [element.tag, what(element), feetOrMetres(element.length), feetOrMetres(element.height), phrases.struck, ''], { before: 3.2, after: 3.2 })
     })
   })
 
@@ -34,11 +34,6 @@ export function paintElements(frame: Frame): void {
       works[element.work],
       ...(element.kind === 'run' ? [element.bays === 1 ? phrases.bayOne : fill(phrases.bays, { n: element.bays })] : []),
     ].join(', '))
-  }
-
-  function size(element: LineElement): string {
-    const height = feetOrMetres(element.height)
-    return element.length === 0 ? fill(phrases.heightOf, { height }) : fill(phrases.sizeOf, { length: feetOrMetres(element.length), height })
   }
 
   /** Lengths of a line are drawn and said in feet and inches, or in metres. */

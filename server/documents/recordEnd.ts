@@ -38,7 +38,7 @@ export function paintSignatures(frame: Frame): void {
   })
 }
 
-export function paintSignature(sheet: Sheet, say: Speech, one: ShownSignature): void {
+export function paintSignature(sheet: Sheet, say: Speech, one: ShownSignature, ruled = true): void {
   const { phrases, known, knownAlone } = say.w
   const [x, width] = [PAPER.left + 216, PAPER.right - PAPER.left - 216]
   const name = [one.signer.name, one.signer.title].filter(part => part).join(', ')
@@ -53,8 +53,8 @@ export function paintSignature(sheet: Sheet, say: Speech, one: ShownSignature): 
   ]
   const height = Math.max(70, blocks.reduce((sum, block) => sum + block.height, 0) + 4)
   sheet.room(height + 18)
-  sheet.rule(sheet.y, { width: 0.75, role: 'line' })
-  const top = sheet.y + 9
+  if (ruled) sheet.rule(sheet.y, { width: 0.75, role: 'line' })
+  const top = sheet.y + (ruled ? 9 : 2)
   sheet.structure.within('Sect', () => {
     paintHand(sheet, say, one, name, top)
     let y = top - 2
@@ -117,7 +117,7 @@ export function paintChecking(frame: Frame): void {
   })
 }
 
-export function paintCheckSteps(sheet: Sheet, say: Speech, address: string, digest: string): void {
+export function paintCheckSteps(sheet: Sheet, say: Speech, address: string, digest: string, source = 'record.json'): void {
   const { phrases } = say.w
   const x = PAPER.left + 136
   sheet.room(150)
@@ -126,7 +126,7 @@ export function paintCheckSteps(sheet: Sheet, say: Speech, address: string, dige
   // The quiet zone stands outside the margin, so that the modules line up with the text.
   const scale = 112 / (code.width - 8)
   sheet.drawing(code, PAPER.left - 4 * scale, top + 3 - 4 * scale, scale, fill(phrases.qrAlt, { address }))
-  const steps: Words[] = [fill(phrases.checkStep1, { address }), phrases.checkStep2, [{ text: `${phrases.checkStep3}\n` }, { text: grouped(digest), weight: 500 }], phrases.checkStep4, phrases.checkStep5]
+  const steps: Words[] = [fill(phrases.checkStep1, { address }), phrases.checkStep2, [{ text: `${fill(phrases.checkStep3, { source })}\n` }, { text: grouped(digest), weight: 500 }], phrases.checkStep4, fill(phrases.checkStep5, { source })]
   sheet.structure.within('L', () => steps.forEach(step => sheet.structure.within('LI', () => sheet.paragraph(step, { x, type: 'LBody', after: 4 }))))
   sheet.y = Math.max(sheet.y, top + 122)
 }

@@ -2,7 +2,7 @@ import en from '../../templates/mail/en.json'
 import es from '../../templates/mail/es.json'
 
 const catalogues = { en, es }
-export type MailKind = keyof typeof en
+export type MailKind = Exclude<keyof typeof en, 'foot' | 'words'>
 
 const escape = (text: string) => text.replace(/[&<>"]/g, mark => ({ '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;' })[mark]!)
 const fill = (text: string, values: Record<string, string>) => text.replace(/\{(\w+)\}/g, (_, name: string) => values[name] ?? '')
@@ -19,3 +19,8 @@ export function composeMail(language: 'en' | 'es', kind: MailKind, values: Recor
     + `<p style="color:#465650;font-size:14px">${escape(foot)}</p></div></body></html>`
   return { subject: fill(subject, values), text, html }
 }
+
+/** A word of the catalogue that stands inside other sentences. */
+export const wordOf = (language: 'en' | 'es', word: 'attached' | 'tooLarge') => catalogues[language].words[word]
+/** "interim record 2", "completion record 1". */
+export const recordName = (language: 'en' | 'es', scope: 'interim' | 'final', number: number) => fill(catalogues[language].words[scope], { number: String(number) })

@@ -1,12 +1,18 @@
 import { entrance } from '../database/entrance'
 import { logger } from '../logger'
-import { type Task, workQueues } from './queue'
+import { sealRecord } from '../services/record/sealRecord'
+import { mailRecord } from '../services/transmittal/mailRecord'
+import { workQueues } from './queue'
 
-const later = async (task: Task) => { logger.warn({ id: task.id }, 'no handler yet') }
-
-/** The background half: seals, sends, reminds; says every half minute that it is there. */
+/** The background half: seals and sends; says every half minute that it is there; takes up sealings that an earlier worker died over. */
 export async function startWorker(): Promise<void> {
-  await workQueues({ seal: later, send: later, remind: later })
+  await workQueues({
+    seal: task => sealRecord(task.organisationId, task.id),
+    send: task => mailRecord(task.organisationId, task.id),
+  })
   await entrance.workerSeen()
   setInterval(() => { entrance.workerSeen().catch(() => logger.warn('heartbeat lost')) }, 30_000).unref()
+  for (const left of await entrance.unfinishedSealings()) {
+    sealRecord(left.organisation_id, left.id).catch((error: Error) => logger.warn({ record: left.id, code: (error as { code?: string }).code }, 'a sealing that was left stays where it is'))
+  }
 }

@@ -7,7 +7,7 @@ export type FigureKey = System | 'plain'
 
 /**
  * Which figure of a bound a reading in `system` is held against: its own system's, else the only one there is. `prefersOther` asks for
- * the other system's instead, to learn whether that would decide otherwise.
+ * the other system's instead, where several sources print that one alike.
  *
  * @throws {LimitRefused} noFigure, noSystem
  */
@@ -18,8 +18,9 @@ export function figureKey(bound: Bound, unit: Unit, system: System | undefined, 
   }
   if (system === undefined) throw new LimitRefused('noSystem', limit)
   const other = system === 'imperial' ? 'metric' : 'imperial'
-  const [first, second]: [System, System] = prefersOther ? [other, system] : [system, other]
+  const first = prefersOther ? other : system
   if (bound[first] !== undefined) return first
+  const second = prefersOther ? system : other
   if (bound[second] !== undefined) return second
   throw new LimitRefused('noFigure', limit)
 }

@@ -1,5 +1,5 @@
 import type { Length, System } from '../measure/length'
-import type { Bound } from './limit'
+import type { Bound, Limit } from './limit'
 import { INCH, MILLIMETRE } from '../measure/length'
 
 /** An end of a limit on a length, with the key of the limit and the datum of the figure. */
@@ -23,4 +23,9 @@ export function commonFigures<E extends PrintedEnd>(ends: readonly E[], differin
   }
   return [...groups.values()].filter(group =>
     new Set(group.ends.map(end => end.bound[differing])).size > 1 && new Set(group.ends.map(end => end.limit)).size > 1)
+}
+
+/** Every end of a limit that has figures. */
+export function boundsOf({ low, high, avoid }: Limit): Bound[] {
+  return [low, high, avoid?.low, avoid?.high].filter(bound => bound !== null && bound !== undefined)
 }

@@ -17,14 +17,14 @@ export function heldLimits(given: LimitsGiven, named?: readonly string[]): HeldL
   if (isOne(given)) return { keys: [given.id], limits: [given] }
   const several = isSeveral(given)
   const keys = several ? given.map(limit => limit.id) : named ?? Object.keys(given)
-  const limits = several ? given : keys.map((key) => {
-    if (!Object.hasOwn(given, key)) throw new LimitRefused('unknownLimit', key)
-    return given[key]!
-  })
-  const first = limits[0]
-  for (let at = 1; at < limits.length; at++) {
-    if (limits[at]!.unit !== first!.unit) throw new LimitRefused('unitsDiffer', keys[at])
-    if (limits[at]!.measurand !== first!.measurand) throw new LimitRefused('measurandsDiffer', keys[at])
+  const limits: Limit[] = []
+  for (let at = 0; at < keys.length; at++) {
+    const limit = several ? given[at] : given[keys[at]!]
+    // Also for keys that every object inherits: those lead to no limit.
+    if (typeof limit?.id !== 'string') throw new LimitRefused('unknownLimit', keys[at])
+    if (at > 0 && limit.unit !== limits[0]!.unit) throw new LimitRefused('unitsDiffer', keys[at])
+    if (at > 0 && limit.measurand !== limits[0]!.measurand) throw new LimitRefused('measurandsDiffer', keys[at])
+    limits.push(limit)
   }
   return { keys, limits }
 }

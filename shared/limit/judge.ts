@@ -1,9 +1,10 @@
 import type { System } from '../measure/length'
 import type { FigureKey } from './boundDistance'
+import type { PrintedEnd } from './commonFigures'
 import type { HeldLimits, LimitsGiven } from './heldLimits'
-import type { Bound } from './limit'
+import type { Bound, Limit } from './limit'
 import { boundDistance, figureKey } from './boundDistance'
-import { commonFigures } from './commonFigures'
+import { boundsOf, commonFigures } from './commonFigures'
 import { heldLimits } from './heldLimits'
 import { LimitRefused } from './limitRefused'
 
@@ -62,12 +63,12 @@ export function judge(reading: JudgedReading, limits: LimitsGiven, options: Judg
   checkAmount(uncertainty)
   if (uncertainty < 0) throw new LimitRefused('uncertainty')
   const held = heldLimits(limits, options.keys)
-  for (const [at, limit] of held.limits.entries()) {
-    if (limit.datum !== held.limits[0]!.datum) throw new LimitRefused('datumsDiffer', held.keys[at])
+  for (let at = 1; at < held.limits.length; at++) {
+    if (held.limits[at]!.datum !== held.limits[0]!.datum) throw new LimitRefused('datumsDiffer', held.keys[at])
   }
   const acceptance = uncertainty > 0 ? 'guarded' : 'simple'
   const read: Read = { held, system, uncertainty, common: boundsOfCommonFigures(held, system) }
-  const worst = appraise(read, amount, false)
+  const worst = appraise(read, amount)
   if (worst === null) return { verdict: 'noLimit', margin: null, limit: null, end: null, decidedBy: null, otherSystemDiffers: false, acceptance, neverConforms: false }
   return {
     verdict: VERDICTS[worst.rank],
@@ -75,7 +76,7 @@ export function judge(reading: JudgedReading, limits: LimitsGiven, options: Judg
     limit: worst.limit,
     end: worst.end,
     decidedBy: worst.by,
-    otherSystemDiffers: worst.dual && appraise(read, amount, true)!.rank !== worst.rank,
+    otherSystemDiffers: worst.otherRank !== worst.rank,
     acceptance,
     neverConforms: uncertainty > 0 && worst.rank > 0 && !canConform(read, amount),
   }
@@ -89,61 +90,86 @@ function checkAmount(amount: number): void {
 
 /** Index into {@link VERDICTS}. */
 type Rank = 0 | 1 | 2
-interface Appraisal { rank: Rank, margin: number, limit: string, end: 'low' | 'high' | 'avoid', by: FigureKey, dual: boolean }
+interface Appraisal { rank: Rank, margin: number, limit: string, end: 'low' | 'high' | 'avoid', by: FigureKey, otherRank: Rank }
 
 /** What a reading is held against; `common`: ends that are decided by the other system's figure, since several sources print that one alike. */
 interface Read { held: HeldLimits, system: System | undefined, uncertainty: number, common: ReadonlySet<Bound> | null }
 
 function boundsOfCommonFigures({ keys, limits }: HeldLimits, system: System | undefined): ReadonlySet<Bound> | null {
   if (limits.length < 2 || limits[0]!.unit !== 'length' || system === undefined) return null
-  const ends = limits.flatMap(({ low, high, avoid }, at) => [low, high, avoid?.low, avoid?.high].flatMap(bound => bound ? [{ limit: keys[at]!, bound, datum: '' }] : []))
+  // Two limits at least must print a figure of the other system; most rounds are in the system that all limits print.
+  let printed = 0
+  for (let at = 0; at < limits.length; at++) if (printsIn(limits[at]!, system === 'imperial' ? 'metric' : 'imperial')) printed++
+  if (printed < 2) return null
+  const ends: PrintedEnd[] = []
+  for (let at = 0; at < limits.length; at++) {
+    for (const bound of boundsOf(limits[at]!)) ends.push({ limit: keys[at]!, bound, datum: '' })
+  }
   const groups = commonFigures(ends, system)
   return groups.length > 0 ? new Set(groups.flatMap(group => group.ends.map(end => end.bound))) : null
 }
 
-/** The part of the limits that governs; null when there is none. */
-function appraise({ held, system, uncertainty, common }: Read, amount: number, prefersOther: boolean): Appraisal | null {
+/** The part of the limits that governs; null when there is none. Plain loops and no closures: a round is judged again at every reading. */
+function appraise(read: Read, amount: number): Appraisal | null {
+  const { keys, limits } = read.held
   let worst: Appraisal | null = null
-  const isCommon = (bound: Bound) => common !== null && common.has(bound)
-  let dual = false
-  const offer = (rank: Rank, margin: number, limit: string, end: Appraisal['end'], by: FigureKey) => {
-    if (worst === null) worst = { rank, margin, limit, end, by, dual }
-    else if (rank > worst.rank || (rank === worst.rank && (margin < worst.margin || (margin === worst.margin && limit < worst.limit)))) {
-      worst.rank = rank
-      worst.margin = margin
-      worst.limit = limit
-      worst.end = end
-      worst.by = by
-    }
-  }
-  for (let at = 0; at < held.keys.length; at++) {
-    const key = held.keys[at]!
-    const { unit, low, high, avoid } = held.limits[at]!
+  let otherRank: Rank = 0
+  for (let at = 0; at < keys.length; at++) {
+    const key = keys[at]!
+    const limit = limits[at]!
+    const { low, high, avoid } = limit
     if (low) {
-      dual ||= low.imperial !== undefined && low.metric !== undefined
-      const by = figureKey(low, unit, system, key, prefersOther !== isCommon(low))
-      const inside = boundDistance(amount, low, by, 'above', unit, system, low.inclusive)
-      offer(rankOf(inside, uncertainty, low.inclusive), inside, key, 'low', by)
+      const by = keyOf(read, low, limit, key)
+      const inside = boundDistance(amount, low, by, 'above', limit.unit, read.system, low.inclusive)
+      const rank = rankOf(inside, read.uncertainty, low.inclusive)
+      worst = worse(worst, rank, inside, key, 'low', by)
+      otherRank = Math.max(otherRank, isDual(low) ? rankByOther(read, amount, low, by, 'above', limit, low.inclusive) : rank) as Rank
     }
     if (high) {
-      dual ||= high.imperial !== undefined && high.metric !== undefined
-      const by = figureKey(high, unit, system, key, prefersOther !== isCommon(high))
-      const inside = boundDistance(amount, high, by, 'below', unit, system, high.inclusive)
-      offer(rankOf(inside, uncertainty, high.inclusive), inside, key, 'high', by)
+      const by = keyOf(read, high, limit, key)
+      const inside = boundDistance(amount, high, by, 'below', limit.unit, read.system, high.inclusive)
+      const rank = rankOf(inside, read.uncertainty, high.inclusive)
+      worst = worse(worst, rank, inside, key, 'high', by)
+      otherRank = Math.max(otherRank, isDual(high) ? rankByOther(read, amount, high, by, 'below', limit, high.inclusive) : rank) as Rank
     }
     if (avoid) {
-      dual ||= (avoid.low.imperial !== undefined && avoid.low.metric !== undefined) || (avoid.high.imperial !== undefined && avoid.high.metric !== undefined)
-      const byLow = figureKey(avoid.low, unit, system, key, prefersOther !== isCommon(avoid.low))
-      const byHigh = figureKey(avoid.high, unit, system, key, prefersOther !== isCommon(avoid.high))
       // An end that is inside the band does not conform; beside the band it is enough to be clear of one end.
-      const below = boundDistance(amount, avoid.low, byLow, 'below', unit, system, !avoid.low.inclusive)
-      const above = boundDistance(amount, avoid.high, byHigh, 'above', unit, system, !avoid.high.inclusive)
-      const rank = Math.min(rankOf(below, uncertainty, !avoid.low.inclusive), rankOf(above, uncertainty, !avoid.high.inclusive)) as Rank
-      offer(rank, Math.max(below, above), key, 'avoid', below >= above ? byLow : byHigh)
+      const [byLow, byHigh] = [keyOf(read, avoid.low, limit, key), keyOf(read, avoid.high, limit, key)]
+      const below = boundDistance(amount, avoid.low, byLow, 'below', limit.unit, read.system, !avoid.low.inclusive)
+      const above = boundDistance(amount, avoid.high, byHigh, 'above', limit.unit, read.system, !avoid.high.inclusive)
+      const [rankBelow, rankAbove] = [rankOf(below, read.uncertainty, !avoid.low.inclusive), rankOf(above, read.uncertainty, !avoid.high.inclusive)]
+      worst = worse(worst, Math.min(rankBelow, rankAbove) as Rank, Math.max(below, above), key, 'avoid', below >= above ? byLow : byHigh)
+      otherRank = Math.max(otherRank, Math.min(
+        isDual(avoid.low) ? rankByOther(read, amount, avoid.low, byLow, 'below', limit, !avoid.low.inclusive) : rankBelow,
+        isDual(avoid.high) ? rankByOther(read, amount, avoid.high, byHigh, 'above', limit, !avoid.high.inclusive) : rankAbove,
+      )) as Rank
     }
   }
-  if (worst !== null) (worst as Appraisal).dual = dual
+  if (worst) worst.otherRank = otherRank
   return worst
+}
+
+function keyOf({ system, common }: Read, bound: Bound, { unit }: Limit, key: string): FigureKey {
+  return figureKey(bound, unit, system, key, common !== null && common.has(bound))
+}
+
+/** What the figure that did not decide would make of it. */
+function rankByOther({ system, uncertainty }: Read, amount: number, bound: Bound, by: FigureKey, from: 'above' | 'below', { unit }: Limit, endConforms: boolean): Rank {
+  const other = by === 'plain' ? by : by === 'imperial' ? 'metric' : 'imperial'
+  return rankOf(boundDistance(amount, bound, other, from, unit, system, endConforms), uncertainty, endConforms)
+}
+
+function printsIn({ low, high, avoid }: Limit, system: System): boolean {
+  return low?.[system] !== undefined || high?.[system] !== undefined || avoid?.low[system] !== undefined || avoid?.high[system] !== undefined
+}
+
+function isDual(bound: Bound): boolean {
+  return bound.imperial !== undefined && bound.metric !== undefined
+}
+
+function worse(worst: Appraisal | null, rank: Rank, margin: number, limit: string, end: Appraisal['end'], by: FigureKey): Appraisal {
+  const stands = worst !== null && (rank < worst.rank || (rank === worst.rank && (margin > worst.margin || (margin === worst.margin && limit >= worst.limit))))
+  return stands ? worst : { rank, margin, limit, end, by, otherRank: rank }
 }
 
 function rankOf(inside: number, uncertainty: number, endConforms: boolean): Rank {
@@ -153,15 +179,16 @@ function rankOf(inside: number, uncertainty: number, endConforms: boolean): Rank
 
 /** Whether any amount conforms: if one does, then one that is only just far enough above a low end or a band does. */
 function canConform(read: Read, amount: number): boolean {
-  const { held, system, uncertainty, common } = read
+  const { keys, limits } = read.held
   let bounded = false
-  for (const [at, { unit, low, avoid }] of held.limits.entries()) {
+  for (let at = 0; at < limits.length; at++) {
+    const { unit, low, avoid } = limits[at]!
     bounded ||= low !== null
     for (const [bound, endConforms] of [[low, low?.inclusive], [avoid?.high, avoid && !avoid.high.inclusive]] as const) {
       if (!bound) continue
-      const inside = boundDistance(amount, bound, figureKey(bound, unit, system, held.keys[at]!, common?.has(bound)), 'above', unit, system, endConforms!)
-      const nearest = amount - inside + uncertainty + (endConforms ? 0 : 1)
-      if (appraise(read, nearest, false)!.rank === 0) return true
+      const inside = boundDistance(amount, bound, keyOf(read, bound, limits[at]!, keys[at]!), 'above', unit, read.system, endConforms!)
+      const nearest = amount - inside + read.uncertainty + (endConforms ? 0 : 1)
+      if (appraise(read, nearest)!.rank === 0) return true
     }
   }
   return !bounded

@@ -134,10 +134,11 @@ export function nearestQuickWord(word: string): string | undefined {
   return near && near.far <= Math.min(2, Math.floor(plain.length / 3)) ? near.words : undefined
 }
 
+const ROW_OF = new Map(QUICK_WORDS.map(row => [JSON.stringify(row[0]), row]))
+
 /** The word that is written for a meaning; the meaning is given as it stands in {@link QUICK_WORDS}. Throws RangeError for one that is not there. */
 export function quickWordFor(meaning: QuickMeaning, language: QuickLanguage): string {
-  const wanted = JSON.stringify(meaning)
-  const row = QUICK_WORDS.find(([found]) => JSON.stringify(found) === wanted)
-  if (!row) throw new RangeError(`quick typing has no word for ${wanted}`)
+  const row = ROW_OF.get(JSON.stringify(meaning))
+  if (!row) throw new RangeError(`quick typing has no word for ${JSON.stringify(meaning)}`)
   return row[language === 'en' ? 1 : 2][0]!
 }

@@ -35,7 +35,7 @@ function decimals(size: Length, unit: Length, places: number): string {
 }
 
 /** Words of a person's own, in brackets; brackets that would not close become square ones. */
-function own(said: string): string {
+export function own(said: string): string {
   const words = said.replace(/\s+/g, ' ').trim()
   let depth = 0
   const balanced = [...words].every(letter => (depth += letter === '(' ? 1 : letter === ')' ? -1 : 0) >= 0) && depth === 0
@@ -57,6 +57,19 @@ function commonest<T>(values: readonly T[]): T {
 const same = (a: unknown, b: unknown) => JSON.stringify(a) === JSON.stringify(b)
 const settingsOf = (face: FaceState) => SETTINGS.filter(setting => face.settings.includes(setting))
 const groundOf = ({ ground }: FaceState) => [ground.finished, ground.surface, ...(ground.finished ? [] : [ground.coming, ground.comingThickness])]
+
+/** What an element is, in the words of quick typing. */
+export function kindWords(element: LineElement, language: QuickLanguage): string {
+  const word = (meaning: QuickMeaning) => quickWordFor(meaning, language)
+  const form = element.gate?.form
+  switch (element.kind) {
+    case 'gate': return word({ say: 'kind', kind: 'gate', ...(form && form !== 'singleSwing' && { form }) })
+    case 'terminalPost': return word({ say: 'kind', kind: 'terminalPost', ...(element.post && { post: element.post }) })
+    case 'crossing': return word({ say: 'kind', kind: 'crossing', ...(element.crossing && { crossing: element.crossing }) })
+    case 'tieIn': return [word({ say: 'kind', kind: 'tieIn' }), ...(element.tieIn ? [language === 'en' ? 'to' : 'a', word({ say: 'tieIn', to: element.tieIn })] : [])].join(' ')
+    default: return word({ say: 'kind', kind: 'run' })
+  }
+}
 
 /**
  * Writes a line in quick typing, in one language, so that reading it again gives the same line (ids by tag; the order of settings is that of SETTINGS).
@@ -95,20 +108,10 @@ export function writeQuickLine(line: Line, language: QuickLanguage = 'en'): stri
     ...(of.work === over.work ? [] : [word({ say: 'work', work: of.work })]),
     ...FACES.flatMap(face => faceWords(face, of.faces[face], over.faces[face])),
   ]
-  const kindWords = (element: LineElement): string => {
-    const form = element.gate?.form
-    switch (element.kind) {
-      case 'gate': return word({ say: 'kind', kind: 'gate', ...(form && form !== 'singleSwing' && { form }) })
-      case 'terminalPost': return word({ say: 'kind', kind: 'terminalPost', ...(element.post && { post: element.post }) })
-      case 'crossing': return word({ say: 'kind', kind: 'crossing', ...(element.crossing && { crossing: element.crossing }) })
-      case 'tieIn': return [word({ say: 'kind', kind: 'tieIn' }), ...(element.tieIn ? [language === 'en' ? 'to' : 'a', word({ say: 'tieIn', to: element.tieIn })] : [])].join(' ')
-      default: return word({ say: 'kind', kind: 'run' })
-    }
-  }
   const elementWords = (element: LineElement): string => {
     const { gate } = element
     return [
-      [element.tag, kindWords(element), ...(element.length ? [length(element.length)] : []), ...(element.name ? [own(element.name)] : [])].join(' '),
+      [element.tag, kindWords(element, language), ...(element.length ? [length(element.length)] : []), ...(element.name ? [own(element.name)] : [])].join(' '),
       ...(element.rise ? [`${word({ say: element.rise > 0 ? 'up' : 'down' })} ${length(Math.abs(element.rise))}`] : []),
       ...(element.kind === 'run' && element.bays !== usualBays(element.length, usual.spacing) ? [`${element.bays} ${word({ say: 'bays' })}`] : []),
       ...(gate && !same(gate.leaves, usualLeaves(element.length, gate.form)) ? [`${word({ say: 'leaves' })} ${gate.leaves.map(length).join(' + ')}`] : []),

@@ -25,7 +25,6 @@ export const PERMISSIONS = {
   'checklist.read': field,
   'job.read': field,
   'job.write': office,
-  'job.give': office,
   'line.write': staff,
   'round.read': field,
   'round.take': field,
@@ -33,18 +32,14 @@ export const PERMISSIONS = {
   'entry.send': field,
   'photo.send': field,
   'photo.read': everyone,
-  'deficiency.read': field,
   'deficiency.assign': staff,
   'record.seal': office,
   'record.read': [...staff, 'client'],
   'record.standing': office,
   'transmittal.send': office,
-  'transmittal.read': staff,
   'acceptance.write': ['client'],
-  'portal.read': ['client'],
   'people.read': staff,
   'people.write': ['administrator'],
-  'key.write': ['administrator'],
 } as const satisfies Record<string, readonly Actor[]>
 export type Permission = keyof typeof PERMISSIONS
 

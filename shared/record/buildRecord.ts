@@ -138,7 +138,7 @@ function checkRecord(one: CheckOutcome, check: Check, tasks: RoundBasis['tasks']
   return {
     element: one.element, check: one.check, face: one.face,
     title: say(check.title), task: say(check.task), note: say(check.note), caution: check.caution ? say(check.caution) : null,
-    method: check.method, unit: check.unit ?? null, drawing: typeof check.drawing === 'string' ? check.drawing : null, class: check.class,
+    method: check.method, unit: check.unit ?? null, measurand: check.measurand ?? null, datum: check.datum ?? null, drawing: typeof check.drawing === 'string' ? check.drawing : null, class: check.class,
     limits: task?.limits ?? [],
     noLimit: check.noLimit ? say(check.noLimit) : null,
     tries: (check.tries ?? []).map(({ from, label, times }) => ({ from, label: say(label), times })),

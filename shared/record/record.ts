@@ -107,6 +107,8 @@ export const recordCheckSchema = z.object({
   caution: shown.nullable(),
   method: z.enum(METHODS),
   unit: z.enum(UNITS).nullable(),
+  measurand: z.string().nullable(),
+  datum: z.string().nullable(),
   drawing: z.enum(DRAWINGS).nullable(),
   class: z.enum(DEFICIENCY_CLASSES),
   /** Keys into `limits`. */

@@ -21,7 +21,7 @@ export function settleReadings(links: EntryLinks, threads: ReadingThreads, judge
   const standing = new Set<number>()
   for (const at of settlements) {
     if (counts[at] === 0 || threads.replaced[at] === 1) continue
-    const { envelope, payload } = entries[at]!
+    const { envelope, payload, digest } = entries[at]!
     const stands = links.position.get((payload as PayloadOf<'settled'> | null)?.stands ?? '')
     const slot = stands === undefined ? null : slotOf[stands]
     if (stands === undefined || !slot || !isHead(links, threads, stands)) {
@@ -38,7 +38,7 @@ export function settleReadings(links: EntryLinks, threads: ReadingThreads, judge
     standing.add(stands)
     for (const other of weighed) {
       const before = overruled.get(other)
-      if (before === undefined || envelope.id < entries[before]!.envelope.id) overruled.set(other, at)
+      if (before === undefined || digest < entries[before]!.digest) overruled.set(other, at)
     }
   }
   for (const at of standing) overruled.delete(at)
