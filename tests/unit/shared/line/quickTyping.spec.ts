@@ -152,7 +152,7 @@ describe('a place that is not understood', () => {
           expect(found.column - 1 + found.length).toBeLessThanOrEqual(Math.max(1, rows[found.line - 1]!.length))
         }
       }
-    }), { numRuns: 400 })
+    }), { numRuns: 200 })
   })
 })
 
@@ -165,7 +165,7 @@ describe('writing a line down again', () => {
     fc.assert(fc.property(anyLine, fc.constantFrom('en' as const, 'es' as const), (line, language) => {
       const text = writeQuickLine(line, language)
       expect(readQuickLine(text, { system: line.system, newId, keep: line }), text).toEqual({ line })
-    }), { numRuns: 150 })
+    }), { numRuns: 60 })
   })
 
   it('writes every length that a person or a code can write so that it is read back exactly', () => {
