@@ -146,7 +146,7 @@ export async function sampleRecord({ language = 'en', system = 'imperial', photo
   const unseen = new Set(final ? [] : [byTag('G5')])
   for (const one of elements.filter(each => !unseen.has(each.id))) {
     for (const [id] of LOOKS.slice(0, looks)) read(one.id, id, { method: 'look', found: 'clear' }, 'conforms', { at: '2027-03-02T11:40:00-05:00' })
-    if (one.kind === 'run' && !(['R6', 'R10'].includes(one.tag) && !final)) read(one.id, 'gap-below', metres(in64(96 + one.length % 7), '1 1/2'), 'conforms', { margin: in64(32 - one.length % 7), where: place(2, 'outer') })
+    if (one.kind === 'run' && !(['R6', 'R10'].includes(one.tag) && !final)) read(one.id, 'gap-below', metres(in64(96 + 4 * (one.bays % 4)), '1 1/2'), 'conforms', { margin: in64(32 - 4 * (one.bays % 4)), where: place(2, 'outer') })
     if (one.kind === 'run') read(one.id, 'top-rail-ties', metres(14 * INCH, '14'), 'conforms', { margin: 10 * INCH })
     if (one.gate && one.gate.form !== 'slide' && one.tag !== 'G3') read(one.id, 'closing', { method: 'trial', tries: [{ from: 'open', good: 3, of: 3 }, { from: 'half', good: 3, of: 3 }, { from: 'six', good: 3, of: 3 }] }, 'conforms', { note: 'light wind' })
     if (one.gate && one.gate.form === 'singleSwing') read(one.id, 'sphere', { method: 'template', gauge: '4 in sphere', went: 'stopped' }, 'conforms')
