@@ -1,20 +1,17 @@
-import { isKnown, type AnyEntry } from '../../../shared/entry/entry'
 import { jobCode } from '../../../shared/api/job'
-import { fold } from '../../../shared/round/fold'
-import { tasksFor } from '../../../shared/round/makeBasis'
 import { buildRecord } from '../../../shared/record/buildRecord'
 import type { RecordDocument, RecordParticulars } from '../../../shared/record/record'
 import { readJobRow } from '../../database/queries/job'
-import { basesOf, contactsOf, devicesOf, peopleOf, roundOf } from '../../database/queries/round'
+import { contactsOf, devicesOf, peopleOf, roundOf } from '../../database/queries/round'
 import type { SealingRow } from '../../database/queries/sealing'
 import { namesOf, sealedOf } from '../../database/queries/sealing'
-import { outcomeBefore } from '../../database/queries/state'
 import type { Session } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
 import { recordTexts } from '../../documents/wording'
 import { useSettings } from '../../settings'
 import { notFound } from '../failure'
-import { entriesOf, readBasis } from '../round/foldRound'
+import { roundFold } from '../round/foldRound'
+import { signedSet } from './signedSet'
 import { instantAt, zoneNames } from './zoneNames'
 
 const WHY_REPLACED = { en: 'The work went on, and this record speaks of all of it.', es: 'El trabajo siguió, y esta acta habla de todo él.' }
@@ -25,11 +22,8 @@ export async function gatherRecord(session: Session, row: SealingRow): Promise<R
     const job = await readJobRow(tx, row.jobId)
     const round = await roundOf(tx, row.roundId)
     if (!job || !round) throw notFound('job')
-    const entries = (await entriesOf(tx, { id: round.id, accepted: round.accepted })).filter(entry => entry.number! <= row.border)
-    const known = entries.filter(isKnown)
-    const bases = new Map((await basesOf(tx, row.jobId)).map(({ digest, text }) => [digest, readBasis(digest, text)]))
-    const startsFrom = await outcomeBefore(tx, row.jobId, round.number)
-    const outcome = fold(entries, bases, { basis: round.basis, startsFrom, tasksFor: (element, basis) => tasksFor(basis, element).tasks })
+    const { entries: all, bases, options } = await roundFold(tx, round)
+    const { entries: known, outcome, late } = signedSet(all.filter(entry => entry.number! <= row.border), bases, options)!
     const [people, contacts, devices, names, [earlier]] = [await peopleOf(tx), await contactsOf(tx, job.clientId), await devicesOf(tx, round.id), await namesOf(tx), await sealedOf(tx, row.jobId)]
     const sealedAt = instantAt(row.requestedAt, job.timeZone)
     const inspectors = [...new Set(known.filter(entry => ['reading', 'setAside', 'walkOpened'].includes(entry.envelope.kind)).map(entry => entry.envelope.author))]
@@ -53,8 +47,8 @@ export async function gatherRecord(session: Session, row: SealingRow): Promise<R
       devicesOut: row.overDevices
         ? devices.filter(device => !device.emptyAt).map(device => ({ device: device.name, holder: names[device.accountId] ?? '', takenAt: instantAt(new Date(device.takenAt), job.timeZone), reason: row.overDevices! }))
         : [],
-      late: [],
+      late: late.map(({ digest, number, envelope }) => ({ id: envelope.id, digest, number: number!, kind: envelope.kind, by: names[envelope.author] ?? '', madeAt: envelope.madeAt, element: envelope.element, check: envelope.check })),
     }
-    return buildRecord({ particulars, basis: bases.get(outcome.basis)!, basisDigest: outcome.basis, entries: known as AnyEntry[], outcome, names, texts: recordTexts(job.language) })
+    return buildRecord({ particulars, basis: bases.get(outcome.basis)!, basisDigest: outcome.basis, entries: known, outcome, names, texts: recordTexts(job.language) })
   })
 }

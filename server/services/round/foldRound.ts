@@ -4,6 +4,7 @@ import { isKnown } from '../../../shared/entry/entry'
 import { readEntry } from '../../../shared/entry/readEntry'
 import type { Line } from '../../../shared/line/line'
 import type { RoundBasis } from '../../../shared/round/basis'
+import type { FoldOptions } from '../../../shared/round/fold'
 import { fold } from '../../../shared/round/fold'
 import { tasksFor } from '../../../shared/round/makeBasis'
 import type { RoundOutcome } from '../../../shared/round/outcome'
@@ -54,11 +55,17 @@ export function rememberEntries(roundId: string, accepted: number, entries: Kept
   if (parsed.size > ROUNDS_KEPT) parsed.delete(parsed.keys().next().value!)
 }
 
-/** What a round comes to now. */
-export async function foldRound(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'number' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ outcome: RoundOutcome, line: Line, entries: KeptEntry[], bases: Map<string, RoundBasis>, signatures: number }> {
-  const all = await entriesOf(tx, round, fresh)
-  const held = new Map((await basesOf(tx, round.jobId)).map(({ digest, text }) => [digest, readBasis(digest, text)]))
+/** What a fold of this round needs: its entries, the bases that they name, and what it goes on from. */
+export async function roundFold(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'number' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ entries: KeptEntry[], bases: Map<string, RoundBasis>, options: FoldOptions }> {
+  const entries = await entriesOf(tx, round, fresh)
+  const bases = new Map((await basesOf(tx, round.jobId)).map(({ digest, text }) => [digest, readBasis(digest, text)]))
   const startsFrom = await outcomeBefore(tx, round.jobId, round.number)
-  const outcome = fold(all, held, { basis: round.basis, startsFrom, tasksFor: (element, basis) => tasksFor(basis, element).tasks })
-  return { outcome, line: outcome.line, entries: all, bases: held, signatures: all.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length }
+  return { entries, bases, options: { basis: round.basis, startsFrom, tasksFor: (element, basis) => tasksFor(basis, element).tasks } }
+}
+
+/** What a round comes to now. */
+export async function foldRound(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'number' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ outcome: RoundOutcome, line: Line, signatures: number }> {
+  const { entries, bases, options } = await roundFold(tx, round, fresh)
+  const outcome = fold(entries, bases, options)
+  return { outcome, line: outcome.line, signatures: entries.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length }
 }
