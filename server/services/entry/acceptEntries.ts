@@ -10,6 +10,7 @@ import type { Session, Tx } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
 import * as entries from '../../database/queries/entry'
 import { notFound } from '../failure'
+import { rememberEntries } from '../round/foldRound'
 import { keepState } from '../round/keepState'
 
 const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
@@ -25,18 +26,18 @@ interface Offered { wire: WireEntry, entry: KeptEntry | null, result: PushResult
  */
 export async function acceptEntries(who: Session, roundId: string, wires: WireEntry[]): Promise<{ accepted: number, results: PushResult[] }> {
   const offered = wires.map(wire => read(wire, who, roundId))
-  return withSession(who, async (tx) => {
+  const { accepted, all } = await withSession(who, async (tx) => {
     const round = await entries.lockRound(tx, roundId)
     if (!round) throw notFound('round')
     const fresh = await sort(tx, round.jobId, offered.filter(one => one.result.state === 'accepted'))
     const known = await accept(tx, who, round, fresh)
     const accepted = await tryHeld(tx, who, round, known)
-    if (accepted.length > 0) {
-      await entries.setAccepted(tx, roundId, round.accepted)
-      await keepState(tx, round, accepted)
-    }
-    return { accepted: round.accepted, results: offered.map(one => one.result) }
+    if (accepted.length === 0) return { accepted: round.accepted, all: [] }
+    await entries.setAccepted(tx, roundId, round.accepted)
+    return { accepted: round.accepted, all: await keepState(tx, round, accepted) }
   })
+  if (all.length > 0) rememberEntries(roundId, accepted, all)
+  return { accepted, results: offered.map(one => one.result) }
 }
 
 /** What can be said of an entry by itself: readable, of this round, by this person, of a kind that they may write. */

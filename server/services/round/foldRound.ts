@@ -64,8 +64,8 @@ export async function roundFold(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' 
 }
 
 /** What a round comes to now. */
-export async function foldRound(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'number' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ outcome: RoundOutcome, line: Line, signatures: number }> {
+export async function foldRound(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'number' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ outcome: RoundOutcome, line: Line, signatures: number, entries: KeptEntry[] }> {
   const { entries, bases, options } = await roundFold(tx, round, fresh)
   const outcome = fold(entries, bases, options)
-  return { outcome, line: outcome.line, signatures: entries.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length }
+  return { outcome, line: outcome.line, entries, signatures: entries.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length }
 }

@@ -7,14 +7,15 @@ import { foldRound } from './foldRound'
 
 /**
  * Writes the fold's result for lists, in the accepting transaction: round, checks, deficiencies, and what the list of jobs shows. Only what changed is
- * written. A sealed round's late entries change nothing.
+ * written. A sealed round's late entries change nothing. Returns all entries of the round.
  */
-export async function keepState(tx: Tx, round: LockedRound, accepted: KeptEntry[]): Promise<void> {
-  if (round.state === 'sealed') return
-  const { outcome, line, signatures } = await foldRound(tx, round, accepted)
+export async function keepState(tx: Tx, round: LockedRound, accepted: KeptEntry[]): Promise<KeptEntry[]> {
+  if (round.state === 'sealed') return []
+  const { outcome, line, signatures, entries } = await foldRound(tx, round, accepted)
   const before = await states.readOutcome(tx, round.id)
   await states.writeOutcome(tx, round.id, round.accepted, outcome)
   await states.writeChecks(tx, round.id, before?.checks ?? [], outcome.checks)
   await states.writeDeficiencies(tx, round.id, round.jobId, before?.deficiencies ?? [], outcome.deficiencies)
   await states.writeJobSummary(tx, round.jobId, jobSummary(line, outcome, signatures))
+  return entries
 }
