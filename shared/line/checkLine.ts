@@ -28,7 +28,7 @@ function remarksOn(element: LineElement, system: System): LineRemark[] {
   if (kind === 'gate' && !gate) error('gateMissing')
   if (kind !== 'gate' && gate) error('gateStray')
   if (kind !== 'run' && bays !== 1) error('baysStray')
-  if (gate) {
+  if (kind === 'gate' && gate) {
     const wanted = gate.form === 'doubleSwing' ? 2 : 1
     const leaves = gate.leaves.reduce((sum, leaf) => sum + leaf, 0)
     if (gate.leaves.length !== wanted) error('leavesCount', { wanted })
