@@ -4,7 +4,7 @@ import { LEVEL_GAUGE, levelGauge } from './levelGauge'
 import { FIELD_WIDTH, PAPER, type LiveDrawing, type LiveInput } from './live'
 import { bareFigure, placeLimits, summaryOf, type PlacedLimit } from './placedLimit'
 import { readout } from './readout'
-import { cutText } from './textWidth'
+import { cutText, middleWithin } from './textWidth'
 
 const HEIGHT = 150 + LEVEL_GAUGE.height
 
@@ -54,7 +54,8 @@ function picture({ reading, system }: LiveInput, placed: readonly PlacedLimit[],
     const at = height * 0.58
     list.push(...dimH(face, stop, at, ''))
     list.push(seg('dim', stop, y + post / 2, stop, at + 4, { role: 'mark', width: 'hair', dash: [2, 3] }))
-    list.push(text(Math.max(face + 20, (face + stop) / 2), at - 7, cutText(bareFigure(reading, system), size, width - face), { size, anchor: 'middle', halo: 'paper', haloWidth: 6 }))
+    const words = cutText(bareFigure(reading, system), size, width - face - 8)
+    list.push(text(middleWithin(words, size, (face + stop) / 2, face + 4, width - 4), at - 7, words, { size, anchor: 'middle', halo: 'paper', haloWidth: 6 }))
   }
   return list
 }

@@ -41,7 +41,7 @@ function fence({ of }: HeightInput, topY: number, groundY: number, post: number,
 function inField(input: HeightInput, placed: PlacedLimit[]): Shape[] {
   const { reading, system } = input
   const groundY = 186
-  const frame = { tape: 98, steel: 150, steelWidth: 44, right: FIELD_WIDTH, top: 8, bottom: 195 }
+  const frame = { tape: 98, steel: 150, steelWidth: 44, right: FIELD_WIDTH, top: 8, bottom: 193 }
   const gauge = uprightGauge(input, placed, frame, { floor: 0, nominal: USUAL })
   const topY = heightIn(reading, placed, groundY, groundY - 20)
   const list: Shape[] = [

@@ -39,7 +39,7 @@ function gate({ reading, from, leafHeight, gapBelow }: LatchHeightInput, top: nu
 function inField(input: LatchHeightInput, placed: PlacedLimit[]): Shape[] {
   const [top, groundY] = [16, 186]
   const { bottom, y, datumY } = gate(input, top, groundY)
-  const frame = { tape: 98, steel: 150, steelWidth: 44, right: FIELD_WIDTH, top: 8, bottom: 195 }
+  const frame = { tape: 98, steel: 150, steelWidth: 44, right: FIELD_WIDTH, top: 8, bottom: 193 }
   const gauge = uprightGauge(input, placed, frame, { nominal: USUAL_LATCH, ...(input.from !== 'top' && { floor: 0 }) })
   const list: Shape[] = [
     ...leafPicture({ right: 56, post: 66, top, bottom, groundY, groundRight: 96 }),

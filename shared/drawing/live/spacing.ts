@@ -4,7 +4,7 @@ import { LEVEL_GAUGE, levelGauge } from './levelGauge'
 import { FIELD_WIDTH, PAPER, type LiveDrawing, type LiveInput } from './live'
 import { bareFigure, placeLimits, summaryOf, type PlacedLimit } from './placedLimit'
 import { readout } from './readout'
-import { cutText } from './textWidth'
+import { cutText, middleWithin } from './textWidth'
 import { groundFromEdge } from './groundFromEdge'
 
 /** What stands apart: ties on rail, post or wire, bands on their bar, a bar's end and its first band, horizontal members, or the fence and an object by it. */
@@ -82,7 +82,7 @@ function along(input: SpacingInput, placed: readonly PlacedLimit[], { width, hei
   if (input.reading !== null) {
     const label = words(input, width - 8, size)
     list.push(...dimH(first, second, dimY, ''))
-    list.push(text(Math.max(30, (first + second) / 2), dimY - 6, label, { size, anchor: 'middle', halo: 'paper', haloWidth: 6 }))
+    list.push(text(middleWithin(label, size, (first + second) / 2, 4, width - 4), dimY - 6, label, { size, anchor: 'middle', halo: 'paper', haloWidth: 6 }))
   }
   return list
 }

@@ -40,3 +40,9 @@ export function wrapText(words: string, size: number, width: number, lines: numb
   }
   return left ? [...found, cutText(left, size, width, weight)] : found
 }
+
+/** Where a text stands that wants its middle at `x` but must stay inside [left, right]. */
+export function middleWithin(words: string, size: number, x: number, left: number, right: number, weight = 400): number {
+  const half = textWidth(words, size, weight) / 2
+  return Math.max(left + half, Math.min(right - half, x))
+}
