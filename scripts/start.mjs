@@ -8,7 +8,7 @@ import { data, openDataFolder, projectRoot } from './lib/dataFolder.mjs'
 import { layGround } from './lib/ground.mjs'
 import { claimDataFolder } from './lib/claim.mjs'
 import { runProgram } from './lib/processes.mjs'
-import { step, say } from './lib/steps.mjs'
+import { step } from './lib/steps.mjs'
 import { assertPortFree, runServices, startMailCatcher, startService, waitUntilReady, watchDatabase, webPort } from './lib/services.mjs'
 
 /** Signs of a demo that was broken off half-way: its loader is then called again. */
@@ -55,7 +55,5 @@ await runServices(async () => {
   })
   await loadDemo(ground)
   tellSignIns()
-  if (environment.MAIL_CATCHER_URL) say(`\n  Mail goes nowhere but here: ${environment.MAIL_CATCHER_URL}`)
-  say(`Data: ${data.root}   Logs: ${data.logs}   Stop: Ctrl-C`)
-  console.log(`\nSmoothside is ready at http://127.0.0.1:${port}`)
+  console.log(`\nMail     ${environment.MAIL_CATCHER_URL ?? 'goes out by SMTP_URL'}\nData     ${data.root}\nLogs     ${data.logs}\nTo stop  Ctrl-C\n\nSmoothside is ready at http://127.0.0.1:${port}`)
 })

@@ -4,7 +4,7 @@ import path from 'node:path'
 import process from 'node:process'
 import { claimDataFolder, releaseDataFolder } from './claim.mjs'
 import { answeringPort, makeCluster, startCluster, stopCluster } from './cluster.mjs'
-import { data, openDataFolder, projectRoot } from './dataFolder.mjs'
+import { data, openDataFolder } from './dataFolder.mjs'
 import { forRunning, installMissing } from './debianPackages.mjs'
 import { installNodeModules } from './nodeModules.mjs'
 import { freePort } from './ports.mjs'
@@ -101,5 +101,5 @@ export async function layGround(webPort) {
     MAIL_FROM: process.env.MAIL_FROM ?? 'Smoothside <records@smoothside.example>',
     ...(catcher ? { SMTP_URL: `smtp://127.0.0.1:${catcher.smtpPort}`, MAIL_CATCHER_URL: `http://127.0.0.1:${catcher.pagePort}` } : {}),
   }
-  return { cluster, ownerUrl, environment, catcher, workerPort: await keptPort('worker'), logOf, projectRoot }
+  return { cluster, ownerUrl, environment, catcher, workerPort: await keptPort('worker'), logOf }
 }
