@@ -125,7 +125,7 @@ function treeOf(node: ASTNode): ConditionTree {
   }
 }
 
-const answers = new WeakMap<Facts, Map<string, boolean>>()
+const answers = new WeakMap<object, Map<string, boolean>>()
 const compiled = new Map<string, Condition>()
 
 /**
@@ -153,13 +153,15 @@ export function compileCondition(text: string): Condition {
     throw new ConditionError(/Unknown variable|No such key/i.test(why) ? 'unknown-fact' : 'type', `${why}. Facts: ${Object.keys(FACTS).join(', ')}.`)
   }
   const tree = treeOf(parsed.ast)
+  const ofFace = factsNamed(tree).some(path => path.startsWith('face.'))
   const condition: Condition = {
     text,
     tree,
     holds(facts) {
-      // Many checks share a condition: it is worked out once for each set of facts.
-      const known = answers.get(facts) ?? new Map<string, boolean>()
-      answers.set(facts, known)
+      // Many checks share a condition: it is worked out once for each set of facts, and once for both faces where it asks about neither.
+      const of = ofFace ? facts : facts.element
+      const known = answers.get(of) ?? new Map<string, boolean>()
+      answers.set(of, known)
       const earlier = known.get(text)
       if (earlier !== undefined) return earlier
       const answer = parsed(facts as unknown as Record<string, unknown>) === true

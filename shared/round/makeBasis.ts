@@ -17,11 +17,12 @@ export class ChecklistsDiffer extends Error {
 }
 
 /** Whether two JSON values are alike, whatever the order of their keys: a checklist that was stored comes back in another order. */
-function alike(one: unknown, other: unknown): boolean {
+function alike(one: unknown, other: unknown, except?: string): boolean {
   if (one === other) return true
   if (typeof one !== 'object' || typeof other !== 'object' || one === null || other === null || Array.isArray(one) !== Array.isArray(other)) return false
   const keys = Object.keys(one)
-  return keys.length === Object.keys(other).length && keys.every(key => Object.hasOwn(other, key) && alike((one as Record<string, unknown>)[key], (other as Record<string, unknown>)[key]))
+  return keys.length === Object.keys(other).length
+    && keys.every(key => key === except || (Object.hasOwn(other, key) && alike((one as Record<string, unknown>)[key], (other as Record<string, unknown>)[key])))
 }
 
 function checksOf(checklists: readonly Checklist[]): Check[] {
@@ -31,7 +32,7 @@ function checksOf(checklists: readonly Checklist[]): Check[] {
       const earlier = kept.get(check.id)
       if (!earlier) kept.set(check.id, { check, from })
       // Sections are shared: alike but for what they disturb, since a checklist names only its own checks there.
-      else if (!alike({ ...check, disturbs: [] }, { ...earlier.check, disturbs: [] })) throw new ChecklistsDiffer(check.id, [earlier.from, from])
+      else if (!alike(check, earlier.check, 'disturbs')) throw new ChecklistsDiffer(check.id, [earlier.from, from])
       else if (check.disturbs.some(id => !earlier.check.disturbs.includes(id))) earlier.check = { ...earlier.check, disturbs: [...new Set([...earlier.check.disturbs, ...check.disturbs])] }
     }
   }

@@ -3,18 +3,8 @@ import type { LineElement } from '#shared/line/line'
 import { canonicalJson } from '#shared/record/canonicalJson'
 import { makeBasis } from '#shared/round/makeBasis'
 import { readBuiltIn } from '#server/services/checklist/readBuiltIn'
-
-const ROUNDS = 15
-
-function median(times: number[]): number {
-  return [...times].sort((one, other) => one - other)[times.length >> 1]!
-}
-
-function timed(work: () => void): number {
-  const start = performance.now()
-  work()
-  return performance.now() - start
-}
+import { compare } from './measure'
+import type { Figure } from './measure'
 
 /** 200 elements of every kind and setting; `stretch` of them stand in the same settings, work and bottom (1: as unlike as a line can be). */
 function elements(stretch: number): LineElement[] {
@@ -41,8 +31,8 @@ function elements(stretch: number): LineElement[] {
   })
 }
 
-/** Building the basis of 200 elements under 120 checks and three local numbers, beside JSON.parse of what comes out. Medians of one process, after warming up. */
-export async function bench(): Promise<{ name: string, medianMs: number, floorName: string, floorMs: number, ratio: number, wanted: string }[]> {
+/** Building the basis of 200 elements under 120 checks and three local numbers, beside JSON.parse of what comes out: at most 3 times. */
+export default async function bench(): Promise<Figure[]> {
   const lists = readBuiltIn()
   const known = new Set(lists.flatMap(list => list.checks.map(check => check.id)))
   const spare = lists[0]!.checks.slice(0, Math.max(0, 120 - known.size)).map((check): Check => ({ ...check, id: `${check.id}-again`, disturbs: [] }))
@@ -52,18 +42,12 @@ export async function bench(): Promise<{ name: string, medianMs: number, floorNa
     ...provision, id: `p${at}`, measurand: 'fence-height', setting,
     limit: { datum: 'ground-outside', unit: 'length' as const, low: { imperial: 487_680_000, inclusive: true }, high: null, avoid: null },
   }))
-  return ([['an ordinary line', 20], ['no stretch alike', 1]] as const).map(([which, stretch]) => {
+  const figures: Figure[] = []
+  for (const [which, stretch] of [['an ordinary line', 20], ['a line with no two alike', 1]] as const) {
     const line = { version: 1, system: 'imperial' as const, sides: [{ key: 'A', name: 'A', elements: elements(stretch) }] }
     const text = canonicalJson(makeBasis(line, checklists, provisions))
-    const make: number[] = []
-    const parse: number[] = []
-    for (let round = -10; round < ROUNDS; round++) {
-      const [made, parsed] = [timed(() => makeBasis(line, checklists, provisions)), timed(() => JSON.parse(text) as unknown)]
-      if (round < 0) continue
-      make.push(made)
-      parse.push(parsed)
-    }
-    const [medianMs, floorMs] = [median(make), median(parse)]
-    return { name: `walk list of ${which}, 200 elements x ${known.size + spare.length} checks (${(text.length / 1e6).toFixed(1)} MB)`, medianMs, floorName: 'JSON.parse of the basis', floorMs, ratio: medianMs / floorMs, wanted: 'at most 3' }
-  })
+    figures.push(await compare(`walk list of ${which}, 200 elements x ${known.size + spare.length} checks, beside JSON.parse of its ${(text.length / 1e6).toFixed(1)} MB`, 3,
+      { ours: () => makeBasis(line, checklists, provisions), base: () => JSON.parse(text) as unknown }, { rounds: 25, warmUps: 15 }))
+  }
+  return figures
 }

@@ -122,7 +122,7 @@ describe('any allowed condition', () => {
       const facts = factsOf(element, 'imperial')[face]
       expect(compileCondition(textOf(node)).holds(facts)).toBe(judge(node, facts))
     }), { numRuns: 400 })
-  })
+  }, 30_000)
   it('has a sentence in both languages, and turned round another one', () => {
     fc.assert(fc.property(tree, (node) => {
       for (const language of ['en', 'es'] as const) {
@@ -132,7 +132,7 @@ describe('any allowed condition', () => {
         expect(describeCondition({ op: 'not', of: node }, language)).not.toBe(said)
       }
     }), { numRuns: 400 })
-  })
+  }, 30_000)
 })
 
 describe('describeCondition', () => {
