@@ -157,9 +157,10 @@ function disagreements(slot: Slot, heads: readonly Head[]): void {
 function isCovered(slot: Slot, correction: number, standing: readonly number[], { links, threads }: CheckSources): boolean {
   const word = new Set([correction])
   for (const at of word) for (const earlier of links.replaces[at]!) word.add(earlier)
-  const after = standing.filter((at) => {
+  // One that was read again since did look, all the same; one that was entered in error did not.
+  const after = slot.readings.filter((at) => {
     const looked = threads.looked.get(at)
-    return looked !== undefined && [...word].some(one => looked.has(one))
+    return looked !== undefined && threads.voided[at] === 0 && threads.replaced[at] === 0 && [...word].some(one => looked.has(one))
   })
   if (after.length === 0 || slot.check.answeredFor !== 'bay') return after.length > 0
   const placeOf = (at: number) => links.entries[at]!.envelope.place

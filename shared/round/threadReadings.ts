@@ -77,6 +77,8 @@ function join(threads: ReadingThreads, at: number, roots: readonly number[]): vo
 function forward({ links, slotOf, judged, touches, carried }: ThreadSources, threads: ReadingThreads): Map<number, number[]> {
   const { entries, counts, answers, replaces, order } = links
   const correctionOf = new Map(carried.corrections)
+  /** What a reading looked at, and what those readings had looked at in their turn. */
+  const knows = new Map<number, ReadonlySet<number>>()
   const rereads = new Map<number, number[]>()
   const kindOf = (at: number) => entries[at]!.envelope.kind
   const placeOf = (at: number) => entries[at]!.envelope.place
@@ -105,16 +107,17 @@ function forward({ links, slotOf, judged, touches, carried }: ThreadSources, thr
     }
     for (const target of replaces[at]!) for (const seen of threads.looked.get(target) ?? []) looked.add(seen)
     threads.looked.set(at, looked)
+    knows.set(at, new Set([...looked, ...[...looked].flatMap(other => [...knows.get(other) ?? []])]))
 
     const same = (other: number) => samePlace(placeOf(at), placeOf(other), slot.check.placeTolerance, slot.length)
     if (bad(at)) {
       const continued = [...looked, ...replaces[at]!].filter(other => bad(other) && (replaces[at]!.includes(other) || same(other)))
       join(threads, at, continued.length === 0 ? [at] : [...new Set(continued.flatMap(other => threads.roots.get(other)!))])
     }
-    /** A correction that this reading looked at and the other had not. */
+    /** A correction that this reading looked at and the other had not, nor any reading that it came after. */
     const bears = (correction: number, other: number) => {
       const of = correctionOf.get(correction)
-      if (of === undefined || threads.looked.get(other)?.has(correction)) return false
+      if (of === undefined || knows.get(other)?.has(correction)) return false
       return !bad(other) || threads.roots.get(other)!.some(root => of.includes(root))
     }
     const conforms = judged[at]?.verdict === 'conforms'

@@ -227,6 +227,17 @@ describe('deficiencies', () => {
     expect(stateOf(it, bad)).toBe('endedCorrected')
   })
 
+  it('is not ended by a reading that names a correction which an earlier reading had found wanting', () => {
+    const it = story()
+    const bad = it.reading({ ...GAP, place: bay(2) }, gap(3))
+    const first = it.correct([bad])
+    const still = it.reading({ ...GAP, place: bay(2), answers: [bad, first] }, gap(2.5))
+    const second = it.correct([still])
+    const yet = it.reading({ ...GAP, place: bay(2), answers: [still, second] }, gap(2.25))
+    it.reading({ ...GAP, place: bay(2), answers: [yet, first] }, gap(1))
+    expect(stateOf(it, bad)).toBe('open')
+  })
+
   it('keeps a re-reading that was typed wrong and replaced', () => {
     const it = story()
     const bad = it.reading({ ...GAP, place: bay(2) }, gap(3))
@@ -327,6 +338,17 @@ describe('what a correction disturbs', () => {
     expect(checkOf(it, { element: GATE, check: 'tie-ends' })).toMatchObject({ readAgain: false, heads: [{}, {}] })
     expect(outcomeOf(it).refusedLinks).toEqual([])
     expect(beside).toBeTruthy()
+  })
+
+  it('does not forget what was read again when a later correction disturbs it anew', () => {
+    const it = story()
+    const ties = it.reading(TIES, look('clear'))
+    const one = it.correct([it.reading({ ...GAP, place: bay(1) }, gap(3))])
+    const again = it.reading({ ...TIES, answers: [ties, one] }, look('clear'))
+    const other = it.correct([it.reading({ ...GAP, place: bay(2) }, gap(3))])
+    expect(checkOf(it, TIES).disturbedBy).toEqual([other])
+    it.reading({ ...TIES, answers: [again, other] }, look('clear'))
+    expect(checkOf(it, TIES)).toMatchObject({ readAgain: false, disturbedBy: [] })
   })
 
   it('asks for nothing where nothing was read yet, but says what the first reading must name', () => {
