@@ -14,7 +14,7 @@ CREATE TABLE "audit_row" (
 	"account_id" uuid,
 	"act" text NOT NULL,
 	"subject" text NOT NULL,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
+	"at" timestamp with time zone DEFAULT now() NOT NULL,
 	CONSTRAINT "audit_row_organisation_id_id_pk" PRIMARY KEY("organisation_id","id")
 );
 --> statement-breakpoint
@@ -230,7 +230,7 @@ CREATE TABLE "delivery_event" (
 	"recipient_id" uuid NOT NULL,
 	"kind" text NOT NULL,
 	"detail" text DEFAULT '' NOT NULL,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
+	"at" timestamp with time zone DEFAULT now() NOT NULL,
 	CONSTRAINT "delivery_event_organisation_id_id_pk" PRIMARY KEY("organisation_id","id")
 );
 --> statement-breakpoint
@@ -240,7 +240,7 @@ CREATE TABLE "log_head" (
 	"root" text NOT NULL,
 	"text" text NOT NULL,
 	"signature" text NOT NULL,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL
+	"at" timestamp with time zone DEFAULT now() NOT NULL
 );
 --> statement-breakpoint
 CREATE TABLE "log_leaf" (
@@ -251,7 +251,7 @@ CREATE TABLE "log_leaf" (
 	"hash" text NOT NULL,
 	"organisation_id" uuid,
 	"record_id" uuid,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL
+	"at" timestamp with time zone DEFAULT now() NOT NULL
 );
 --> statement-breakpoint
 CREATE TABLE "recipient" (
@@ -289,7 +289,7 @@ CREATE TABLE "record" (
 	"leaf" bigint,
 	"sentence" jsonb,
 	"requested_by" uuid NOT NULL,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
+	"requested_at" timestamp with time zone DEFAULT now() NOT NULL,
 	"sealed_at" timestamp with time zone,
 	CONSTRAINT "record_organisation_id_id_pk" PRIMARY KEY("organisation_id","id"),
 	CONSTRAINT "record_code" UNIQUE("organisation_id","code"),
@@ -370,7 +370,7 @@ CREATE TABLE "entry" (
 	"envelope_text" text NOT NULL,
 	"payload_text" text,
 	"payload" jsonb,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
+	"accepted_at" timestamp with time zone DEFAULT now() NOT NULL,
 	CONSTRAINT "entry_organisation_id_id_pk" PRIMARY KEY("organisation_id","id"),
 	CONSTRAINT "entry_number" UNIQUE("organisation_id","round_id","number")
 );
@@ -384,7 +384,7 @@ CREATE TABLE "entry_aside" (
 	"envelope_text" text NOT NULL,
 	"payload_text" text NOT NULL,
 	"author_id" uuid NOT NULL,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
+	"received_at" timestamp with time zone DEFAULT now() NOT NULL,
 	CONSTRAINT "entry_aside_organisation_id_id_digest_pk" PRIMARY KEY("organisation_id","id","digest")
 );
 --> statement-breakpoint
@@ -396,7 +396,7 @@ CREATE TABLE "photo" (
 	"width" integer NOT NULL,
 	"height" integer NOT NULL,
 	"sent_by" uuid NOT NULL,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
+	"stored_at" timestamp with time zone DEFAULT now() NOT NULL,
 	"erased_at" timestamp with time zone,
 	CONSTRAINT "photo_organisation_id_digest_pk" PRIMARY KEY("organisation_id","digest")
 );
@@ -410,7 +410,7 @@ CREATE TABLE "round" (
 	"accepted" integer DEFAULT 0 NOT NULL,
 	"basis" text NOT NULL,
 	"opened_by" uuid NOT NULL,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
+	"opened_at" timestamp with time zone DEFAULT now() NOT NULL,
 	CONSTRAINT "round_organisation_id_id_pk" PRIMARY KEY("organisation_id","id"),
 	CONSTRAINT "round_number" UNIQUE("organisation_id","job_id","number")
 );
@@ -422,7 +422,7 @@ CREATE TABLE "round_device" (
 	"account_id" uuid NOT NULL,
 	"name" text NOT NULL,
 	"letter" text NOT NULL,
-	"created_at" timestamp with time zone DEFAULT now() NOT NULL,
+	"taken_at" timestamp with time zone DEFAULT now() NOT NULL,
 	"empty_at" timestamp with time zone,
 	CONSTRAINT "round_device_organisation_id_round_id_device_id_pk" PRIMARY KEY("organisation_id","round_id","device_id"),
 	CONSTRAINT "round_device_letter" UNIQUE("organisation_id","round_id","letter")

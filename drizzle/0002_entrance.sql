@@ -93,6 +93,12 @@ language sql security definer set search_path = public, pg_temp as $$
   update contact set account_id = an_account where organisation_id = an_organisation and id = a_contact and not mailbox and (account_id is null or account_id = an_account)
 $$;
 --> statement-breakpoint
+-- All contacts that carry the e-mail of a person who has proved it (by a link to that very address, or in the demo).
+create function entrance.contacts_take(an_email text, an_account uuid) returns void
+language sql security definer set search_path = public, pg_temp as $$
+  update contact set account_id = an_account where email = lower(an_email) and not mailbox and account_id is null
+$$;
+--> statement-breakpoint
 create function entrance.membership_take(an_organisation uuid, an_account uuid, a_role text) returns void
 language sql security definer set search_path = public, pg_temp as $$
   insert into membership (organisation_id, account_id, role) values (an_organisation, an_account, a_role)

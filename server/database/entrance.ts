@@ -29,6 +29,7 @@ export const entrance = {
   linkOf: async (hash: string) => (await rows<LinkRow>('select * from entrance.link_of($1)', [hash]))[0],
   redeemLink: async (hash: string) => (await rows<RedeemedRow>('select * from entrance.link_redeem($1)', [hash]))[0],
   takeContact: (organisationId: string, contactId: string, accountId: string) => rows('select entrance.contact_take($1, $2, $3)', [organisationId, contactId, accountId]),
+  takeContactsByEmail: (email: string, accountId: string) => rows('select entrance.contacts_take($1, $2)', [email, accountId]),
   takeMembership: (organisationId: string, accountId: string, role: Role) => rows('select entrance.membership_take($1, $2, $3)', [organisationId, accountId, role]),
   makeOrganisation: (organisation: { id: string, name: string, code: string, timeZone: string, system: string, language: string }) =>
     rows('select entrance.organisation_make($1, $2, $3, $4, $5, $6)', [organisation.id, organisation.name, organisation.code, organisation.timeZone, organisation.system, organisation.language]),

@@ -12,6 +12,9 @@ import { Sheet } from './sheet'
 import { Speech } from './speech'
 import { fill, grouped, WORDING } from './wording'
 
+/** An acceptance is meant to stay on one sheet. */
+const BODY = { size: 9, lead: 12.4 }
+
 /**
  * The PDF of what a client signed about a record: short, bound to that record by both its digests, with a place left for the installation's seal.
  * The record's own file is never written again for it. The same document gives the same bytes.
@@ -37,24 +40,24 @@ export async function buildAcceptancePdf(acceptance: AcceptanceDocument): Promis
       const terms = [...(one.condition ? [fill(wording.phrases.condition, { words: one.condition })] : []), ...(one.until ? [fill(wording.phrases.until, { on: say.day(one.until) })] : [])]
       sheet.structure.within('LI', () => sheet.paragraph([
         { text: `${one.accepted ? w.acceptedOne : w.declinedOne}: `, weight: 500 },
-        { text: [fill(w.deviation, { tag: one.tag, element: one.element, title: one.title, words: one.words }), ...terms].join(' \u00b7 ') },
-      ], { type: 'LBody', after: 5 }))
+        { text: [fill(w.deviation, { tag: one.tag, element: one.element, title: one.title, words: one.words }), ...terms].join('; ') },
+      ], { ...BODY, type: 'LBody', after: 4 }))
     })))
   }
   part(sheet, w.bound, () => {
     for (const [words, value] of [[w.boundText, record.document], [w.rangeText, record.range]] as const) {
-      sheet.paragraph(words)
-      sheet.paragraph(grouped(value), { weight: 500, after: 4 })
+      sheet.paragraph(words, BODY)
+      sheet.paragraph(grouped(value), { ...BODY, weight: 500, after: 3 })
     }
-    sheet.paragraph(fill(w.witness, { witness: acceptance.witness }), { after: 4 })
+    sheet.paragraph(fill(w.witness, { witness: acceptance.witness }), { ...BODY, after: 3 })
   })
-  part(sheet, w.notTitle, () => sheet.paragraph(w.isNot))
+  part(sheet, w.notTitle, () => sheet.paragraph(w.isNot, BODY))
   part(sheet, w.checking, () => paintCheckSteps(sheet, say, acceptance.checkAddress, digest, 'acceptance.json'))
 
   sheet.finish(acceptance.language, (page, of) => paintHeadAndFoot(sheet, {
     name: acceptance.client,
     head: fill(w.head, { title, code: record.code }),
-    foot: fill(w.foot, { title, own: acceptance.code, code: record.code, at: say.at(acceptance.at) }),
+    foot: fill(w.foot, { title, own: acceptance.code, at: say.at(acceptance.at) }),
     check: fill(titles.check, { address: shortAddress(acceptance.checkAddress), code: acceptance.code, digest: shortDigest(digest) }),
     page: fill(titles.page, { n: page, of }),
   }))
@@ -66,11 +69,11 @@ export async function buildAcceptancePdf(acceptance: AcceptanceDocument): Promis
 
 function part(sheet: Sheet, title: string, inside: () => void): void {
   sheet.room(80)
-  sheet.y += 10
+  sheet.y += 7
   sheet.rule(sheet.y)
   sheet.y += 5
   sheet.structure.within('Sect', () => {
-    sheet.paragraph(title, { x: PAPER.left, type: 'H2', size: 9.75, weight: 500, lead: 13, after: 4 })
+    sheet.paragraph(title, { x: PAPER.left, type: 'H2', size: 9.75, weight: 500, lead: 13, after: 2 })
     inside()
   })
 }

@@ -119,14 +119,15 @@ export function paintChecking(frame: Frame): void {
 
 export function paintCheckSteps(sheet: Sheet, say: Speech, address: string, digest: string, source = 'record.json'): void {
   const { phrases } = say.w
-  const x = PAPER.left + 136
+  const side = 96
+  const x = PAPER.left + side + 22
   sheet.room(150)
   const code = squareCode(address)
   const top = sheet.y
   // The quiet zone stands outside the margin, so that the modules line up with the text.
-  const scale = 112 / (code.width - 8)
+  const scale = side / (code.width - 8)
   sheet.drawing(code, PAPER.left - 4 * scale, top + 3 - 4 * scale, scale, fill(phrases.qrAlt, { address }))
   const steps: Words[] = [fill(phrases.checkStep1, { address }), phrases.checkStep2, [{ text: `${fill(phrases.checkStep3, { source })}\n` }, { text: grouped(digest), weight: 500 }], phrases.checkStep4, fill(phrases.checkStep5, { source })]
-  sheet.structure.within('L', () => steps.forEach(step => sheet.structure.within('LI', () => sheet.paragraph(step, { x, type: 'LBody', after: 4 }))))
-  sheet.y = Math.max(sheet.y, top + 122)
+  sheet.structure.within('L', () => steps.forEach(step => sheet.structure.within('LI', () => sheet.paragraph(step, { x, type: 'LBody', size: 8.8, lead: 12.4, after: 3 }))))
+  sheet.y = Math.max(sheet.y, top + side + 8)
 }

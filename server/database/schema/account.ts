@@ -114,5 +114,5 @@ export const auditRow = pgTable('audit_row', {
   accountId: uuid('account_id').references(() => account.id),
   act: text('act').notNull(),
   subject: text('subject').notNull(),
-  at: createdAt(),
+  at: createdAt('at'),
 }, table => [primaryKey({ columns: [table.organisationId, table.id] })])

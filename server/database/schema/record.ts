@@ -44,7 +44,7 @@ export const record = pgTable('record', {
   leaf: bigint('leaf', { mode: 'number' }),
   sentence: jsonb('sentence'),
   requestedBy: uuid('requested_by').notNull().references(() => account.id),
-  requestedAt: createdAt(),
+  requestedAt: createdAt('requested_at'),
   sealedAt: instant('sealed_at'),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.id] }),
@@ -80,7 +80,7 @@ export const logLeaf = pgTable('log_leaf', {
   hash: text('hash').notNull(),
   organisationId: uuid('organisation_id').references(() => organisation.id),
   recordId: uuid('record_id'),
-  at: createdAt(),
+  at: createdAt('at'),
 }, table => [index('log_leaf_record').on(table.recordId)])
 
 /** Signed heads: size, root, time; each also written outside the database. */
@@ -90,7 +90,7 @@ export const logHead = pgTable('log_head', {
   root: text('root').notNull(),
   text: text('text').notNull(),
   signature: text('signature').notNull(),
-  at: createdAt(),
+  at: createdAt('at'),
 })
 
 /** A record sent to named people. */
@@ -131,7 +131,7 @@ export const deliveryEvent = pgTable('delivery_event', {
   recipientId: uuid('recipient_id').notNull(),
   kind: text('kind', { enum: DELIVERY_EVENTS }).notNull(),
   detail: text('detail').notNull().default(''),
-  at: createdAt(),
+  at: createdAt('at'),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.id] }),
   foreignKey({ columns: [table.organisationId, table.recipientId], foreignColumns: [recipient.organisationId, recipient.id] }),

@@ -15,7 +15,7 @@ export const round = pgTable('round', {
   accepted: integer('accepted').notNull().default(0),
   basis: text('basis').notNull(),
   openedBy: uuid('opened_by').notNull().references(() => account.id),
-  openedAt: createdAt(),
+  openedAt: createdAt('opened_at'),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.id] }),
   unique('round_number').on(table.organisationId, table.jobId, table.number),
@@ -30,7 +30,7 @@ export const roundDevice = pgTable('round_device', {
   accountId: uuid('account_id').notNull().references(() => account.id),
   name: text('name').notNull(),
   letter: text('letter').notNull(),
-  takenAt: createdAt(),
+  takenAt: createdAt('taken_at'),
   /** When it last said that nothing waits on it any more; null or before takenAt: still out. */
   emptyAt: instant('empty_at'),
 }, table => [
@@ -54,7 +54,7 @@ export const entry = pgTable('entry', {
   envelopeText: text('envelope_text').notNull(),
   payloadText: text('payload_text'),
   payload: jsonb('payload'),
-  acceptedAt: createdAt(),
+  acceptedAt: createdAt('accepted_at'),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.id] }),
   unique('entry_number').on(table.organisationId, table.roundId, table.number),
@@ -71,7 +71,7 @@ export const entryAside = pgTable('entry_aside', {
   envelopeText: text('envelope_text').notNull(),
   payloadText: text('payload_text').notNull(),
   authorId: uuid('author_id').notNull(),
-  receivedAt: createdAt(),
+  receivedAt: createdAt('received_at'),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.id, table.digest] }),
   foreignKey({ columns: [table.organisationId, table.roundId], foreignColumns: [round.organisationId, round.id] }),
@@ -132,7 +132,7 @@ export const photo = pgTable('photo', {
   width: integer('width').notNull(),
   height: integer('height').notNull(),
   sentBy: uuid('sent_by').notNull().references(() => account.id),
-  storedAt: createdAt(),
+  storedAt: createdAt('stored_at'),
   erasedAt: instant('erased_at'),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.digest] }),

@@ -33,6 +33,8 @@ export async function redeemLink(token: string, input: { name?: string, password
   }
   if (link.purpose === 'contact' && link.organisation_id && link.contact_id) {
     await entrance.takeContact(link.organisation_id, link.contact_id, accountId)
+    // The link came to this address, so every contractor's contact of the same address is the same person.
+    await entrance.takeContactsByEmail(link.email, accountId)
     return { token: await openSession(accountId, { standing: 'client', organisationId: null }), recordId: link.record_id }
   }
   return { token: await openSession(accountId), recordId: null }
