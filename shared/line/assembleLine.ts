@@ -1,4 +1,4 @@
-import { elementsOf, type Line, type LineElement, type LineSide } from './line'
+import type { Line, LineElement, LineSide } from './line'
 import { freeTag, MOST_ELEMENTS, usualBays, usualLeaves } from './lineDefaults'
 import { QuickProblem } from './quickItems'
 import type { QuickStatement } from './readQuickStatement'
@@ -8,8 +8,10 @@ export interface ReadLineOptions {
   /** What the line is drawn in; a bare measure means feet or metres. */
   system: System
   newId: () => string
-  /** The line as it stood: an element whose tag and kind come again keeps its id, since elements outlive a typing. */
-  keep?: Line
+  /** Elements as they stood: one whose tag and kind come again keeps its id, since elements outlive a typing. The first of a tag counts. */
+  keep?: readonly Pick<LineElement, 'id' | 'tag' | 'kind'>[]
+  /** Version that the line is given; 1 where absent. */
+  version?: number
 }
 
 /** A statement with its place in the text: which line or row, and where there. */
@@ -45,11 +47,11 @@ function elementOf({ statement, ...place }: PlacedStatement, tag: string, id: st
  * Makes the line of statements: tags for those without one, ids, bays, leaves. Every problem is told through `fail` with the line that it is on;
  * the line is to be used only if none was.
  */
-export function assembleLine(sides: readonly DraftSide[], { system, newId, keep }: ReadLineOptions, fail: (line: number, problem: QuickProblem) => void): Line {
+export function assembleLine(sides: readonly DraftSide[], { system, newId, keep = [], version = 1 }: ReadLineOptions, fail: (line: number, problem: QuickProblem) => void): Line {
   const placed = sides.flatMap(side => side.elements)
   const beyond = placed[MOST_ELEMENTS]
   if (beyond) fail(beyond.line, new QuickProblem('tooMany', beyond.at, beyond.length, { most: MOST_ELEMENTS }))
-  const known = new Map(keep ? elementsOf(keep).map(element => [element.tag, element]) : [])
+  const known = new Map([...keep].reverse().map(element => [`${element.kind} ${element.tag}`, element.id]))
   const taken = new Set(placed.flatMap(({ statement }) => statement.tag ?? []))
   const seen = new Set<string>()
   const elementAt = (place: PlacedStatement): LineElement | [] => {
@@ -57,8 +59,7 @@ export function assembleLine(sides: readonly DraftSide[], { system, newId, keep 
     const tag = statement.tag ?? (statement.kind && freeTag(statement.kind, taken)) ?? ''
     try {
       if (seen.has(tag)) throw new QuickProblem('tagTaken', place.at, tag.length, { tag })
-      const before = known.get(tag)
-      return elementOf(place, tag, before && before.kind === statement.kind ? before.id : newId())
+      return elementOf(place, tag, known.get(`${statement.kind} ${tag}`) ?? newId())
     }
     catch (error) {
       if (!(error instanceof QuickProblem)) throw error
@@ -70,5 +71,5 @@ export function assembleLine(sides: readonly DraftSide[], { system, newId, keep 
       taken.add(tag)
     }
   }
-  return { version: keep?.version ?? 1, system, sides: sides.map((side): LineSide => ({ key: side.key, name: side.name, elements: side.elements.flatMap(elementAt) })) }
+  return { version, system, sides: sides.map((side): LineSide => ({ key: side.key, name: side.name, elements: side.elements.flatMap(elementAt) })) }
 }
