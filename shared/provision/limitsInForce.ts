@@ -62,6 +62,11 @@ function limitOf(provision: Provision): Limit | null {
   return made
 }
 
+/** Every limit that these checks and local numbers can bring, wherever on a line: what an element that is added later may still need. */
+export function possibleLimits(checks: readonly Check[], provisions: readonly Provision[]): Limit[] {
+  return [...checks.flatMap(check => check.limits.map(withoutCondition)), ...provisions.flatMap(provision => limitOf(provision) ?? [])]
+}
+
 /** -1 when `one` asks less than `other` at this end, 0 alike, 1 more; null when no common system tells, or the systems contradict each other. */
 function compareEnd(one: Bound | null, other: Bound | null, end: 'low' | 'high'): -1 | 0 | 1 | null {
   if (!one || !other) return one ? 1 : other ? -1 : 0

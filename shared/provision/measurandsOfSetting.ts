@@ -59,6 +59,8 @@ export function measurandsOfSetting(setting: Setting, checklists: readonly Check
     if (measurand === undefined || datum === undefined || unit === undefined || seen.has(check.id)) continue
     if (check.settings.length > 0 && !check.settings.includes(setting)) continue
     seen.add(check.id)
+    // A gauge that stands for no figure (the three projection gauges) leaves nothing to set.
+    if (check.method === 'template' && check.limits.length === 0) continue
     const key = `${measurand} ${datum}`
     const row = rows.get(key) ?? { measurand, datum, unit, checks: [], builtIn: [], noLimit: null, sources: [], class: check.class }
     rows.set(key, row)

@@ -1,10 +1,11 @@
 import type { Check, Checklist } from '../checklist/check'
 import { elementsOf } from '../line/line'
 import type { Line, LineElement } from '../line/line'
+import { possibleLimits } from '../provision/limitsInForce'
 import type { Provision } from '../provision/provision'
 import { RULES_VERSION } from './basis'
 import type { RoundBasis } from './basis'
-import { walkList } from './walkList'
+import { limitBasket, walkList } from './walkList'
 import type { WalkList } from './walkList'
 
 /** Checklists that cannot be walked together, because they hold one check in two wordings. */
@@ -41,7 +42,7 @@ function checksOf(checklists: readonly Checklist[]): Check[] {
 
 /**
  * What a walk along this line is held against: every check of the checklists (also those that no element calls for yet, so that one added in the
- * field finds its own), the tasks in walking order, and each limit once. Same input, same basis, byte for byte.
+ * field finds its own), the tasks in walking order, and each limit of those checks and of the local numbers once. Same input, same basis, byte for byte.
  *
  * @throws {ChecklistsDiffer} when two checklists word one check differently
  * @throws {LimitsDiffer} when two limits share an id
@@ -50,7 +51,10 @@ export function makeBasis(line: Line, checklists: readonly Checklist[], provisio
   const checks = checksOf(checklists)
   // Through JSON once: rows bring members that are there and undefined, which have no canonical form.
   const pinned = (JSON.parse(JSON.stringify(provisions)) as Provision[]).sort((one, other) => one.id < other.id ? -1 : one.id > other.id ? 1 : 0)
-  const { tasks, limits, setAside } = walkList(elementsOf(line), checks, pinned, line.system)
+  const { limits, keep } = limitBasket()
+  // Also those that no element calls for yet: the fold of an element added in the field finds its keys here.
+  possibleLimits(checks, pinned).forEach(keep)
+  const { tasks, setAside } = walkList(elementsOf(line), checks, pinned, line.system)
   return {
     rules: RULES_VERSION,
     line,

@@ -27,6 +27,24 @@ export class LimitsDiffer extends Error {
   }
 }
 
+/** Limits by id, each once: `keep` answers the id, and throws {@link LimitsDiffer} where another limit has it already. */
+export function limitBasket(): { limits: Record<string, Limit>, keep: (limit: Limit) => string } {
+  const limits: Record<string, Limit> = {}
+  const kept = new Set<Limit>()
+  return {
+    limits,
+    keep(limit) {
+      if (kept.has(limit)) return limit.id
+      const earlier = limits[limit.id]
+      // Two checks may hold the same limit, each its own copy; the first stands for both.
+      if (earlier !== undefined && JSON.stringify(earlier) !== JSON.stringify(limit)) throw new LimitsDiffer(limit.id)
+      limits[limit.id] ??= limit
+      kept.add(limit)
+      return limit.id
+    },
+  }
+}
+
 type Planned = Omit<WalkTask, 'element'>
 
 const valueAt = (facts: Facts, path: readonly string[]): unknown => path.reduce<unknown>((value, key) => (value as Record<string, unknown>)[key], facts)
@@ -42,21 +60,11 @@ const valueAt = (facts: Facts, path: readonly string[]): unknown => path.reduce<
 export function walkList(elements: readonly LineElement[], checks: readonly Check[], provisions: readonly Provision[], system: System): WalkList {
   const conditions = [...checks.flatMap(check => [check.when, ...check.limits.map(limit => limit.when)]), ...provisions.map(provision => provision.when)]
   const paths = [...new Set(['element.kind', 'face.settings', ...conditions.flatMap(text => text === undefined ? [] : factsNamed(compileCondition(text).tree))])].map(path => path.split('.'))
-  const limits: Record<string, Limit> = {}
-  const kept = new Set<Limit>()
+  const { limits, keep } = limitBasket()
   const setAside = new Map<string, SetAside>()
   const provisionsOn = new Map<string, Provision[]>()
   for (const provision of provisions) provisionsOn.set(provision.measurand, [...provisionsOn.get(provision.measurand) ?? [], provision])
 
-  const keep = (limit: Limit): string => {
-    if (kept.has(limit)) return limit.id
-    const earlier = limits[limit.id]
-    // Two checks may hold the same limit, each its own copy; the first stands for both.
-    if (earlier !== undefined && JSON.stringify(earlier) !== JSON.stringify(limit)) throw new LimitsDiffer(limit.id)
-    limits[limit.id] ??= limit
-    kept.add(limit)
-    return limit.id
-  }
   const checksOf = new Map(ELEMENT_KINDS.map(kind => [kind, checks.filter(check => check.elements.includes(kind))]))
   const plan = (both: Facts[], kind: LineElement['kind']): Planned[] => checksOf.get(kind)!.flatMap((check) => {
     const asking = facesAsking(check, both)
