@@ -15,7 +15,7 @@ export const recordTextsSchema = z.object({
   meanings: z.object(Object.fromEntries(MEANINGS.map(meaning => [meaning, text])) as Record<(typeof MEANINGS)[number], typeof text>).strict(),
   cautions: z.object(Object.fromEntries(CAUTIONS.map(caution => [caution, text])) as Record<(typeof CAUTIONS)[number], typeof text>).strict(),
   sentence: z.object({
-    all: text, some: text, none: text,
+    all: oneAndMany, some: oneAndMany, none: oneAndMany,
     attended: oneAndMany, outOfUse: oneAndMany, open: oneAndMany, notInspected: oneAndMany,
     nothingOpen: text, and: text,
   }).strict(),
@@ -35,7 +35,10 @@ export function recordSentence(line: Line, outcome: Pick<RoundOutcome, 'elements
     })
     .map(element => element.tag)
   const released = outcome.elements.filter(element => element.released).length
-  const lead = fill(released === outcome.elements.length ? texts.all : released === 0 ? texts.none : texts.some, { n: String(released), m: String(outcome.elements.length) })
+  const total = outcome.elements.length
+  const form = released === total ? texts.all : released === 0 ? texts.none : texts.some
+  // Of "some" the count of those released decides the verb, of "all" and "none" the count of all.
+  const lead = fill((form === texts.some ? released : total) === 1 ? form.one : form.many, { n: String(released), m: String(total) })
 
   const open = outcome.deficiencies.filter(deficiency => !isEnded(deficiency)).length
   const clause = (form: { one: string, many: string }, tags: string[]) => tags.length === 0 ? [] : [fill(tags.length === 1 ? form.one : form.many, { tags: joined(tags, texts.and), n: String(tags.length) })]

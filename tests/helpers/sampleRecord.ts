@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto'
-import { readFileSync } from 'node:fs'
 import sharp from 'sharp'
+import { recordTexts } from '#server/documents/wording'
 import type { Check } from '#shared/checklist/check'
 import type { AnyEntry, EntryKind, PayloadOf, PhotoRef, Place, ReadingValue } from '#shared/entry/entry'
 import { makeEntry } from '#shared/entry/makeEntry'
@@ -11,7 +11,6 @@ import { FOOT, INCH, type System } from '#shared/measure/length'
 import { buildRecord, type RecordSources } from '#shared/record/buildRecord'
 import { digestOf } from '#shared/record/canonicalJson'
 import type { RecordDocument, RecordLanguage } from '#shared/record/record'
-import type { RecordTexts } from '#shared/record/recordSentence'
 import type { RoundBasis } from '#shared/round/basis'
 import type { CheckOutcome, DeficiencyOutcome, ElementOutcome, Head, RoundOutcome, Verdict } from '#shared/round/outcome'
 
@@ -93,7 +92,7 @@ const PINNED = '0'.repeat(64)
 export async function samplePhotos(count: number, [width, height]: [number, number]): Promise<Map<string, Uint8Array>> {
   const photos = new Map<string, Uint8Array>()
   for (let n = 0; n < count; n++) {
-    const noise = await sharp({ create: { width, height, channels: 3, background: '#777', noise: { type: 'gaussian', mean: 128, sigma: 26 } } }).png({ compressionLevel: 1 }).toBuffer()
+    const noise = await sharp({ create: { width, height, channels: 3, background: '#777', noise: { type: 'gaussian', mean: 128, sigma: 9 } } }).png({ compressionLevel: 1 }).toBuffer()
     const picture = Buffer.from(`<svg width="${width}" height="${height}"><defs><linearGradient id="g" x2="0" y2="1"><stop offset="0" stop-color="hsl(${200 + n * 7},32%,76%)"/><stop offset=".6" stop-color="hsl(${120 + n * 5},18%,58%)"/><stop offset="1" stop-color="hsl(${40 + n * 11},25%,38%)"/></linearGradient></defs><rect width="100%" height="100%" fill="url(#g)"/><g stroke="#2b3330" stroke-width="${width / 160}" fill="none">${Array.from({ length: 30 }, (_, i) => `<path d="M${(i - 15) * width / 14} 0L${i * width / 14} ${height}M${i * width / 14} 0L${(i - 15) * width / 14} ${height}"/>`).join('')}</g></svg>`)
     const bytes = await sharp(picture).composite([{ input: noise, blend: 'soft-light' }]).removeAlpha().jpeg({ quality: 82, mozjpeg: false }).toBuffer()
     photos.set(createHash('sha256').update(bytes).digest('hex'), new Uint8Array(bytes))
@@ -213,9 +212,8 @@ export async function sampleRecord({ language = 'en', system = 'imperial', photo
   write('signature', '2027-03-03T14:52:00-05:00', { state: 'signed', meaning: 'receivedCopy', signer: { account: null, name: 'Ruth Adeyemi', title: 'facilities clerk' }, role: 'client contact', known: 'onDevice', presence: { account: PEOPLE.inspector, name: 'Dana Okafor' }, sheet, sheetDigest: createHash('sha256').update(sheet).digest('hex'), strokes: null, typed: 'Ruth Adeyemi' })
   write('signature', '2027-03-03T14:55:00-05:00', { state: 'refused', meaning: 'acceptsWork', signer: { account: null, name: 'Ruth Adeyemi' }, role: 'client contact', known: 'onDevice', presence: { account: PEOPLE.inspector, name: 'Dana Okafor' }, sheet: null, sheetDigest: null, strokes: null, typed: null, words: 'I wait until G3 is done.' })
 
-  const texts = JSON.parse(readFileSync(new URL(`../../templates/record/${language}.json`, import.meta.url), 'utf8')).texts as RecordTexts
   const sources: RecordSources = {
-    basis, basisDigest, entries, outcome, names: NAMES, texts,
+    basis, basisDigest, entries, outcome, names: NAMES, texts: recordTexts(language),
     particulars: {
       id: uuid(1, 30), number: 2, code: 'LS-0417-2', scope: final ? 'final' : 'interim', language, system, sealedAt: '2027-03-03T15:12:00-05:00', zones: { '-05:00': 'EST' }, checkAddress: 'https://smoothside.example/check/LS-0417-2',
       organisation: { id: ORGANISATION, name: 'Tarnbeck Fence & Gate', address: ['12 Yard Lane', 'Marl'] },

@@ -1,0 +1,83 @@
+import { existsSync, readFileSync, writeFileSync } from 'node:fs'
+import { beforeAll, describe, expect, it } from 'vitest'
+import { buildRecord, type RecordSources } from '#shared/record/buildRecord'
+import { canonicalJson, parseCanonicalJson, sha256Hex } from '#shared/record/canonicalJson'
+import { recordSchema } from '#shared/record/record'
+import { sampleRecord, type Sample } from '../../../helpers/sampleRecord'
+
+/** Frozen: record.json v1 as it was first written. A change of the format is a version 2 beside it; this file is never made again. */
+const GOLDEN = new URL('../../../fixtures/contracts/record-v1.json', import.meta.url)
+const GOLDEN_DIGEST = 'to be frozen'
+
+let sample: Sample
+beforeAll(async () => {
+  // Without photos: their bytes depend on the picture library, and a golden file must not.
+  sample = await sampleRecord({ photos: 0, looks: 2 })
+})
+
+describe('record.json v1', () => {
+  it('is, for the golden sources, the golden bytes', () => {
+    const text = canonicalJson(sample.record)
+    if (!existsSync(GOLDEN)) writeFileSync(GOLDEN, text)
+    expect(readFileSync(GOLDEN, 'utf8')).toBe(text)
+    expect(sha256Hex(text)).toBe(GOLDEN_DIGEST)
+  })
+  it('is read back by the schema for ever, unchanged', () => {
+    const text = readFileSync(GOLDEN, 'utf8')
+    const value = parseCanonicalJson(text)
+    expect(canonicalJson(recordSchema.parse(value))).toBe(text)
+  })
+  it('refuses anything that it does not know', () => {
+    expect(recordSchema.safeParse({ ...sample.record, more: 1 }).success).toBe(false)
+    expect(recordSchema.safeParse({ ...sample.record, version: 2 }).success).toBe(false)
+  })
+})
+
+describe('building a record', () => {
+  const changed = (change: Partial<RecordSources>) => () => buildRecord({ ...sample.sources, ...change })
+  it('gives one document whatever the order of the entries', () => {
+    expect(canonicalJson(buildRecord({ ...sample.sources, entries: [...sample.sources.entries].reverse() }))).toBe(canonicalJson(sample.record))
+  })
+  it('names every entry of the sealed set by its digest, in order of acceptance', () => {
+    expect(sample.record.entries.map(entry => entry.number)).toEqual(sample.sources.entries.map((_, at) => at + 1))
+    expect(sample.record.entries.map(entry => entry.digest)).toEqual(sample.sources.entries.map(entry => entry.digest))
+  })
+  it('holds the texts in its language, and codes that have none', async () => {
+    const spanish = (await sampleRecord({ photos: 0, looks: 2, language: 'es' })).record
+    expect(spanish.checks[0]!.title).toBe('Puntas de amarre hacia dentro, a mano')
+    expect(sample.record.checks[0]!.title).toBe('Tie ends turned in, hand-run')
+    expect(spanish.checks.map(check => [check.check, check.verdict])).toEqual(sample.record.checks.map(check => [check.check, check.verdict]))
+    expect(spanish.sentence.lead).toBe('12 de 19 elementos están liberados.')
+  })
+  it('tells the history of a deficiency step by step, with names as they were', () => {
+    const b07 = sample.record.deficiencies.find(one => one.tag === 'B07')!
+    expect(b07.steps.map(step => [step.kind, step.by, step.person])).toEqual([['reading', 'Dana Okafor', null], ['assignment', 'Priya Lindqvist', 'Luis Barrientos'], ['correction', 'Luis Barrientos', 'Luis Barrientos'], ['reading', 'Dana Okafor', null]])
+    expect(b07.assignedTo).toBe('Luis Barrientos')
+  })
+  it('carries the cautions that its line calls for: water at the pool, none for traffic where there is no driveway', () => {
+    expect(sample.record.cautions.map(one => one.caution)).toEqual(['general', 'cutEnds', 'tension', 'pinch', 'water'])
+  })
+  it('carries only limits that a check of it names, and those that stand back for them', () => {
+    expect(Object.keys(sample.record.limits)).toEqual(['clearance', 'gap', 'latch', 'ties'])
+    expect(sample.record.limitsSetAside.map(one => [one.limit.id, one.by])).toEqual([['latch-built-in', 'latch']])
+  })
+  it('keeps a marked gap where words were erased', () => {
+    const { entries } = sample.sources
+    const danger = entries.find(entry => entry.envelope.kind === 'dangerNow')!
+    const record = buildRecord({ ...sample.sources, entries: entries.map(entry => entry === danger ? { ...danger, payload: null } as typeof danger : entry) })
+    const step = record.deficiencies.flatMap(one => one.steps).find(one => one.entry === danger.envelope.id)!
+    expect(step).toMatchObject({ erased: true, words: null, person: null, photos: [] })
+    expect(record.entries.map(entry => entry.digest)).toContain(danger.digest)
+  })
+  it('refuses what cannot be sealed, saying what to do', () => {
+    const { entries, outcome, particulars } = sample.sources
+    expect(changed({ entries: [{ ...entries[0]!, number: null }, ...entries.slice(1)] })).toThrow(expect.objectContaining({ code: 'notAccepted' }))
+    expect(changed({ entries: entries.filter(entry => entry.envelope.kind !== 'dangerNow') })).toThrow(expect.objectContaining({ code: 'unknownEntry' }))
+    expect(changed({ outcome: { ...outcome, waiting: ['01940000-0000-7000-8000-000000000009'] } })).toThrow(expect.objectContaining({ code: 'unknownEntry' }))
+    expect(changed({ outcome: { ...outcome, unknown: ['01940000-0000-7000-8000-000000000009'] } })).toThrow(expect.objectContaining({ code: 'unknownEntry' }))
+    expect(changed({ names: {} })).toThrow(expect.objectContaining({ code: 'unknownName' }))
+    expect(changed({ basis: { ...sample.sources.basis, checks: [] } })).toThrow(expect.objectContaining({ code: 'unknownCheck' }))
+    expect(changed({ basisDigest: 'f'.repeat(64) })).toThrow(expect.objectContaining({ code: 'otherBasis' }))
+    expect(changed({ particulars: { ...particulars, scope: 'final' } })).toThrow(expect.objectContaining({ code: 'openInFinal' }))
+  })
+})
