@@ -90,7 +90,7 @@ function onPaper(input: GapBelowInput, placed: PlacedLimit[]): Shape[] {
   if (limit && ends[0] !== undefined && ends[0] > 0) {
     const y = groundY - ends[0] * per
     const words = cutText(figure(ends[0], system, [ends[0]]), 11, 60)
-    list.push(seg('fit', 80, y, 110, y, { role: limit.role, width: 2 }), text(76, Math.max(10, y + 4), words, { size: 11, role: limit.role, anchor: 'end', halo: 'paper' }))
+    list.push(seg('fit', 80, y, 110, y, { role: limit.role, width: 2 }), text(76, Math.max(10, Math.abs(y - edgeY) < 9 ? Math.min(y, edgeY) - 6 : y + 4), words, { size: 11, role: limit.role, anchor: 'end', halo: 'paper' }))
   }
   if (coming) {
     const y = groundY - Math.max(8, Math.min(36, (coming.thickness ?? largest / 3) * per))

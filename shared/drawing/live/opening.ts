@@ -61,12 +61,13 @@ function picture(input: OpeningInput, sphere: Length | null, frame: Frame): Shap
 /** How large the opening is drawn against its usual size, so that it moves with the reading: against its first limit, within reason. */
 function moved({ reading, limits, system, say }: OpeningInput): number {
   const end = placeLimits({ limits: limits.slice(0, 1), reading: null, system, say })[0]?.ends[0]
+  if (reading !== null && reading <= 0) return 0.04
   return reading === null || !end || end <= 0 ? 1 : Math.max(0.45, Math.min(1.3, reading / end))
 }
 
 /** A sphere seen from the front, dashed where the gauge stopped. */
 function ball([x, y]: Point, radius: number, { gauge }: Pick<OpeningInput, 'gauge'>): Shape[] {
-  if (radius < 1) return []
+  if (radius < 4) return []
   const d = `M${x - radius} ${y}A${radius} ${radius} 0 1 1 ${x + radius} ${y}A${radius} ${radius} 0 1 1 ${x - radius} ${y}Z`
     .replace(/-?\d+\.\d{3,}/g, each => String(Math.round(Number(each) * 100) / 100))
   return [path('plan', d, { role: 'ink', width: 'hair', fill: 'chalk', ...(gauge === 'stopped' && { dash: [4, 3] }) })]
@@ -79,14 +80,14 @@ function written(input: OpeningInput): string {
 /** A diamond in the middle, drawn at one size: only what lies in it is to scale. */
 function mesh(input: OpeningInput, { width, height, size, least }: Frame): Shape[] {
   const dimension = input.dimension ?? 'side'
-  const across = height * 0.6 * moved(input)
+  const across = height * 0.6 * Math.max(0.45, moved(input))
   const [cx, cy, half] = [width / 2, height / 2, across / 2]
   const wire = Math.max(2, height / 36)
   // Clear diagonals lie inside the wires.
   const clear = half - wire * 0.7071
   const radius = clear / Math.SQRT2
   const list: Shape[] = [path('mesh', centredMesh(width, height, cx, cy, across), { role: 'mark', width: wire })]
-  list.push(...ball([cx, cy], radius, input))
+  list.push(...ball([cx, cy], input.reading !== null && input.reading <= 0 ? 0 : radius, input))
   const words = written(input)
   if (!words) return list
   if (dimension === 'side') {

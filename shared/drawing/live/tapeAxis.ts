@@ -56,7 +56,7 @@ export function tapeAxis({ reading, ends, span, system, floor, fromFloor, nomina
   const scale = () => scales[step]! / unit
   while (away * scale() > 0.5 * span && step < scales.length - 1) step++
   const reach = fromFloor && floor !== undefined ? Math.max(near, reading ?? near) - floor : 0
-  while (reach * scale() > span - EDGE_ROOM && step < scales.length - 1) step++
+  while (reach * scale() > span - 36 && step < scales.length - 1) step++
   while (away > 0 && away * scale() < APART && step > 0) step--
   const per = scale()
   const broken = reading !== null && away * per > 0.72 * span ? (reading > near ? 1 : -1) : 0
@@ -81,8 +81,11 @@ export function tapeAxis({ reading, ends, span, system, floor, fromFloor, nomina
 function shiftFor(places: readonly number[], span: number): number {
   const shown = places.filter(place => place > 0 && place < span)
   const want = (shift: number) => shown.reduce((sum, place) => sum + Math.max(0, EDGE_ROOM - (place - shift)) + Math.max(0, EDGE_ROOM - (span - place + shift)), 0)
-  const moves = Array.from({ length: 2 * EDGE_ROOM + 1 }, (_, i) => (i % 2 ? -1 : 1) * Math.ceil(i / 2))
-  return moves.reduce((best, next) => want(next) < want(best) - 1e-9 ? next : best, 0)
+  let best = 0
+  for (let move = 1; move <= EDGE_ROOM && want(best) > 0; move++) {
+    for (const shift of [move, -move]) if (want(shift) < want(best) - 1e-9) best = shift
+  }
+  return best
 }
 
 function ticksOf(per: number, shown: { start: number, end: number }, from: number, system: System, room: number, floor = -Infinity) {

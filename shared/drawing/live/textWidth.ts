@@ -10,11 +10,16 @@ const OTHERS: Readonly<Record<string, number>> = { '°': 532, '×': 484, '·': 2
 /** Heavier weights are wider by up to this much (digits and letters of weight 600). */
 const WEIGHT_FACTOR: Readonly<Record<number, number>> = { 300: 1, 400: 1, 500: 1.03, 600: 1.08 }
 
-const advance = (letter: string) => ADVANCES[letter.normalize('NFD').codePointAt(0)! - 32] ?? OTHERS[letter] ?? 900
+/** Accented letters are as wide as bare ones; a letter that the table does not know is taken as wide. */
+const advance = (letter: string) => ADVANCES[letter.charCodeAt(0) - 32] ?? OTHERS[letter] ?? ADVANCES[letter.normalize('NFD').charCodeAt(0) - 32] ?? 900
 
 /** How wide a text is set, fractions and all, in the units of its size. */
 export function textWidth(words: string, size: number, weight: number = 400): number {
-  const em = fractionRuns(words).reduce((sum, run) => sum + [...run.text].reduce((all, letter) => all + advance(letter), 0) / 1000 * run.scale + run.kern, 0)
+  let em = 0
+  for (const run of fractionRuns(words)) {
+    em += run.kern
+    for (const letter of run.text) em += advance(letter) / 1000 * run.scale
+  }
   return em * size * (WEIGHT_FACTOR[weight] ?? 1)
 }
 
