@@ -2,6 +2,7 @@ import { z } from 'zod'
 import { wireEntrySchema } from '../entry/entry'
 import type { EntryRefusal } from '../entry/entryRefused'
 import type { Role } from '../permission/permission'
+import type { RoundOutcome } from '../round/outcome'
 
 /** Named in every path of the field's wire (/api/field/v1): a device with an older one is told to load the newer program, and keeps what it holds. */
 export const SYNC_VERSION = 1
@@ -52,6 +53,8 @@ export interface FieldBundle {
   site: { id: string, name: string, address: string, timeZone: string }
   client: { id: string, name: string }
   round: PullAnswer['round']
+  /** What the sealed round before this one came to, from which the fold goes on; null in a job's first round. */
+  startsFrom: RoundOutcome | null
   /** Letter that this device's tags begin with. */
   letter: string
   /** Bases of the round by digest, canonical text each; the device checks the digest. */

@@ -3,6 +3,7 @@ import { SYNC_VERSION } from '../../../shared/sync/sync'
 import { jobCode } from '../../../shared/api/job'
 import { entrance } from '../../database/entrance'
 import * as rounds from '../../database/queries/round'
+import { outcomeBefore } from '../../database/queries/state'
 import type { Session } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
 import { Failure, notFound } from '../failure'
@@ -37,6 +38,7 @@ export async function takeAlong(who: Session & { accountId: string, name: string
       site: head.site,
       client: head.client,
       round,
+      startsFrom: await outcomeBefore(tx, jobId, round.number) ?? null,
       letter: devices.find(one => one.device === device.device)!.letter,
       bases: await rounds.basesOf(tx, jobId),
       people: await rounds.peopleOf(tx),

@@ -1,0 +1,115 @@
+import { ref } from 'vue'
+import type { FieldDatabase } from './fieldDatabase'
+import { FieldFault, storageFault, type FieldFaultCode } from './fieldFault'
+import type { FieldWire } from './fieldWire'
+import { graceLeft, pauseAfter } from './outbox'
+import { syncOnce, takeAlong, type FieldDevice, type RunEnd } from './syncField'
+
+/** Others' words are fetched this often while somebody looks. */
+const LOOK_EVERY = 120_000
+
+export type Trouble = Extract<RunEnd, { state: 'pause' }>['why'] | FieldFaultCode
+
+/**
+ * When a run happens, in which tab. One tab sends at a time (Web Locks); all tabs hear what changed (BroadcastChannel). It never throws: what went
+ * wrong stands in `trouble`, and everything written stays where it is.
+ */
+export class FieldSender {
+  /** False where the device has no signal, or the server gives no answer. */
+  readonly online = ref(navigator.onLine)
+  readonly sending = ref(false)
+  readonly trouble = ref<Trouble | null>(null)
+  private readonly channel: BroadcastChannel | null
+  private readonly listeners = new Set<(jobId: string) => void>()
+  private timer: ReturnType<typeof setTimeout> | undefined
+  private running: Promise<void> | null = null
+  private again = false
+  private failures = 0
+  private readonly unsent = { oldest: 0, newest: 0 }
+
+  constructor(readonly db: FieldDatabase, readonly wire: FieldWire, readonly who: FieldDevice) {
+    this.channel = typeof BroadcastChannel === 'undefined' ? null : new BroadcastChannel(db.name)
+    this.channel?.addEventListener('message', event => this.tell(String(event.data)))
+    addEventListener('online', () => {
+      this.online.value = true
+      void this.sendNow()
+    })
+    addEventListener('offline', () => { this.online.value = false })
+    // Whoever puts the phone away may not take it out again for hours.
+    document.addEventListener('visibilitychange', () => void this.sendNow())
+  }
+
+  /** Calls back for every job of which something changed, in this tab or another. Returns how to stop. */
+  onChange(listener: (jobId: string) => void): () => void {
+    this.listeners.add(listener)
+    return () => this.listeners.delete(listener)
+  }
+
+  /** Something was written down here. */
+  wrote(jobId: string, urgent: boolean): void {
+    this.channel?.postMessage(jobId)
+    const now = Date.now()
+    if (this.unsent.newest === 0) this.unsent.oldest = now
+    this.unsent.newest = now
+    if (urgent) void this.sendNow()
+    else if (this.failures === 0) this.plan(graceLeft(now, this.unsent.oldest, now))
+  }
+
+  /** Sends and fetches now; answers when that run has ended, however it ended. */
+  sendNow(): Promise<void> {
+    this.again = true
+    return this.running ??= this.runs().finally(() => { this.running = null })
+  }
+
+  /** Takes a job along, in turn with the runs. */
+  take(jobId: string) {
+    return takeAlong(this.run, jobId)
+  }
+
+  private get run() {
+    return { db: this.db, wire: this.wire, who: this.who, now: () => Date.now(), changed: (jobId: string) => {
+      this.channel?.postMessage(jobId)
+      this.tell(jobId)
+    } }
+  }
+
+  private tell(jobId: string) {
+    for (const listener of this.listeners) listener(jobId)
+  }
+
+  private plan(milliseconds: number) {
+    clearTimeout(this.timer)
+    this.timer = setTimeout(() => void this.sendNow(), milliseconds)
+  }
+
+  private async runs() {
+    clearTimeout(this.timer)
+    this.sending.value = true
+    let end: RunEnd = { state: 'done' }
+    this.trouble.value = null
+    try {
+      while (this.again && end.state === 'done') {
+        this.again = false
+        this.unsent.newest = 0
+        end = await inTurn(this.db.name, () => syncOnce(this.run))
+      }
+      if (end.state === 'pause') this.trouble.value = end.why
+    }
+    catch (error) {
+      const fault = storageFault(error)
+      // Something that we did not think of: told where a developer looks, tried again later; what was written is kept.
+      if (!(fault instanceof FieldFault)) console.error(error)
+      this.trouble.value = fault instanceof FieldFault ? fault.code : null
+      end = { state: 'again', retryAfterSeconds: 0 }
+    }
+    this.sending.value = false
+    this.failures = end.state === 'again' ? this.failures + 1 : 0
+    this.online.value = navigator.onLine && end.state !== 'again'
+    this.plan(end.state === 'again' ? pauseAfter(this.failures, Math.random(), end.retryAfterSeconds) : LOOK_EVERY)
+  }
+}
+
+/** One at a time over all tabs; where the browser has no locks (no secure connection), in this tab alone, which is harmless: offering twice is. */
+function inTurn<T>(name: string, work: () => Promise<T>): Promise<T> {
+  return navigator.locks ? navigator.locks.request(name, work) as Promise<T> : work()
+}
