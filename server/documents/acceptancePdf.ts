@@ -9,8 +9,8 @@ import { paintHeadAndFoot, shortDigest } from './recordFrame'
 import { shortAddress } from './recordPdf'
 import { leaveSealPlace } from './sealPlace'
 import { Sheet } from './sheet'
-import { Speech } from './speech'
-import { fill, grouped, WORDING } from './wording'
+import { Speech } from '../../shared/record/speech'
+import { fill, grouped, WORDING } from '../../shared/record/wording'
 
 /** An acceptance is meant to stay on one sheet. */
 const BODY = { size: 9, lead: 12.4 }

@@ -6,8 +6,8 @@ import type { Limit } from '../../shared/limit/limit'
 import type { LineElement } from '../../shared/line/line'
 import { INCH } from '../../shared/measure/length'
 import type { RecordCheck, RecordReading } from '../../shared/record/record'
-import type { Speech } from './speech'
-import { fill } from './wording'
+import type { Speech } from '../../shared/record/speech'
+import { fill } from '../../shared/record/wording'
 
 /**
  * The live drawing of a reading as it stood at the seal, on paper; null where its check has none or the record does not hold what it would show.

@@ -1,13 +1,14 @@
-import type { PDFImage } from 'pdf-lib'
+import type { PDFRef } from 'pdf-lib'
 import { tapeTag, tapeTagWidth } from '../../shared/drawing/displayList'
 import { tapeOf } from '../../shared/line/lineMark'
 import type { RecordDeficiency, RecordPhoto, RecordStep } from '../../shared/record/record'
 import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { heading, tagOf } from './recordFrame'
-import { fill, sentence } from './wording'
+import { fill, sentence } from '../../shared/record/wording'
 
-export type Images = Map<string, PDFImage>
+/** The image of each photo, by digest. */
+export type Images = Map<string, PDFRef>
 const GAP = 16
 /** Histories hang beside their tags; photos stand under them in the same column. */
 const HANG = 60

@@ -4,7 +4,7 @@ import { elementsOf, type LineElement } from '../../shared/line/line'
 import { MEASURE, PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { diamondStateOf, heading, tableRow } from './recordFrame'
-import { fill, listed, sentence } from './wording'
+import { fill, listed, sentence } from '../../shared/record/wording'
 
 /** Every element along the line, what it is, how it stands, and whether people may use it. */
 export function paintElements(frame: Frame): void {

@@ -3,10 +3,10 @@ import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { heading, tableRow, tagOf } from './recordFrame'
 import type { Sheet, Words } from './sheet'
-import type { Speech } from './speech'
+import type { Speech } from '../../shared/record/speech'
 import { squareCode } from './squareCode'
 import { signatureDrawing } from './strokes'
-import { fill, grouped, listed, sentence } from './wording'
+import { fill, grouped, listed, sentence } from '../../shared/record/wording'
 
 export function paintNotes(frame: Frame): void {
   const { sheet, record, say, photoNumbers } = frame

@@ -8,7 +8,7 @@ import { MEASURE, PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { columnHeading, tagOf } from './recordFrame'
 import type { Words } from './sheet'
-import { fill, listed, sentence } from './wording'
+import { fill, listed, sentence } from '../../shared/record/wording'
 
 const GAP = 24
 const COLUMN = (MEASURE - GAP) / 2

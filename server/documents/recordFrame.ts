@@ -5,8 +5,8 @@ import { elementsOf } from '../../shared/line/line'
 import type { RecordCheck, RecordDocument } from '../../shared/record/record'
 import { PAPER } from './paper'
 import type { Sheet, Words } from './sheet'
-import type { Speech } from './speech'
-import { fill, grouped } from './wording'
+import type { Speech } from '../../shared/record/speech'
+import { fill, grouped } from '../../shared/record/wording'
 
 /** What the parts of a record share while it is built. */
 export interface Frame {

@@ -4,6 +4,7 @@ import { canonicalJson } from '../../shared/record/canonicalJson'
 import type { RecordDocument } from '../../shared/record/record'
 import { addArchiveParts } from './archiveParts'
 import { DocumentError } from './documentError'
+import { PhotoStream, readJpeg } from './photoStream'
 import { paintChecking, paintNotes, paintSet, paintSignatures } from './recordEnd'
 import { paintDeficiencies, paintOtherPhotos, type Images } from './recordDeficiencies'
 import { paintElements, paintProvisions } from './recordElements'
@@ -12,8 +13,8 @@ import { frameOf, paintHeadAndFoot, scopeTitle, shortDigest } from './recordFram
 import { paintReadings } from './recordReadings'
 import { leaveSealPlace } from './sealPlace'
 import { Sheet } from './sheet'
-import { Speech } from './speech'
-import { fill, WORDING } from './wording'
+import { Speech } from '../../shared/record/speech'
+import { fill, WORDING } from '../../shared/record/wording'
 
 export interface PhotoSource {
   /** The final bytes of a photo (upright, sRGB JPEG, no metadata) by the SHA-256 that the record names. */
@@ -73,19 +74,9 @@ async function embedPhotos(doc: PDFDocument, digests: string[], photoBytes: Phot
     })
     if (createHash('sha256').update(bytes).digest('hex') !== digest) throw new DocumentError('photoChanged', `The photo stored as ${digest} has other bytes; restore it before sealing.`)
     // A photo of four colours or none of ours would print wrongly in years: photos are made plain before their entry.
-    if (!isPlainJpeg(bytes)) throw new DocumentError('photoNotPlain', `The photo ${digest} is no grey or RGB JPEG; take it in again through the photo intake.`)
-    images.set(digest, await doc.embedJpg(bytes))
+    const jpeg = readJpeg(bytes)
+    if (!jpeg) throw new DocumentError('photoNotPlain', `The photo ${digest} is no grey or RGB JPEG; take it in again through the photo intake.`)
+    images.set(digest, doc.context.register(PhotoStream.make(doc.context, bytes, jpeg)))
   }
   return images
-}
-
-/** Whether a JPEG has one or three components, by its frame header (ITU-T T.81, B.2.2). */
-function isPlainJpeg(bytes: Uint8Array): boolean {
-  if (bytes[0] !== 0xFF || bytes[1] !== 0xD8) return false
-  for (let at = 2; at + 9 < bytes.length && bytes[at] === 0xFF;) {
-    const marker = bytes[at + 1]!
-    if (marker >= 0xC0 && marker <= 0xCF && ![0xC4, 0xC8, 0xCC].includes(marker)) return bytes[at + 9] === 1 || bytes[at + 9] === 3
-    at += 2 + bytes[at + 2]! * 256 + bytes[at + 3]!
-  }
-  return false
 }

@@ -5,7 +5,7 @@ import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { diamondStateOf, heading, placeDiamond, tableRow, tagOf } from './recordFrame'
 import type { Block } from './sheet'
-import { fill, listed } from './wording'
+import { fill, listed } from '../../shared/record/wording'
 
 /** Gravest first: the order in which readings are shown. */
 const ORDER: Verdict[] = ['doesNotConform', 'withinError', 'groundNotFinished', 'noLimit', 'notRead', 'conforms', 'notInspected', 'notApplicable']

@@ -1,5 +1,5 @@
 import { deflateSync } from 'node:zlib'
-import type { PDFDocument, PDFImage, PDFPage } from 'pdf-lib'
+import type { PDFDocument, PDFPage, PDFRef } from 'pdf-lib'
 import { PDFName, PDFRawStream } from 'pdf-lib'
 import type { Drawing, Role } from '../../shared/drawing/displayList'
 import { fractionRuns } from '../../shared/drawing/displayList'
@@ -32,7 +32,7 @@ export class Sheet {
   y: number = PAPER.top
   private readonly pages: { page: PDFPage, ops: string[] }[] = []
   private readonly states = new Map<string, string>()
-  private readonly images = new Map<PDFImage, string>()
+  private readonly images = new Map<PDFRef, string>()
 
   private constructor(readonly doc: PDFDocument, readonly faces: Faces) {
     this.structure = new Structure(doc)
@@ -199,10 +199,10 @@ export class Sheet {
   }
 
   /** A photo as a figure, filling the box given. */
-  photo(image: PDFImage, x: number, top: number, width: number, height: number, alt: string): void {
+  photo(image: PDFRef, x: number, top: number, width: number, height: number, alt: string): void {
     const key = this.images.get(image) ?? `P${this.images.size + 1}`
     this.images.set(image, key)
-    this.page.node.setXObject(PDFName.of(key), image.ref)
+    this.page.node.setXObject(PDFName.of(key), image)
     const bottom = PAPER.height - top - height
     this.structure.figure(this.page, this.write, guardGlyphs(alt), [x, bottom, x + width, bottom + height], () =>
       this.write(`q ${decimal(width)} 0 0 ${decimal(height)} ${decimal(x)} ${decimal(bottom)} cm /${key} Do Q`))

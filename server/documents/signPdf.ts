@@ -11,10 +11,11 @@ export interface SignedPdf {
 
 /**
  * Seals a document that has its place open (leaveSealPlace): fills in the byte range and signs it. `key` is PKCS #8 in DER; `chain` has the seal's
- * certificate first, then its root, in DER. Room is left behind the signature for a time stamp. Throws {@link DocumentError}.
+ * certificate first, then its root, in DER. Room is left behind the signature for a time stamp. The bytes given are the ones that are sealed: records
+ * with photos are large, and the open document is of no more use. Throws {@link DocumentError}.
  */
 export function signPdf(bytes: Uint8Array, key: Uint8Array, chain: Uint8Array[]): SignedPdf {
-  const file = Buffer.from(bytes)
+  const file = Buffer.from(bytes.buffer, bytes.byteOffset, bytes.length)
   const at = file.lastIndexOf(OPEN_RANGE, undefined, 'latin1')
   const gap = file.indexOf('<', file.indexOf('/Contents', at))
   if (at === -1 || gap === -1) throw new DocumentError('noPlaceForSeal', 'The document has no open place for a seal; build it again before it is signed.')
@@ -27,5 +28,5 @@ export function signPdf(bytes: Uint8Array, key: Uint8Array, chain: Uint8Array[])
   const cms = writeCms({ chain, digest, signature, token: null })
   if (cms.length > SEAL_BYTES) throw new DocumentError('sealTooLong', `The seal takes ${cms.length} bytes and ${SEAL_BYTES} are kept for it; use a certificate with shorter names.`)
   file.write(Buffer.from(cms).toString('hex').padEnd(SEAL_BYTES * 2, '0'), gap + 1, 'latin1')
-  return { file: new Uint8Array(file.buffer, file.byteOffset, file.length), rangeDigest: digest.toString('hex') }
+  return { file: bytes, rangeDigest: digest.toString('hex') }
 }

@@ -1,6 +1,6 @@
 import { createHash } from 'node:crypto'
 import sharp from 'sharp'
-import { recordTexts } from '#server/documents/wording'
+import { recordTexts } from '#shared/record/wording'
 import type { Check } from '#shared/checklist/check'
 import type { AnyEntry, EntryKind, PayloadOf, PhotoRef, Place, ReadingValue } from '#shared/entry/entry'
 import { makeEntry } from '#shared/entry/makeEntry'

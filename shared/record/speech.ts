@@ -1,10 +1,10 @@
-import type { Place, ReadingValue } from '../../shared/entry/entry'
-import { figureKey } from '../../shared/limit/boundDistance'
-import type { Basis, Bound, Limit, Unit } from '../../shared/limit/limit'
-import type { LineElement } from '../../shared/line/line'
-import { formatLength } from '../../shared/measure/formatLength'
-import type { Length, System } from '../../shared/measure/length'
-import type { RecordCheck, RecordReading } from '../../shared/record/record'
+import type { Place, ReadingValue } from '../entry/entry'
+import { figureKey } from '../limit/boundDistance'
+import type { Basis, Bound, Limit, Unit } from '../limit/limit'
+import type { LineElement } from '../line/line'
+import { formatLength } from '../measure/formatLength'
+import type { Length, System } from '../measure/length'
+import type { RecordCheck, RecordReading } from './record'
 import { fill, listed, type Wording } from './wording'
 
 /** What a document needs to speak of amounts, places and times: its wording, its system, and the names of offsets. */

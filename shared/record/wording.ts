@@ -1,6 +1,6 @@
-import type { RecordLanguage } from '../../shared/record/record'
-import { recordTextsSchema } from '../../shared/record/recordSentence'
-import type { RecordTexts } from '../../shared/record/recordSentence'
+import type { RecordLanguage } from './record'
+import { recordTextsSchema } from './recordSentence'
+import type { RecordTexts } from './recordSentence'
 import en from '../../templates/record/en.json'
 import es from '../../templates/record/es.json'
 
