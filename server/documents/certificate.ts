@@ -1,12 +1,15 @@
 import 'reflect-metadata'
 import { createCipheriv, createDecipheriv, hkdfSync, randomBytes, webcrypto } from 'node:crypto'
-import * as x509 from '@peculiar/x509'
+import type * as X509 from '@peculiar/x509'
 import { DocumentError } from './documentError'
 
 /** A key pair's private half in PKCS #8 and its certificate, both in DER. */
 export interface CertifiedKey { key: Uint8Array, certificate: Uint8Array }
 /** An organisation's own root, which signs nothing but the seal's certificate, and the seal that signs records. */
 export interface OrganisationCertificate { root: CertifiedKey, seal: CertifiedKey }
+
+// Loaded when it is needed: a bundler may otherwise put it before the polyfill that it wants first.
+const loadX509 = () => import('@peculiar/x509')
 
 const CURVE = { name: 'ECDSA', namedCurve: 'P-256', hash: 'SHA-256' }
 
@@ -15,6 +18,7 @@ const CURVE = { name: 'ECDSA', namedCurve: 'P-256', hash: 'SHA-256' }
  * decades later. Each name stands in an RDN of its own. `from` is when they begin to hold.
  */
 export async function makeOrganisationCertificate({ organisation, from, years = 40 }: { organisation: string, from: Date, years?: number }): Promise<OrganisationCertificate> {
+  const x509 = await loadX509()
   const notAfter = new Date(from)
   notAfter.setUTCFullYear(from.getUTCFullYear() + years)
   const name = (role: string) => new x509.Name([{ O: [organisation.slice(0, 64)] }, { CN: [`${organisation.slice(0, 64 - role.length - 1)} ${role}`] }])
@@ -38,7 +42,7 @@ export async function makeOrganisationCertificate({ organisation, from, years = 
       await x509.AuthorityKeyIdentifierExtension.create(rootKeys.publicKey),
     ],
   }, webcrypto as Crypto)
-  const certified = async (pair: webcrypto.CryptoKeyPair, certificate: x509.X509Certificate): Promise<CertifiedKey> =>
+  const certified = async (pair: webcrypto.CryptoKeyPair, certificate: X509.X509Certificate): Promise<CertifiedKey> =>
     ({ key: new Uint8Array(await webcrypto.subtle.exportKey('pkcs8', pair.privateKey)), certificate: new Uint8Array(certificate.rawData) })
   return { root: await certified(rootKeys, rootCertificate), seal: await certified(sealKeys, sealCertificate) }
 }
