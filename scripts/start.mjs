@@ -8,21 +8,20 @@ import { data, openDataFolder, projectRoot } from './lib/dataFolder.mjs'
 import { layGround } from './lib/ground.mjs'
 import { claimDataFolder } from './lib/claim.mjs'
 import { runProgram } from './lib/processes.mjs'
+import { writeWhole } from './lib/secrets.mjs'
 import { step } from './lib/steps.mjs'
 import { assertPortFree, runServices, startMailCatcher, startService, waitUntilReady, watchDatabase, webPort } from './lib/services.mjs'
 
-/** Signs of a demo that was broken off half-way: its loader is then called again. */
-const demoMark = path.join(data.run, 'demo-unfinished')
 const demoLoader = path.join(projectRoot, 'scripts/demo.mjs')
 
+/** Before web and worker run, so that a demo that is broken off leaves a database with nothing in it but itself (layGround then makes it anew). */
 async function loadDemo({ ownerUrl, environment, logOf }) {
   if (process.env.SMOOTHSIDE_DEMO === 'no' || !fs.existsSync(demoLoader)) return
   const { withClient } = await import('./lib/migration.mjs')
-  const empty = await withClient(ownerUrl, async client => !(await client.query('select exists (select from organisation) as some')).rows[0].some)
-  if (!empty && !fs.existsSync(demoMark)) return
-  fs.writeFileSync(demoMark, '')
-  await step('Loading the demo (once)', () => runProgram('Loading the demo', process.execPath, [demoLoader], { cwd: projectRoot, env: { ...environment, DATABASE_URL_OWNER: ownerUrl }, log: logOf('demo') }))
-  fs.rmSync(demoMark, { force: true })
+  if (await withClient(ownerUrl, async client => (await client.query('select exists (select from organisation) as some')).rows[0].some)) return
+  writeWhole(data.demoMark, '')
+  await step('Loading the demo (once)', () => runProgram('Loading the demo', process.execPath, [demoLoader], { cwd: projectRoot, env: { ...environment, NODE_ENV: 'production' }, log: logOf('demo') }))
+  fs.rmSync(data.demoMark)
 }
 
 function tellSignIns() {
@@ -46,14 +45,14 @@ await runServices(async () => {
   const { cluster, environment, workerPort, logOf } = ground
   watchDatabase(cluster.port)
   await step('Building the server and the screens', () => buildIfChanged(logOf('build')))
-  await step('Starting mail catcher, worker and web', async () => {
-    startMailCatcher(ground)
+  startMailCatcher(ground)
+  await loadDemo(ground)
+  await step('Starting worker and web', async () => {
     const built = role => ({ command: process.execPath, parameters: [serverEntry], cwd: projectRoot, log: logOf(role), env: { ...environment, NODE_ENV: 'production', SMOOTHSIDE_ROLE: role, ...(role === 'worker' ? { PORT: String(workerPort) } : {}) } })
     startService('worker', built('worker'))
     startService('web', built('web'))
     await waitUntilReady(`http://127.0.0.1:${port}`, logOf)
   })
-  await loadDemo(ground)
   tellSignIns()
   console.log(`\nMail     ${environment.MAIL_CATCHER_URL ?? 'goes out by SMTP_URL'}\nData     ${data.root}\nLogs     ${data.logs}\nTo stop  Ctrl-C\n\nSmoothside is ready at http://127.0.0.1:${port}`)
 })

@@ -24,6 +24,10 @@ export const data = {
   backups: path.join(root, 'backups'),
   /** Stands from the first to the last moment of a restore. */
   restoreMark: path.join(root, 'run/restore-unfinished'),
+  /** Stands while the demo is loaded into an empty database. */
+  demoMark: path.join(root, 'run/demo-unfinished'),
+  /** Signed heads of the log, kept outside the database (server/services/log/writeHead.ts). */
+  logHeads: path.join(root, 'log-heads.jsonl'),
   demoSignIns: path.join(root, 'demo-sign-ins.json'),
 }
 /** What a backup leaves out of the data folder: the database goes in as a dump, the rest is of this machine and day. */

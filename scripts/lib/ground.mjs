@@ -76,6 +76,17 @@ export async function withCluster(what, run) {
   }
 }
 
+/** While the demo is loaded nobody else can write (web and worker do not run yet), so a half-loaded one is taken away with its database. */
+async function dropHalfDemo(cluster) {
+  if (!fs.existsSync(data.demoMark)) return
+  await step('Taking away a demo that was broken off', async () => {
+    const { dropDatabase } = await import('./migration.mjs')
+    await dropDatabase((await databaseUrls(cluster)).adminUrl, databaseName)
+    fs.rmSync(data.logHeads, { force: true }) // they tell of a log that is gone, and would hold all sealing
+    fs.rmSync(data.demoMark)
+  })
+}
+
 /**
  * All that start and dev share, up to a migrated database.
  * @param {number} webPort
@@ -84,6 +95,7 @@ export async function withCluster(what, run) {
 export async function layGround(webPort) {
   await installAll()
   const cluster = await step('Starting the database', () => raiseCluster())
+  await dropHalfDemo(cluster)
   await step('Bringing the database to the newest schema', () => migrateCluster(cluster))
   const { appUrl, ownerUrl } = await databaseUrls(cluster)
   const keys = keepSecrets(data.serverKeys, ['sessionPassword', 'secret'])

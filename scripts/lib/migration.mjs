@@ -56,6 +56,11 @@ export async function makeDatabase(adminUrl, database) {
   })
 }
 
+/** Takes a database away with all that is in it. @param {string} adminUrl @param {string} database */
+export async function dropDatabase(adminUrl, database) {
+  await withClient(adminUrl, async client => client.query(`drop database if exists ${client.escapeIdentifier(database)} with (force)`))
+}
+
 /** The internal queue is there so that a scheduling worker, which may create nothing, finds it. */
 const queueNames = () => ['__pgboss__send-it', ...JSON.parse(fs.readFileSync(queuesFile, 'utf8'))]
 

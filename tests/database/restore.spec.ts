@@ -31,8 +31,7 @@ beforeAll(async () => {
   expect(script('migrate', first)).toMatchObject({ status: 0 })
   fs.mkdirSync(path.join(first, 'files/photo'), { recursive: true })
   fs.writeFileSync(path.join(first, 'files/photo/one'), 'a picture')
-  fs.mkdirSync(path.join(first, 'heads'))
-  fs.writeFileSync(path.join(first, 'heads/latest'), 'size 3')
+  fs.writeFileSync(path.join(first, 'log-heads.jsonl'), 'size 3')
   fs.writeFileSync(path.join(first, 'keys/server.json'), JSON.stringify({ secret: 'a'.repeat(64) }))
   await query(first, `create table kept (line text); insert into kept values ('written before the backup'); alter table kept owner to smoothside_owner`)
   expect(script('backup', first, path.join(scratch, 'backups'))).toMatchObject({ status: 0 })
@@ -43,7 +42,7 @@ afterAll(() => { fs.rmSync(scratch, { recursive: true, force: true }) })
 describe('a backup', () => {
   it('is for its owner only, names the digest of each of its files, and leaves the database passwords out', () => {
     const { files } = JSON.parse(fs.readFileSync(path.join(backup, 'manifest.json'), 'utf8')) as { files: { file: string, sha256: string }[] }
-    expect(files.map(({ file }) => file)).toEqual(['data/files/photo/one', 'data/heads/latest', 'data/keys/server.json', 'database.dump'])
+    expect(files.map(({ file }) => file)).toEqual(['data/files/photo/one', 'data/keys/server.json', 'data/log-heads.jsonl', 'database.dump'])
     // printf 'a picture' | sha256sum
     expect(files[0]!.sha256).toBe(spawnSync('sha256sum', [path.join(first, 'files/photo/one')], { encoding: 'utf8' }).stdout.slice(0, 64))
     for (const { file } of files) expect(fs.statSync(path.join(backup, file)).mode & 0o077, file).toBe(0)
@@ -54,7 +53,7 @@ describe('a backup', () => {
     expect(script('restore', second, backup)).toMatchObject({ status: 0 })
     expect(await query(second, 'select * from kept')).toEqual([{ line: 'written before the backup' }])
     expect(fs.readFileSync(path.join(second, 'files/photo/one'), 'utf8')).toBe('a picture')
-    expect(fs.readFileSync(path.join(second, 'heads/latest'), 'utf8')).toBe('size 3')
+    expect(fs.readFileSync(path.join(second, 'log-heads.jsonl'), 'utf8')).toBe('size 3')
     expect(JSON.parse(fs.readFileSync(path.join(second, 'keys/server.json'), 'utf8'))).toEqual({ secret: 'a'.repeat(64) })
     const epoch = (folder: string) => query(folder, 'select store_epoch from installation')
     expect(await epoch(second)).not.toEqual(await epoch(first))
