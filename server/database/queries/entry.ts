@@ -65,3 +65,16 @@ export async function entriesAfter(tx: Tx, roundId: string, after: number, most:
     `select number, envelope_text as envelope, coalesce(payload_text, '') as payload from entry where organisation_id = app_organisation() and round_id = $1 and number > $2 order by number limit $3`, [roundId, after, most])
   return rows
 }
+
+/** Entries of a kind in a round of which none is the newer word. */
+export async function standingOfKind(tx: Tx, roundId: string, kind: string): Promise<string[]> {
+  const { rows } = await tx.client.query<{ envelope_text: string }>('select envelope_text from entry where organisation_id = app_organisation() and round_id = $1 and kind = $2', [roundId, kind])
+  const envelopes = rows.map(row => JSON.parse(row.envelope_text) as Pick<Target, 'id'> & { replaces: string[] })
+  const replaced = new Set(envelopes.flatMap(envelope => envelope.replaces))
+  return envelopes.map(envelope => envelope.id).filter(id => !replaced.has(id))
+}
+
+/** The rounds of a job before one, oldest first. */
+export async function roundsBefore(tx: Tx, jobId: string, number: number): Promise<{ id: string, accepted: number }[]> {
+  return (await tx.client.query<{ id: string, accepted: number }>('select id, accepted from round where organisation_id = app_organisation() and job_id = $1 and number < $2 order by number', [jobId, number])).rows
+}

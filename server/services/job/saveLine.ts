@@ -3,6 +3,7 @@ import type { Line } from '../../../shared/line/line'
 import { elementsOf } from '../../../shared/line/line'
 import { canonicalJson, sha256Hex } from '../../../shared/record/canonicalJson'
 import { ChecklistsDiffer, makeBasis } from '../../../shared/round/makeBasis'
+import * as entries from '../../database/queries/entry'
 import * as lines from '../../database/queries/line'
 import { readJobRow } from '../../database/queries/job'
 import { newestRound } from '../../database/queries/round'
@@ -70,6 +71,10 @@ async function pinBasis(tx: Tx, who: Who, job: NonNullable<Awaited<ReturnType<ty
 /** In an open round a change at the desk is an entry that everybody sees. */
 async function announce(who: Who, jobId: string, { basis, round }: Pinned, why: string): Promise<void> {
   if (!round || round.basis === basis) return
-  await withSession(who, tx => lines.setRoundBasis(tx, round.id, basis))
-  await writeDeskEntry(who, who.accountId, { kind: 'basisChanged', job: jobId, round: round.id, basis, payload: { basis, why } })
+  const replaces = await withSession(who, async (tx) => {
+    await lines.setRoundBasis(tx, round.id, basis)
+    return entries.standingOfKind(tx, round.id, 'basisChanged')
+  })
+  // The newest word on the basis: two that do not know of one another would be a conflict that nobody can sign over.
+  await writeDeskEntry(who, who.accountId, { kind: 'basisChanged', job: jobId, round: round.id, basis, replaces, payload: { basis, why } })
 }

@@ -1,20 +1,35 @@
 import { jobCode } from '../../../shared/api/job'
 import { buildRecord } from '../../../shared/record/buildRecord'
 import type { RecordDocument, RecordParticulars } from '../../../shared/record/record'
+import type { AnyEntry } from '../../../shared/entry/entry'
+import { isKnown } from '../../../shared/entry/entry'
+import type { RoundOutcome } from '../../../shared/round/outcome'
+import { roundsBefore } from '../../database/queries/entry'
 import { readJobRow } from '../../database/queries/job'
 import { contactsOf, devicesOf, peopleOf, roundOf } from '../../database/queries/round'
 import type { SealingRow } from '../../database/queries/sealing'
 import { namesOf, sealedOf } from '../../database/queries/sealing'
-import type { Session } from '../../database/withSession'
+import type { Session, Tx } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
 import { recordTexts } from '../../../shared/record/wording'
 import { useSettings } from '../../settings'
 import { notFound } from '../failure'
-import { roundFold } from '../round/foldRound'
+import { entriesOf, roundFold } from '../round/foldRound'
 import { signedSet } from './signedSet'
 import { instantAt, zoneNames } from './zoneNames'
 
 const WHY_REPLACED = { en: 'The work went on, and this record speaks of all of it.', es: 'El trabajo siguió, y esta acta habla de todo él.' }
+
+/** What the outcome still names of the rounds before: their readings and findings go on. */
+async function carriedEntries(tx: Tx, jobId: string, roundNumber: number, outcome: RoundOutcome): Promise<AnyEntry[]> {
+  const named = new Set([
+    ...outcome.checks.flatMap(check => [...check.heads.map(head => head.entry), ...check.earlier, ...check.disturbedBy, ...(check.setAside ? [check.setAside.entry] : [])]),
+    ...outcome.deficiencies.flatMap(one => [one.id, ...one.history, ...one.standing.map(each => each.entry)]),
+  ])
+  const carried: AnyEntry[] = []
+  for (const before of await roundsBefore(tx, jobId, roundNumber)) carried.push(...(await entriesOf(tx, before)).filter(isKnown).filter(entry => named.has(entry.envelope.id)))
+  return carried
+}
 
 /** Gathers all that a record is made of and builds its canonical document: from the entries up to the border alone, so that a resume builds the same. */
 export async function gatherRecord(session: Session, row: SealingRow): Promise<RecordDocument> {
@@ -23,7 +38,8 @@ export async function gatherRecord(session: Session, row: SealingRow): Promise<R
     const round = await roundOf(tx, row.roundId)
     if (!job || !round) throw notFound('job')
     const { entries: all, bases, options } = await roundFold(tx, round)
-    const { entries: known, outcome, late } = signedSet(all.filter(entry => entry.number! <= row.border), bases, options)!
+    const { entries: signed, outcome, late } = signedSet(all.filter(entry => entry.number! <= row.border), bases, options)!
+    const known = [...await carriedEntries(tx, row.jobId, round.number, outcome), ...signed]
     const [people, contacts, devices, names, [earlier]] = [await peopleOf(tx), await contactsOf(tx, job.clientId), await devicesOf(tx, round.id), await namesOf(tx), await sealedOf(tx, row.jobId)]
     const sealedAt = instantAt(row.requestedAt, job.timeZone)
     const inspectors = [...new Set(known.filter(entry => ['reading', 'setAside', 'walkOpened'].includes(entry.envelope.kind)).map(entry => entry.envelope.author))]
