@@ -36,10 +36,10 @@ beforeAll(async () => {
   await query(first, `create table kept (line text); insert into kept values ('written before the backup'); alter table kept owner to smoothside_owner`)
   expect(script('backup', first, path.join(scratch, 'backups'))).toMatchObject({ status: 0 })
   backup = path.join(scratch, 'backups', fs.readdirSync(path.join(scratch, 'backups'))[0]!)
-})
+}, 240_000)
 afterAll(() => { fs.rmSync(scratch, { recursive: true, force: true }) })
 
-describe('a backup', () => {
+describe('a backup', { timeout: 240_000 }, () => {
   it('is for its owner only, names the digest of each of its files, and leaves the database passwords out', () => {
     const { files } = JSON.parse(fs.readFileSync(path.join(backup, 'manifest.json'), 'utf8')) as { files: { file: string, sha256: string }[] }
     expect(files.map(({ file }) => file)).toEqual(['data/files/photo/one', 'data/keys/server.json', 'data/log-heads.jsonl', 'database.dump'])
