@@ -6,7 +6,8 @@ import { drawLatchHeight, type LatchHeightInput } from './latchHeight'
 import type { LiveDrawing, LiveInput } from './live'
 import { drawOpening, type OpeningInput } from './opening'
 import { drawSpacing, type SpacingInput } from './spacing'
-import { drawSwingClearance, type SwingClearanceInput } from './swingClearance'
+import { drawSwingClearance } from './swingClearance'
+import type { SwingClearanceInput } from './swingSeen'
 import { drawTieEnd, type TieEndInput } from './tieEnd'
 
 /** What each live drawing takes, by the name that a check gives it (DRAWINGS of shared/checklist/check.ts). */

@@ -1,7 +1,7 @@
 import { box, dimV, meshPath, open, path, poly, seg, text, type Point, type Shape } from '../displayList'
 import { FIELD_WIDTH } from './live'
 import { bareFigure, figure } from './placedLimit'
-import { degrees, type SwingSeen } from './swingClearance'
+import { degrees, type SwingSeen } from './swingSeen'
 import { cutText, textWidth } from './textWidth'
 import { zigzag } from './uprightGauge'
 import { groundFromEdge } from './groundFromEdge'

@@ -2,7 +2,7 @@ import { DEGREE, ratioOf, radians, type Angle } from '../../gate/leaf'
 import { INCH, MILLIMETRE, type Length } from '../../measure/length'
 import { box, open, poly, seg, text, type Point, type Shape } from '../displayList'
 import { bareFigure } from './placedLimit'
-import { degrees, swingWords, type SwingSeen } from './swingClearance'
+import { degrees, swingWords, type SwingSeen } from './swingSeen'
 import { cutText, textWidth, wrapText } from './textWidth'
 
 const HEIGHT = 208

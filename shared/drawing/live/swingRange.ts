@@ -3,7 +3,7 @@ import { text, type Shape } from '../displayList'
 import { LEVEL_GAUGE, levelGauge } from './levelGauge'
 import { FIELD_WIDTH } from './live'
 import { bareFigure, figure } from './placedLimit'
-import type { SwingSeen } from './swingClearance'
+import type { SwingSeen } from './swingSeen'
 import { cutText, textWidth } from './textWidth'
 
 const HEAD = 24
