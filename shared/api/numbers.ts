@@ -1,5 +1,7 @@
 import { z } from 'zod'
 import { SETTINGS } from '../line/line'
+import type { SettingMeasurand } from '../provision/measurandsOfSetting'
+import type { Provision } from '../provision/provision'
 import { provisionSchema } from '../provision/provision'
 
 /** Whose numbers: an authority's, or a client's standing specification, or (neither) the organisation's own. */
@@ -10,3 +12,8 @@ export const numberInputSchema = z.object({ authorityId: z.string().uuid().nulla
   .refine(({ authorityId, clientId, provision }) => provision.kind === (authorityId ? 'authority' : clientId ? 'specification' : 'organisation'), { path: ['provision', 'kind'], message: 'The kind has to fit whose number it is.' })
 export const numberEndSchema = z.object({ id: z.string().uuid() }).strict()
 export const settingSchema = z.enum(SETTINGS)
+
+/** Query of GET /api/numbers/page: one setting, and whose numbers. */
+export const numbersPageSchema = z.object({ setting: settingSchema, authorityId: z.string().uuid().optional(), clientId: z.string().uuid().optional() }).strict()
+/** Answer: every measurand of the setting on one page, and the numbers in force of that source. */
+export interface NumbersPage { rows: SettingMeasurand[], provisions: Provision[] }

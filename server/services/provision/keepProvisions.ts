@@ -1,9 +1,11 @@
 import type { z } from 'zod'
-import type { numberInputSchema, numbersOfSchema } from '../../../shared/api/numbers'
+import type { numberInputSchema, NumbersPage, numbersOfSchema, numbersPageSchema } from '../../../shared/api/numbers'
+import { measurandsOfSetting } from '../../../shared/provision/measurandsOfSetting'
 import type { Provision } from '../../../shared/provision/provision'
 import * as provisions from '../../database/queries/provision'
 import type { Session } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
+import { readBuiltIn } from '../checklist/readBuiltIn'
 import { Failure, notFound } from '../failure'
 
 /** The numbers in force of an authority, a client's specification or the organisation itself. */
@@ -24,3 +26,9 @@ export async function putProvision(who: Session & { accountId: string }, input: 
 export const endProvision = (who: Session, id: string) => withSession(who, async (tx) => {
   if (!await provisions.endOne(tx, id)) throw notFound('number')
 })
+
+/** One page of numbers: all measurands that a setting calls for, with the built-in basis, and what this source has set. */
+export async function readNumbersPage(who: Session, { setting, ...of }: z.infer<typeof numbersPageSchema>): Promise<NumbersPage> {
+  const provisions = await listProvisions(who, of)
+  return { rows: measurandsOfSetting(setting, readBuiltIn()), provisions: provisions.filter(one => one.setting === null || one.setting === setting) }
+}
