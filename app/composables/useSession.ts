@@ -1,6 +1,7 @@
 import type { Me } from '#shared/api/account'
 import type { Permission } from '#shared/permission/permission'
 import { may as mayDo } from '#shared/permission/permission'
+import { forgetProfile } from '~/offline/fieldProfile'
 
 /** Who is signed in, in which standing, and what follows from it. Read once a page load by plugins/session.ts. */
 export function useSession() {
@@ -21,7 +22,8 @@ export function useSession() {
     async signOut(everywhere = false) {
       await $fetch('/api/account/sign-out', { method: 'POST', body: { everywhere } })
       me.value = null
-      await navigateTo('/sign-in', { external: true })
+      const kept = forgetProfile()
+      await navigateTo({ path: '/sign-in', query: kept > 0 ? { kept } : {} }, { external: true })
     },
     async actFor(standing: Me['standing'], organisationId: string | null) {
       await $fetch('/api/account/act-for', { method: 'POST', body: { standing, organisationId } })

@@ -1,13 +1,9 @@
-import { computed, onScopeDispose, ref, shallowRef, triggerRef, type Ref } from 'vue'
+import { computed, onScopeDispose, ref, shallowRef, type Ref } from 'vue'
 import type { Me } from '#shared/api/account'
 import type { EntryKind, KeptEntry, PayloadOf } from '#shared/entry/entry'
 import { isKnown } from '#shared/entry/entry'
 import { makeEntry } from '#shared/entry/makeEntry'
-import { sha256Hex } from '#shared/record/canonicalJson'
 import type { RoundBasis } from '#shared/round/basis'
-import { fold } from '#shared/round/fold'
-import { tasksFor } from '#shared/round/makeBasis'
-import { RoundError } from '#shared/round/roundError'
 import { SYNC_VERSION, type FieldBundle } from '#shared/sync/sync'
 import { uuidv7 } from 'uuidv7'
 import type { FieldDraft, FieldJob } from '~/composables/useFieldJob'
@@ -16,6 +12,7 @@ import { enterField, type FieldDesk } from './fieldDesk'
 import { FieldFault } from './fieldFault'
 import { keepPhoto, offerAgain, spendTag, takeBackEntries, tallyOf, writeEntry, type JobTally } from './fieldStore'
 import { finalPhoto } from './finalPhoto'
+import { basesHere, foldHere } from './foldHere'
 import { withOffset } from './instant'
 import { answered, nextTagNumber, tagNumber } from './outbox'
 import { RowReader } from './readRow'
@@ -37,31 +34,13 @@ export function openFieldJob(jobId: string, me: Ref<Me | null>): FieldJob {
   const rows = new RowReader()
   let tags = 0
 
-  const folded = computed(() => {
-    const of = bundle.value
-    if (!of || bases.value.size === 0) return { outcome: null, basisMissing: of !== null }
-    const options = { basis: of.round.basis, startsFrom: of.startsFrom ?? undefined, tasksFor: (element: Parameters<typeof tasksFor>[1], basis: RoundBasis) => tasksFor(basis, element).tasks }
-    try {
-      return { outcome: fold(entries.value, bases.value, options), basisMissing: false }
-    }
-    catch (error) {
-      if (!(error instanceof RoundError)) throw error
-      // A change of basis came without the basis itself; until it comes too, what was known before is shown and nothing is signed.
-      const known = entries.value.filter(entry => entry.envelope.basis === null || bases.value.has(entry.envelope.basis))
-      return { outcome: bases.value.has(of.round.basis) ? fold(known, bases.value, options) : null, basisMissing: true }
-    }
-  })
+  const folded = computed(() => bundle.value ? foldHere(bundle.value, bases.value, entries.value) : { outcome: null, basisMissing: false })
   const outcome = computed(() => folded.value.outcome)
   const basis = computed(() => bases.value.get(outcome.value?.basis ?? bundle.value?.round.basis ?? '') ?? null)
 
   function take(next: FieldBundle) {
     if (bundle.value === next) return
-    const before = bases.value
-    bases.value = new Map(next.bases.flatMap(({ digest, text }) => {
-      const known = before.get(digest)
-      // A text that is not what its name says is no basis.
-      return known ? [[digest, known] as const] : sha256Hex(text) === digest ? [[digest, JSON.parse(text) as RoundBasis] as const] : []
-    }))
+    bases.value = basesHere(next, bases.value)
     bundle.value = next
   }
 

@@ -1,6 +1,7 @@
 import type { Me } from '#shared/api/account'
 
 const KEY = 'smoothside-field-profile'
+const COUNT = 'smoothside-field-waiting'
 
 /**
  * Who may use the field pages of this device with no signal: the person who was signed in when they last opened with one. Kept beside, not in, the
@@ -24,13 +25,26 @@ export function keepProfile(me: Me): void {
   }
 }
 
-/** On signing out: the next person on this device sees nothing of the one before. What waits stays in that person's own database. */
-export function forgetProfile(): void {
+/** How many entries of that person wait on this device, as last counted; told on signing out. */
+export function countKept(waiting: number): void {
   try {
-    localStorage.removeItem(KEY)
+    localStorage.setItem(COUNT, String(waiting))
   }
   catch {
-    // Nothing was kept there.
+    // As above.
+  }
+}
+
+/** On signing out: the next person on this device sees nothing of the one before. What waits stays in that person's own database; answers how many that are. */
+export function forgetProfile(): number {
+  try {
+    const kept = Number(localStorage.getItem(COUNT)) || 0
+    localStorage.removeItem(KEY)
+    localStorage.removeItem(COUNT)
+    return kept
+  }
+  catch {
+    return 0
   }
 }
 

@@ -1,6 +1,8 @@
 import { ref } from 'vue'
 import type { FieldDatabase } from './fieldDatabase'
 import { FieldFault, storageFault, type FieldFaultCode } from './fieldFault'
+import { countKept } from './fieldProfile'
+import { waitingCount } from './fieldStore'
 import type { FieldWire } from './fieldWire'
 import { graceLeft, pauseAfter } from './outbox'
 import { syncOnce, takeAlong, type FieldDevice, type RunEnd } from './syncField'
@@ -48,6 +50,7 @@ export class FieldSender {
   /** Something was written down here. */
   wrote(jobId: string, urgent: boolean): void {
     this.channel?.postMessage(jobId)
+    void this.count()
     const now = Date.now()
     if (this.unsent.newest === 0) this.unsent.oldest = now
     this.unsent.newest = now
@@ -75,6 +78,10 @@ export class FieldSender {
 
   private tell(jobId: string) {
     for (const listener of this.listeners) listener(jobId)
+  }
+
+  private async count() {
+    countKept(await waitingCount(this.db).catch(() => 0))
   }
 
   private plan(milliseconds: number) {
@@ -105,6 +112,7 @@ export class FieldSender {
     this.sending.value = false
     this.failures = end.state === 'again' ? this.failures + 1 : 0
     this.online.value = navigator.onLine && end.state !== 'again'
+    void this.count()
     this.plan(end.state === 'again' ? pauseAfter(this.failures, Math.random(), end.retryAfterSeconds) : LOOK_EVERY)
   }
 }

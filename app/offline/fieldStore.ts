@@ -68,6 +68,11 @@ export async function waitingRows(db: FieldDatabase): Promise<Waiting[]> {
   return rows.map(({ seq, id, round, kind, names, photos, envelope, payload }) => ({ seq, id, round, kind, names, photos, size: envelope.length + payload.length }))
 }
 
+/** How many are only here, over all jobs. */
+export function waitingCount(db: FieldDatabase): Promise<number> {
+  return db.entries.where('state').anyOf('waiting', 'held', 'heldBack').count()
+}
+
 /** Marks entries as on their way and gives their texts; those that were taken back meanwhile are not among them. */
 export async function offerRows(db: FieldDatabase, seqs: readonly number[]): Promise<EntryRow[]> {
   return db.transaction('rw', db.entries, async () => {
