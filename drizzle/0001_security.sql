@@ -29,7 +29,7 @@ begin
   end loop;
 end $$;
 --> statement-breakpoint
-grant delete on job_given, check_state, deficiency_state, entry_aside to smoothside_staff;
+grant delete on job_given, check_state, deficiency_state, round_state, entry_aside to smoothside_staff;
 --> statement-breakpoint
 create policy staff_own on organisation to smoothside_staff using (id = app_organisation()) with check (id = app_organisation());
 --> statement-breakpoint

@@ -172,6 +172,8 @@ create function entrance.worker_seen() returns void language sql security define
 create function entrance.sealings_unfinished() returns table (organisation_id uuid, id uuid)
 language sql security definer set search_path = public, pg_temp as $$ select r.organisation_id, r.id from record r where r.sealing <> 'sealed' $$;
 --> statement-breakpoint
+create function entrance.organisation_ids() returns setof uuid language sql security definer set search_path = public, pg_temp as $$ select id from organisation order by id $$;
+--> statement-breakpoint
 do $$ declare f regprocedure; begin
   for f in select p.oid::regprocedure from pg_proc p join pg_namespace n on n.oid = p.pronamespace where n.nspname = 'entrance' loop
     execute format('revoke all on function %s from public', f);

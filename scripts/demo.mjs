@@ -2,7 +2,7 @@
 import process from 'node:process'
 import { serverEntry } from './lib/build.mjs'
 
-process.env.SMOOTHSIDE_DEMO = 'load'
+process.env.SMOOTHSIDE_RUN = 'demo'
 process.env.SMOOTHSIDE_ROLE = 'web'
 process.env.PORT = '0'
 await import(serverEntry)

@@ -42,5 +42,6 @@ export const entrance = {
   installation: async () => (await rows<{ store_epoch: string, log_epoch: number, witness_key: string | null, witness_certificate: string | null, worker_seen_at: Date | null, organisations: string }>('select * from entrance.installation_of()', []))[0]!,
   setWitness: (wrappedKey: string, certificate: string) => rows('select entrance.witness_set($1, $2)', [wrappedKey, certificate]),
   workerSeen: () => rows('select entrance.worker_seen()', []),
+  organisationIds: async () => (await rows<{ id: string }>('select entrance.organisation_ids() as id', [])).map(row => row.id),
   unfinishedSealings: () => rows<{ organisation_id: string, id: string }>('select * from entrance.sealings_unfinished()', []),
 }

@@ -19,28 +19,22 @@ export function readJpeg(bytes: Uint8Array): Jpeg | null {
   return null
 }
 
-/**
- * A photo's own bytes as an image of a PDF. The writer of pdf-lib copies streams byte by byte, which takes longer than all the rest of a record with many
- * photos: this one copies them at once.
- */
-export class PhotoStream extends PDFRawStream {
-  static make(context: PDFContext, bytes: Uint8Array, { width, height, space }: Jpeg): PhotoStream {
-    // The package keeps its constructor to itself, its own class methods aside.
-    return new (PhotoStream as unknown as new (dict: unknown, contents: Uint8Array) => PhotoStream)(
-      context.obj({ Type: 'XObject', Subtype: 'Image', Width: width, Height: height, BitsPerComponent: 8, ColorSpace: space, Filter: 'DCTDecode' }), bytes)
-  }
-
-  override copyBytesInto(buffer: Uint8Array, offset: number): number {
-    this.updateDict()
-    const start = offset
-    offset += this.dict.copyBytesInto(buffer, offset)
-    for (const part of [START, this.contents, END]) {
-      buffer.set(part, offset)
-      offset += part.length
-    }
-    return offset - start
-  }
-}
-
 const START = new TextEncoder().encode('\nstream\n')
 const END = new TextEncoder().encode('\nendstream')
+
+/**
+ * A photo's own bytes as an image of a PDF. The writer of pdf-lib copies streams byte by byte, which takes longer than all the rest of a record with many
+ * photos: this stream is copied at once.
+ */
+export function photoStream(context: PDFContext, bytes: Uint8Array, { width, height, space }: Jpeg): PDFRawStream {
+  const stream = PDFRawStream.of(context.obj({ Type: 'XObject', Subtype: 'Image', Width: width, Height: height, BitsPerComponent: 8, ColorSpace: space, Filter: 'DCTDecode' }), bytes)
+  stream.copyBytesInto = (buffer, start) => {
+    let at = start + stream.dict.copyBytesInto(buffer, start)
+    for (const part of [START, bytes, END]) {
+      buffer.set(part, at)
+      at += part.length
+    }
+    return at - start
+  }
+  return stream
+}

@@ -67,9 +67,10 @@ export function paintProvisions(frame: Frame): void {
           ...unused.map(one => ({ text: `\n${fill(phrases.limitSetAside, { limit: say.limit(one.limit), basis: say.basis(one.limit.basis), why: setAsideWhys[one.why] })}`, role: 'soft' as const })),
         ]])
       }
-      for (const provision of record.provisions.filter(one => one.note)) {
-        tableRow(frame, columns, [labels.note, provision.note!, [{ text: `${sentence(bases[provision.kind])}: `, weight: 500 }, { text: say.basis({ ...provision, kind: provision.kind }) }]])
-      }
     })
+    sheet.y += 6
+    for (const provision of record.provisions) {
+      if (provision.note) sheet.paragraph([{ text: `${sentence(bases[provision.kind])}, ${say.basis(provision)}: `, weight: 500 }, { text: provision.note }], { size: 8.8, after: 4 })
+    }
   })
 }

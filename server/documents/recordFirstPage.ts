@@ -110,6 +110,7 @@ type Part = [title: string, body: ColumnBody]
 function paintColumns(frame: Frame, columns: [Part[], Part[]]): void {
   const { sheet } = frame
   const whole = columnsHeight(frame, columns)
+  if (whole > PAPER.bottom - PAPER.top) return paintOneByOne(frame, columns.flat())
   sheet.room(whole)
   const top = sheet.y
   columns.forEach((parts, at) => {
@@ -122,6 +123,20 @@ function paintColumns(frame: Frame, columns: [Part[], Part[]]): void {
     }
   })
   sheet.y = top + whole
+}
+
+/** Where somebody wrote more than a page holds beside: one part under another, over pages. */
+function paintOneByOne(frame: Frame, parts: Part[]): void {
+  const { sheet } = frame
+  for (const [title, body] of parts) {
+    sheet.room(60)
+    sheet.structure.within('Sect', () => {
+      sheet.y = columnHeading(frame, title, PAPER.left, sheet.y, MEASURE)
+      if (Array.isArray(body)) body.forEach(words => sheet.paragraph(words, { ...SMALL, after: 3 }))
+      else body.pairs.forEach(([label, words]) => sheet.paragraph([{ text: `${label}: `, role: 'soft' }, ...(typeof words === 'string' ? [{ text: words }] : words)], { ...SMALL, after: 2 }))
+    })
+    sheet.y += 8
+  }
 }
 
 /** Heading and the room after a part. */

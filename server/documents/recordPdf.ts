@@ -4,7 +4,7 @@ import { canonicalJson } from '../../shared/record/canonicalJson'
 import type { RecordDocument } from '../../shared/record/record'
 import { addArchiveParts } from './archiveParts'
 import { DocumentError } from './documentError'
-import { PhotoStream, readJpeg } from './photoStream'
+import { photoStream, readJpeg } from './photoStream'
 import { paintChecking, paintNotes, paintSet, paintSignatures } from './recordEnd'
 import { paintDeficiencies, paintOtherPhotos, type Images } from './recordDeficiencies'
 import { paintElements, paintProvisions } from './recordElements'
@@ -76,7 +76,7 @@ async function embedPhotos(doc: PDFDocument, digests: string[], photoBytes: Phot
     // A photo of four colours or none of ours would print wrongly in years: photos are made plain before their entry.
     const jpeg = readJpeg(bytes)
     if (!jpeg) throw new DocumentError('photoNotPlain', `The photo ${digest} is no grey or RGB JPEG; take it in again through the photo intake.`)
-    images.set(digest, doc.context.register(PhotoStream.make(doc.context, bytes, jpeg)))
+    images.set(digest, doc.context.register(photoStream(doc.context, bytes, jpeg)))
   }
   return images
 }

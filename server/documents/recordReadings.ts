@@ -4,7 +4,7 @@ import { liveDrawing } from './liveDrawing'
 import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { diamondStateOf, heading, placeDiamond, tableRow, tagOf } from './recordFrame'
-import type { Block } from './sheet'
+import type { Block, Words } from './sheet'
 import { fill, listed } from '../../shared/record/wording'
 
 /** Gravest first: the order in which readings are shown. */
@@ -50,9 +50,12 @@ function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
     ...limits.map(limit => sheet.lay([{ text: say.limit(limit) }, { text: `\n${say.basis(limit.basis)}`, role: 'soft' }], wide.width, small)),
     ...conditions(check, frame).map(words => sheet.lay(words, wide.width, small)),
     ...(governing ? [sheet.lay(circumstances(governing, check, frame), wide.width, { ...small, role: 'soft' })] : []),
-    ...others.map(reading => sheet.lay([{ text: fill(phrases.moreReadings, { list: say.reading(reading.value, check, limits) }) }, { text: ` (${circumstances(reading, check, frame)})`, role: 'soft' }], wide.width, small)),
-    ...check.earlier.map(reading => sheet.lay(earlier(reading, check, frame), wide.width, { ...small, role: 'soft' })),
     ...(check.readAgain ? [sheet.lay(phrases.readAgain, wide.width, { ...small, weight: 500 })] : []),
+  ]
+  // There may be one for each of five hundred bays: these go on over pages, the rest of the row stands together.
+  const more: Words[] = [
+    ...others.map((reading): Words => [{ text: fill(phrases.moreReadings, { list: say.reading(reading.value, check, limits) }) }, { text: ` (${circumstances(reading, check, frame)})`, role: 'soft' }]),
+    ...check.earlier.map((reading): Words => [{ text: earlier(reading, check, frame), role: 'soft' }]),
   ]
   const figure = governing ? sheet.lay(say.reading(governing.value, check, limits), FIGURE.width, { size: governing.value.method === 'template' ? 10.5 : 15, weight: 300, lead: governing.value.method === 'template' ? 14 : 18 }) : null
   const margin = governing ? say.margin(governing, check, record.limits) : null
@@ -60,7 +63,7 @@ function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
   const verdict = sheet.lay([...(margin ? [{ text: `${margin}\n`, weight: 600 as const }] : []), { text: state === 'settled' ? say.w.settledVerdict : verdicts[check.verdict] }], FIGURE.width - 23, { size: 9, lead: 11.8 })
 
   const scale = drawing ? Math.min(0.75, PICTURE.width / drawing.width) : 0
-  const heightText = said.reduce((sum, block) => sum + block.height, 0)
+  const heightText = said.reduce((sum, block) => sum + block.height, 0) - 2
   const height = Math.max(heightText, (figure?.height ?? 0) + 5 + verdict.height, drawing ? drawing.height * scale : 0)
   sheet.room(height + 15)
   if (!first) sheet.rule(sheet.y, { width: 0.75, role: 'line' })
@@ -81,8 +84,12 @@ function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
     const under = top + (figure ? figure.height + 3 : 0)
     placeDiamond(sheet, state, FIGURE.x, under + Math.max(0, (verdict.height - 16) / 2), 16)
     sheet.place(verdict, FIGURE.x + 23, under)
+    const { page } = sheet
+    sheet.y = top + heightText
+    for (const words of more) sheet.paragraph(words, { x: wide.x, width: wide.width, ...small })
+    if (sheet.page === page) sheet.y = Math.max(sheet.y, top + height)
   })
-  sheet.y = top + height + 7
+  sheet.y += 7
 }
 
 /** What the answer was held against, where that is no limit with a figure. */

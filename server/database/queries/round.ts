@@ -59,3 +59,7 @@ export async function contactsOf(tx: Tx, clientId: string): Promise<FieldBundle[
     `select id, account_id as "accountId", name, title, phone, accepts from contact where organisation_id = app_organisation() and client_id = $1 and ended_at is null and not mailbox order by name`, [clientId])
   return rows
 }
+
+export async function openRounds(tx: Tx): Promise<string[]> {
+  return (await tx.client.query<{ id: string }>(`select id from round where organisation_id = app_organisation() and state <> 'sealed' order by id`)).rows.map(row => row.id)
+}

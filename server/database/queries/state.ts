@@ -69,3 +69,10 @@ export async function writeJobSummary(tx: Tx, jobId: string, summary: JobSummary
       where organisation_id = app_organisation() and id = $1 and state <> 'closed'`,
     [jobId, summary.state, summary.moveBy, summary.move, summary.moveCount, summary.openTags, summary.heldOut, JSON.stringify(summary.strip)])
 }
+
+/** Throws away what is kept of a round, to be folded anew. */
+export async function forgetState(tx: Tx, roundId: string): Promise<void> {
+  await tx.client.query('delete from check_state where organisation_id = app_organisation() and round_id = $1', [roundId])
+  await tx.client.query('delete from deficiency_state where organisation_id = app_organisation() and round_id = $1', [roundId])
+  await tx.client.query('delete from round_state where organisation_id = app_organisation() and round_id = $1', [roundId])
+}
