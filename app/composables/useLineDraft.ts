@@ -1,3 +1,4 @@
+import { computed, shallowRef, toRaw, watch, type Ref } from 'vue'
 import type { Line } from '#shared/line/line'
 
 /** How many steps can be taken back. */
