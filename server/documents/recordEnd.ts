@@ -5,7 +5,7 @@ import { heading, tableRow, tagOf } from './recordFrame'
 import type { Sheet, Words } from './sheet'
 import type { Speech } from '../../shared/record/speech'
 import { squareCode } from './squareCode'
-import { signatureDrawing } from './strokes'
+import { signatureDrawing } from '../../shared/record/signatureDrawing'
 import { fill, grouped, listed, sentence } from '../../shared/record/wording'
 
 export function paintNotes(frame: Frame): void {

@@ -1,7 +1,7 @@
 import type { z } from 'zod'
-import type { Drawing } from '../../shared/drawing/displayList'
-import { path } from '../../shared/drawing/displayList'
-import type { strokeSchema } from '../../shared/entry/entry'
+import type { Drawing } from '../drawing/displayList'
+import { path } from '../drawing/displayList'
+import type { strokeSchema } from '../entry/entry'
 
 /** A signature from its strokes, cropped to what was drawn: curves through the middles between points, as the pad showed them. */
 export function signatureDrawing(strokes: z.infer<typeof strokeSchema>[]): Drawing {
