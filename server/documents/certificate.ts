@@ -1,4 +1,3 @@
-import 'reflect-metadata'
 import { createCipheriv, createDecipheriv, hkdfSync, randomBytes, webcrypto } from 'node:crypto'
 import type * as X509 from '@peculiar/x509'
 import { DocumentError } from './documentError'
@@ -8,8 +7,11 @@ export interface CertifiedKey { key: Uint8Array, certificate: Uint8Array }
 /** An organisation's own root, which signs nothing but the seal's certificate, and the seal that signs records. */
 export interface OrganisationCertificate { root: CertifiedKey, seal: CertifiedKey }
 
-// Loaded when it is needed: a bundler may otherwise put it before the polyfill that it wants first.
-const loadX509 = () => import('@peculiar/x509')
+/** Loaded when it is needed, after the polyfill that it wants first: a bundler drops a bare import of that, or puts it later. */
+async function loadX509() {
+  await import('reflect-metadata')
+  return import('@peculiar/x509')
+}
 
 const CURVE = { name: 'ECDSA', namedCurve: 'P-256', hash: 'SHA-256' }
 
