@@ -26,9 +26,9 @@ export function folderStorage(folder: string): Storage {
       await link(beside, path).catch((error: NodeJS.ErrnoException) => { if (error.code !== 'EEXIST') throw error })
       await rm(beside, { force: true })
     },
-    get: key => readFile(at(key)).catch((error: NodeJS.ErrnoException) => { if (error.code === 'ENOENT') return null; throw error }),
-    has: key => there(at(key)),
-    remove: key => rm(at(key), { force: true }),
+    get: async key => readFile(at(key)).catch((error: NodeJS.ErrnoException) => { if (error.code === 'ENOENT') return null; throw error }),
+    has: async key => there(at(key)),
+    remove: async key => rm(at(key), { force: true }),
     async probe() {
       const key = `probe/${randomBytes(6).toString('hex')}`
       await storage.put(key, Buffer.from('there'))
