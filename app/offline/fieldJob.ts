@@ -132,9 +132,8 @@ export function openFieldJob(jobId: string, me: Ref<Me | null>): FieldJob {
     const kept = rows.read(row)
     // A refresh that ran meanwhile may have it already.
     if (kept && !entries.value.some(one => one.envelope.id === row.id)) entries.value = [...entries.value, kept]
-    tally.value = { ...tally.value, waiting: tally.value.waiting + 1, sentAt: null }
     at.sender.wrote(jobId, kind === 'dangerNow')
-    void refresh()
+    tally.value = await tallyOf(at.db, jobId)
     return row.id
   }
 
@@ -165,7 +164,7 @@ export function openFieldJob(jobId: string, me: Ref<Me | null>): FieldJob {
     if (!await takeBackEntries(at.db, jobId, ids)) return false
     entries.value = entries.value.filter(entry => !ids.includes(entry.envelope.id))
     at.sender.wrote(jobId, false)
-    await refresh()
+    tally.value = await tallyOf(at.db, jobId)
     return true
   }
 

@@ -9,6 +9,8 @@ import { syncOnce, takeAlong, type FieldDevice, type RunEnd } from './syncField'
 
 /** Others' words are fetched this often while somebody looks. */
 const LOOK_EVERY = 120_000
+/** The longest pause while something that speaks of danger waits. */
+const DANGER_EVERY = 15_000
 
 export type Trouble = Extract<RunEnd, { state: 'pause' }>['why'] | FieldFaultCode
 
@@ -80,6 +82,11 @@ export class FieldSender {
     for (const listener of this.listeners) listener(jobId)
   }
 
+  /** Whether something that speaks of danger waits. */
+  private async hurry(): Promise<boolean> {
+    return await this.db.entries.where('state').anyOf('waiting', 'held').filter(row => row.kind === 'dangerNow').count().catch(() => 0) > 0
+  }
+
   private async count() {
     countKept(await waitingCount(this.db).catch(() => 0))
   }
@@ -93,27 +100,33 @@ export class FieldSender {
     clearTimeout(this.timer)
     this.sending.value = true
     let end: RunEnd = { state: 'done' }
-    this.trouble.value = null
+    let trouble: Trouble | null = null
     try {
       while (this.again && end.state === 'done') {
         this.again = false
         this.unsent.newest = 0
         end = await inTurn(this.db.name, () => syncOnce(this.run))
       }
-      if (end.state === 'pause') this.trouble.value = end.why
+      if (end.state === 'pause') trouble = end.why
     }
     catch (error) {
       const fault = storageFault(error)
       // Something that we did not think of: told where a developer looks, tried again later; what was written is kept.
       if (!(fault instanceof FieldFault)) console.error(error)
-      this.trouble.value = fault instanceof FieldFault ? fault.code : null
+      trouble = fault instanceof FieldFault ? fault.code : null
       end = { state: 'again', retryAfterSeconds: 0 }
     }
     this.sending.value = false
+    this.trouble.value = trouble
     this.failures = end.state === 'again' ? this.failures + 1 : 0
     this.online.value = navigator.onLine && end.state !== 'again'
     void this.count()
-    this.plan(end.state === 'again' ? pauseAfter(this.failures, Math.random(), end.retryAfterSeconds) : LOOK_EVERY)
+    if (end.state === 'again') {
+      const pause = pauseAfter(this.failures, Math.random(), end.retryAfterSeconds)
+      this.plan(await this.hurry() ? Math.min(pause, DANGER_EVERY) : pause)
+    }
+    // A page that nobody looks at fetches nothing by itself; it does when it is looked at again.
+    else if (!document.hidden) this.plan(LOOK_EVERY)
   }
 }
 
