@@ -18,8 +18,12 @@ export default defineNuxtConfig({
     '@nuxt/eslint',
     'reka-ui/nuxt',
   ],
+  // A component is named by its file alone; the folder is the room's word.
+  components: [{ path: '~/components', pathPrefix: false }],
   devtools: { enabled: false },
-  app: { head: { htmlAttrs: { lang: 'en' }, title: 'Smoothside', link: [{ rel: 'icon', type: 'image/svg+xml', href: '/mark.svg' }] } },
+  app: { head: { htmlAttrs: { lang: 'en' }, title: 'Smoothside', link: [{ rel: 'icon', type: 'image/svg+xml', href: '/mark.svg' }],
+    // The field pages are one static shell: the chosen light is put on before the first paint.
+    script: [{ tagPosition: 'head', innerHTML: 'var m=/(?:^|; )smoothside-theme=(\\w+)/.exec(document.cookie);if(m&&m[1]!=="device")document.documentElement.dataset.theme=m[1]' }] } },
   css: ['~/assets/css/fonts.css', '~/assets/css/tokens.css', '~/assets/css/base.css'],
   runtimeConfig: { session: { name: 'smoothside-session', password: '', maxAge: 60 * 60 * 24 * 30, cookie: { sameSite: 'lax', secure: false } } },
   routeRules: { '/w/**': { ssr: false } },
