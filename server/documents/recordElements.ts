@@ -10,7 +10,7 @@ import { fill, listed, sentence } from '../../shared/record/wording'
 export function paintElements(frame: Frame): void {
   const { sheet, record, say } = frame
   const { labels, phrases, works, legend, titles } = say.w
-  const columns = [0, 50, 238, 302, 354, 440].map((x, at, all) => ({ x: PAPER.left + x, width: (all[at + 1] ?? MEASURE + 6) - x - 6 }))
+  const columns = [0, 50, 222, 276, 324, 436].map((x, at, all) => ({ x: PAPER.left + x, width: (all[at + 1] ?? MEASURE + 6) - x - 6 }))
   sheet.structure.within('Sect', () => {
     heading(frame, titles.elements)
     sheet.structure.within('Table', () => {

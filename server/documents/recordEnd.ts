@@ -2,7 +2,7 @@ import type { RecordSignature } from '../../shared/record/record'
 import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { heading, tableRow, tagOf } from './recordFrame'
-import type { Sheet, Words } from './sheet'
+import type { Block, Sheet, Words } from './sheet'
 import type { Speech } from '../../shared/record/speech'
 import { squareCode } from './squareCode'
 import { signatureDrawing } from '../../shared/record/signatureDrawing'
@@ -51,12 +51,14 @@ export function paintSignature(sheet: Sheet, say: Speech, one: ShownSignature, r
     ...(one.words ? [sheet.lay(fill(phrases.ownWords, { words: one.words }), width, small)] : []),
     ...(one.sheetDigest ? [sheet.lay(fill(phrases.sheetDigest, { digest: grouped(one.sheetDigest) }), width, { size: 8.25, lead: 11, role: 'soft' })] : []),
   ]
-  const height = Math.max(70, blocks.reduce((sum, block) => sum + block.height, 0) + 4)
+  const hand = handBlock(sheet, say, one)
+  const line = Math.max(58, (hand?.height ?? 0) + 4)
+  const height = Math.max(line + 14, blocks.reduce((sum, block) => sum + block.height, 0) + 4)
   sheet.room(height + 18)
   if (ruled) sheet.rule(sheet.y, { width: 0.75, role: 'line' })
   const top = sheet.y + (ruled ? 9 : 2)
   sheet.structure.within('Sect', () => {
-    paintHand(sheet, say, one, name, top)
+    paintHand(sheet, say, one, hand, name, top + line)
     let y = top - 2
     for (const block of blocks) {
       sheet.place(block, x, y)
@@ -66,20 +68,24 @@ export function paintSignature(sheet: Sheet, say: Speech, one: ShownSignature, r
   sheet.y = top + height + 9
 }
 
-/** What the signer's hand left: strokes, a typed name, or the plain word that there is no signature. */
-function paintHand(sheet: Sheet, say: Speech, one: ShownSignature, name: string, top: number): void {
+/** A typed name, or the plain word that there is no signature; null where strokes were drawn. */
+function handBlock(sheet: Sheet, say: Speech, one: ShownSignature): Block | null {
+  const drawn = one.state === 'signed' && one.strokes && one.strokes.length > 0
+  const words = one.state === 'signed' ? one.typed ?? one.signer.name : say.w.phrases[one.state]
+  return drawn ? null : sheet.lay(words, 195, { size: 15, weight: 300, lead: 19, role: one.state === 'signed' ? 'ink' : 'soft' })
+}
+
+/** What the signer's hand left, over a line. */
+function paintHand(sheet: Sheet, say: Speech, one: ShownSignature, hand: Block | null, name: string, line: number): void {
   const { phrases } = say.w
-  const line = top + 58
-  if (one.state === 'signed' && one.strokes && one.strokes.length > 0) {
-    const drawing = signatureDrawing(one.strokes)
-    const scale = Math.min(190 / drawing.width, 54 / drawing.height, 0.9)
-    sheet.drawing(drawing, PAPER.left + 6, line - 2 - drawing.height * scale, scale, fill(phrases.signatureAlt, { name, n: one.strokes.length }))
+  if (hand) {
+    sheet.place(hand, PAPER.left, line - 4 - hand.height)
+    if (one.state === 'signed') sheet.place(sheet.lay(phrases.typedName, 195, { size: 8.25, lead: 11, role: 'soft' }), PAPER.left, line + 3)
   }
   else {
-    const [words, note] = one.state === 'signed' ? [one.typed ?? one.signer.name, phrases.typedName] : [phrases[one.state], '']
-    const block = sheet.lay(words, 195, { size: 15, weight: 300, lead: 19, role: one.state === 'signed' ? 'ink' : 'soft' })
-    sheet.place(block, PAPER.left, line - 4 - block.height)
-    if (note) sheet.place(sheet.lay(note, 195, { size: 8.25, lead: 11, role: 'soft' }), PAPER.left, line + 3)
+    const drawing = signatureDrawing(one.strokes!)
+    const scale = Math.min(190 / drawing.width, 54 / drawing.height, 0.9)
+    sheet.drawing(drawing, PAPER.left + 6, line - 2 - drawing.height * scale, scale, fill(phrases.signatureAlt, { name, n: one.strokes!.length }))
   }
   sheet.rule(line, { x1: PAPER.left, x2: PAPER.left + 198, width: 0.75 })
 }

@@ -4,7 +4,7 @@ import type { LineElement } from '../../shared/line/line'
 import { elementsOf } from '../../shared/line/line'
 import type { RecordCheck, RecordDocument } from '../../shared/record/record'
 import { PAPER } from './paper'
-import type { Sheet, Words } from './sheet'
+import type { Sheet, TextStyle, Words } from './sheet'
 import type { Speech } from '../../shared/record/speech'
 import { fill, grouped } from '../../shared/record/wording'
 
@@ -86,8 +86,8 @@ const LOGO: Drawing = {
 /** Running head and foot of one page. */
 export function paintHeadAndFoot(sheet: Sheet, { name, head, foot, check, page }: { name: string, head: string, foot: string, check: string, page: string }): void {
   sheet.drawing(LOGO, PAPER.left, 38.5, 0.4, null)
-  sheet.placeArtifact(sheet.lay(name, 250, { size: 9, weight: 500, lead: 13 }), PAPER.left + 18.75, 38)
-  sheet.placeArtifact(oneLine(sheet, head, 270, 9), PAPER.right - 270, 38, 'right')
+  sheet.placeArtifact(oneLine(sheet, name, 205, { size: 9, weight: 500, role: 'ink' }), PAPER.left + 18.75, 38)
+  sheet.placeArtifact(oneLine(sheet, head, 270, { size: 9 }), PAPER.right - 270, 38, 'right')
   sheet.rule(56.5)
   sheet.rule(733, { width: 0.75 })
   sheet.placeArtifact(oneLine(sheet, foot, 425), PAPER.left, 737.5)
@@ -96,8 +96,8 @@ export function paintHeadAndFoot(sheet: Sheet, { name, head, foot, check, page }
 }
 
 /** A head or foot that is too long loses its end, visibly: it only repeats what page 1 says in full. */
-function oneLine(sheet: Sheet, text: string, width: number, size = 8.25) {
-  const style = { size, role: 'soft' as const, lead: size + 3.75 }
+function oneLine(sheet: Sheet, text: string, width: number, { size = 8.25, weight = 400, role = 'soft' }: TextStyle = {}) {
+  const style = { size, weight, role, lead: size + 3.75 }
   let short = text
   while (short.length > 8 && sheet.lay(short, width, style).lines.length > 1) short = `${short.slice(0, -2).trimEnd()}\u2026`
   return sheet.lay(short, width, style)

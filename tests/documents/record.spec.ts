@@ -26,7 +26,7 @@ describe('the record on paper', () => {
     for (const words of [
       '12 of 19 elements are released. The way out G2 is attended, G3 and G4 are held out of use, 4 tags stay open and G5 was not inspected.',
       'Dana Okafor, employed by Tarnbeck Fence & Gate, which built the fence', 'HC-27-0093, Velmor County', 'way out, never locked: attended since 10:42 EST, 3 Mar 2027', 'tape and sign since 11:05 EST',
-      'G5: no key on 3 March.', 'R10: ground not finished, 3 in mulch to come', 'It is no engineer’s seal, permit approval, certificate of occupancy or warranty.', 'Local code and the authority having jurisdiction come first.',
+      'G5: no key on 3 March.', 'R10: ground not finished, 3 in of mulch to come', 'It is no engineer’s seal, permit approval, certificate of occupancy or warranty.', 'Local code and the authority having jurisdiction come first.',
     ]) expect(first).toContain(words)
     // Fractions come out of a PDF as their runs: figure, fraction slash (U+2044), figure.
     expect(first).toMatch(/clash by 1 ?1\u20442 in/)
