@@ -40,7 +40,7 @@ export function meshDiagonal(element: LineElement, scale: number, texture: numbe
   return diagonal >= 5 ? diagonal : texture
 }
 
-interface ElementStyle { scale: number, texture: number, fabric: Role | null, ground: Role }
+interface ElementStyle { scale: number, texture: number, fabric: Role | null }
 
 function slopeOf(piece: DrawnPiece) {
   const slope = piece.width ? (piece.right - piece.left) / piece.width : 0
@@ -159,7 +159,7 @@ function drawTear(x: number, y: number, height: number, role: Role, ground: Role
  */
 export function drawElement(piece: DrawnPiece, mark: LineMark | undefined, { scale, texture, ground, fabric = fabricOf(mark) }: { scale: number, texture: number, ground: Role, fabric?: Role | null }): Shape[] {
   const { element, x, width, left, right, height } = piece
-  const style: ElementStyle = { scale, texture, fabric, ground }
+  const style: ElementStyle = { scale, texture, fabric }
   const list: Shape[] = []
   const post = (at: number, foot: number, wide: number) => seg('post', at, foot - height - 3, at, foot + 1, { width: wide })
   switch (element.kind) {
