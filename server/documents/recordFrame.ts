@@ -1,5 +1,5 @@
-import type { Drawing } from '../../shared/drawing/displayList'
-import { diamond, path, type DiamondState } from '../../shared/drawing/displayList'
+import type { Drawing, DiamondState } from '../../shared/drawing/displayList'
+import { diamond, path } from '../../shared/drawing/displayList'
 import type { LineElement } from '../../shared/line/line'
 import { elementsOf } from '../../shared/line/line'
 import type { RecordCheck, RecordDocument } from '../../shared/record/record'

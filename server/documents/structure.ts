@@ -1,5 +1,5 @@
-import type { PDFDocument, PDFPage, PDFRef } from 'pdf-lib'
-import { PDFArray, PDFDict, PDFHexString, PDFName, PDFNumber, PDFString } from 'pdf-lib'
+import type { PDFDocument, PDFPage, PDFRef , PDFDict} from 'pdf-lib'
+import { PDFArray, PDFHexString, PDFName, PDFNumber, PDFString } from 'pdf-lib'
 
 /** Standard structure types (ISO 32000-2, 14.8.4) that the records use. */
 export type StructureType = 'Document' | 'Sect' | 'H1' | 'H2' | 'H3' | 'P' | 'L' | 'LI' | 'LBody' | 'Table' | 'TR' | 'TH' | 'TD' | 'Figure' | 'Caption'
