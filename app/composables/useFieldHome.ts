@@ -96,7 +96,7 @@ export function useFieldHome(): FieldHome {
 
   return {
     state, why, here,
-    toTake: computed(() => listed.value?.filter(job => job.strip !== null && !here.value.some(one => one.jobId === job.id))
+    toTake: computed(() => listed.value?.filter(job => job.strip !== null && job.state !== 'sealed' && job.state !== 'closed' && !here.value.some(one => one.jobId === job.id))
       .map(job => ({ jobId: job.id, code: job.code, title: job.title, siteName: job.siteName, neededBy: job.neededBy, line: stripLine(job), marks: job.strip!.marks, tally: null, sealed: job.state === 'sealed' })) ?? null),
     waiting: computed(() => here.value.reduce((sum, job) => sum + (job.tally?.waiting ?? 0) + (job.tally?.heldBack ?? 0), 0)),
     async take(jobId) {
