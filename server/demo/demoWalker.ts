@@ -83,7 +83,7 @@ export class DemoWalker {
       const check = checks.get(task.check)!
       const element = elements.get(task.element)!
       const place: Place = { face: task.face, bay: null, from: null, height: null }
-      const found = findings.find(one => one.element === task.element && one.check === task.check)
+      const found = findings.find(one => one.element === task.element && one.check === task.check && (one.place?.face ?? task.face) === task.face)
       if (found) {
         ids.set(found.tag, this.write('reading', { value: found.value, tag: found.tag, photos: found.photos, ...(found.note ? { note: found.note } : {}), ...(found.class ? { class: found.class } : {}) }, { element: task.element, check: task.check, place: found.place ?? place }))
         continue

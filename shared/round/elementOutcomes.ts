@@ -38,13 +38,22 @@ function elementOutcome(element: string, checks: readonly CheckOutcome[], open: 
   const looked = checks.length === 0 || checks.some(check => check.verdict !== 'notInspected' || check.setAside?.why === 'outOfScope')
   return {
     element,
-    verdict: checks.reduce<Verdict>((sum, check) => worse(sum, check.verdict), unplanned ? 'notRead' : 'notApplicable'),
+    verdict: elementVerdict(checks, unplanned),
     settled: open.length === 0 && checks.some(check => check.settled),
     released: !unplanned && looked && open.every(one => one.class === 'ownerMayAccept') && checks.every(isAnswered),
     outOfUse,
     tasks: checks.length,
     answered: checks.filter(check => check.verdict !== 'notRead' && !check.readAgain).length,
   }
+}
+
+/**
+ * The worst of its checks. What is recorded with no limit set speaks neither for nor against an element that has anything else to say:
+ * a number that nobody enforces would otherwise hide that all which is enforced conforms.
+ */
+function elementVerdict(checks: readonly CheckOutcome[], unplanned: boolean): Verdict {
+  const judged = checks.filter(check => check.verdict !== 'noLimit').reduce<Verdict>((sum, check) => worse(sum, check.verdict), unplanned ? 'notRead' : 'notApplicable')
+  return judged === 'notApplicable' && checks.some(check => check.verdict === 'noLimit') ? 'noLimit' : judged
 }
 
 /** Read, or set aside for a reason that is not merely "not yet"; nothing to be measured or looked at again. */
