@@ -115,7 +115,7 @@ const is = <K extends AnyEntry['envelope']['kind']>(kind: K) => (entry: AnyEntry
 const payloadOf = <K extends AnyEntry['envelope']['kind']>(entry: AnyEntry, kind: K): PayloadOf<K> | null => is(kind)(entry) ? entry.payload as PayloadOf<K> | null : null
 const digestsOf = (photos: PhotoRef[]) => photos.map(photo => photo.digest)
 const byCodeUnit = (a: string, b: string) => a < b ? -1 : a > b ? 1 : 0
-const about = (entry: AnyEntry, { nameOf }: Source) => ({ entry: entry.envelope.id, at: entry.envelope.madeAt, by: nameOf(entry.envelope.author) })
+const about = (entry: AnyEntry, { nameOf }: Pick<Source, 'nameOf'>) => ({ entry: entry.envelope.id, at: entry.envelope.madeAt, by: nameOf(entry.envelope.author) })
 
 function numberOf(entry: AnyEntry): number {
   return entry.number ?? raise('notAccepted', `Entry ${entry.envelope.id} has not been accepted by the server; wait until every signed entry has arrived.`)
@@ -175,7 +175,8 @@ function deficiencyRecord(one: DeficiencyOutcome, source: Source): RecordDeficie
   }
 }
 
-function stepRecord(entry: AnyEntry, source: Source): RecordStep {
+/** One step in the history of a deficiency, as records and screens tell it. */
+export function stepRecord(entry: AnyEntry, source: Pick<Source, 'nameOf'>): RecordStep {
   const step: RecordStep = {
     ...about(entry, source), kind: entry.envelope.kind, erased: entry.payload === null,
     words: null, reason: null, person: null, actsFor: null, done: null, toldAt: null, due: null, waitsFor: null, on: null, document: null, decision: null,
