@@ -16,6 +16,8 @@ interface Spec<P extends Schema, Q extends Schema, B extends Schema> {
   body?: B
   /** Largest body in bytes; 1 MB unless told. */
   maxBytes?: number
+  /** The service looks at each text of the body itself (entries), so that a bad one holds up no good one. */
+  anyText?: boolean
 }
 interface Call<P extends Schema, Q extends Schema, B extends Schema, S> {
   event: H3Event
@@ -43,7 +45,7 @@ export function defineRoute<P extends Schema = z.ZodUndefined, Q extends Schema 
     }
     const params = spec.params ? checked(spec.params, getRouterParams(event, { decode: true }), '/path', 'notFound') : undefined
     const query = spec.query ? checked(spec.query, getQuery(event), '/query') : undefined
-    const body = spec.body ? await readChecked(event, spec.body, spec.maxBytes) : undefined
+    const body = spec.body ? await readChecked(event, spec.body, spec.maxBytes, spec.anyText) : undefined
     return await answer({ event, session: session as never, params, query, body })
   })
 }

@@ -22,13 +22,15 @@ export const JOB_MOVES = ['drawLine', 'setNumbers', 'walk', 'correct', 'orderPar
 export type JobMove = (typeof JOB_MOVES)[number]
 
 const line = (max: number) => z.string().trim().max(max)
+/** A day of the calendar in this century, as 2026-12-24; 2026-02-30 is none. */
+const day = z.string().regex(/^20\d\d-\d\d-\d\d$/).refine(text => new Date(`${text}T00:00:00Z`).toJSON()?.startsWith(text), 'This day is not in the calendar.')
 
 /** Body of POST and PATCH of a job. The id is made by the caller, so that a repeat is the same job. */
 export const jobInputSchema = z.object({
   id: z.string().uuid(),
   siteId: z.string().uuid(),
   title: line(120).min(1),
-  neededBy: z.string().regex(/^\d{4}-\d\d-\d\d$/).nullable(),
+  neededBy: day.nullable(),
   onsiteName: line(120), onsitePhone: line(40),
   emergencyName: line(120), emergencyPhone: line(40),
   contract: line(80), permit: line(80), buildingCode: line(120), gateTag: line(80),

@@ -20,7 +20,7 @@ export const pushSchema = z.object({
   /** True when nothing of this round waits on the device any more once these are accepted. */
   empty: z.boolean(),
 }).strict()
-export const pullSchema = z.object({ after: z.coerce.number().int().min(0).default(0) }).strict()
+export const pullSchema = z.object({ after: z.coerce.number().int().min(0).max(2_147_483_647).default(0) }).strict()
 
 /** What became of one entry. Only `accepted` and `resent` let the device stop offering it; `refused` and `quarantined` are shown to the inspector, never dropped. */
 export interface PushResult {

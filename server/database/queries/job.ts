@@ -29,7 +29,7 @@ export async function insertJob(tx: Tx, input: JobInput, site: SiteOfJob, create
 export async function updateJob(tx: Tx, jobId: string, input: Omit<JobInput, 'id' | 'siteId'>): Promise<boolean> {
   const { rowCount } = await tx.client.query(
     `update job j set title = $2, needed_by = $3, onsite_name = $4, onsite_phone = $5, emergency_name = $6, emergency_phone = $7, contract = $8, permit = $9, building_code = $10, gate_tag = $11, system = $12, language = $13, checklists = $14,
-            search_text = (select lower(concat_ws(' ', lpad(j.number::text, 4, '0'), $2, s.name, c.name, $9, $8, $4)) from site s, client c
+            search_text = (select lower(concat_ws(' ', lpad(j.number::text, 4, '0'), $2::text, s.name, c.name, $9::text, $8::text, $4::text)) from site s, client c
                             where s.organisation_id = j.organisation_id and s.id = j.site_id and c.organisation_id = j.organisation_id and c.id = j.client_id)
       where j.organisation_id = app_organisation() and j.id = $1`,
     [jobId, input.title, input.neededBy, input.onsiteName, input.onsitePhone, input.emergencyName, input.emergencyPhone, input.contract, input.permit, input.buildingCode, input.gateTag, input.system, input.language, JSON.stringify(input.checklists)])

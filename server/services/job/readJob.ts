@@ -30,7 +30,8 @@ export async function readJob(who: Session, jobId: string): Promise<JobPageOf> {
       outcome,
       people: await peopleOf(tx),
       devices: round ? await devicesOf(tx, round.id) : [],
-      records: await recordsOfJob(tx, jobId),
+      // Crew are sent no records.
+      records: who.standing === 'crew' ? [] : await recordsOfJob(tx, jobId),
     }
   })
 }

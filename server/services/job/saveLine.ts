@@ -8,7 +8,7 @@ import * as lines from '../../database/queries/line'
 import { readJobRow } from '../../database/queries/job'
 import { newestRound } from '../../database/queries/round'
 import type { Session, Tx } from '../../database/withSession'
-import { withSession } from '../../database/withSession'
+import { forOrganisation, withSession } from '../../database/withSession'
 import { readBuiltIn } from '../checklist/readBuiltIn'
 import { writeDeskEntry } from '../entry/writeDeskEntry'
 import { Failure, notFound } from '../failure'
@@ -76,5 +76,6 @@ async function announce(who: Who, jobId: string, { basis, round }: Pinned, why: 
     return entries.standingOfKind(tx, round.id, 'basisChanged')
   })
   // The newest word on the basis: two that do not know of one another would be a conflict that nobody can sign over.
-  await writeDeskEntry(who, who.accountId, { kind: 'basisChanged', job: jobId, round: round.id, basis, replaces, payload: { basis, why } })
+  // Whoever may draw the line may say so; the program writes it down, since of the field's people only the office may change a basis.
+  await writeDeskEntry({ ...forOrganisation(who.organisationId), organisationId: who.organisationId }, who.accountId, { kind: 'basisChanged', job: jobId, round: round.id, basis, replaces, payload: { basis, why } })
 }

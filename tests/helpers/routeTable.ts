@@ -1,0 +1,178 @@
+import { createHash, randomBytes, randomUUID } from 'node:crypto'
+import sharp from 'sharp'
+import { uuidv7 } from 'uuidv7'
+import { makeEntry } from '#shared/entry/makeEntry'
+import type { Permission } from '#shared/permission/permission'
+import { DEMO_PASSWORD } from '../../server/demo/people'
+import type { DemoActor, DemoGround } from './demoGround'
+
+/** What one contractor of the demo has, to be asked for by its own people and by others. */
+export interface Side {
+  key: 'tarnbeck' | 'osprey'
+  id: string
+  clientId: string
+  contactId: string
+  siteId: string
+  authorityId: string
+  jobId: string
+  roundId: string
+  /** A job that was signed, ready to be sealed; tarnbeck alone. */
+  signedJobId: string
+  recordId: string
+  photo: string
+  recordPhoto: string
+  accounts: Record<DemoActor, string>
+}
+
+/** A request that a route takes. */
+export interface Call { method: string, path: string, body?: unknown, headers?: Record<string, string> }
+type Statuses = number | (Partial<Record<DemoActor, number>> & { else: number })
+
+/** One route, as the test of every role calls it. A file under server/api or server/routes without a row here fails that test. */
+export interface RouteRow {
+  /** Under server/. */
+  file: string
+  permission: Permission | 'public'
+  /** A valid call about what that side has; made anew each time, with ids of its own. */
+  call: (side: Side, demo: DemoGround, actor: DemoActor) => Call | Promise<Call>
+  /** Status for whoever may; 200 unless told. */
+  ok?: Statuses
+  /** Status for the other contractor's people, who may: 404 unless told; null where the call is about nobody in particular. */
+  foreign?: Statuses | null
+  /** The same call once more: the same status and body unless told; null where it is not tried. */
+  again?: Statuses | null
+  /** The same call answers with the same body too (true unless told). */
+  sameBody?: false
+  /** Ends or changes the caller's session: each call needs one of its own. */
+  ownSession?: true
+  maxBytes?: number
+  /** Ids in the answer, and the SQL of those that are theirs ($1 organisation, $2 account), by who asks. */
+  rows?: { ids: (json: never, text: string) => string[], staff: string, crew?: string, client?: string }
+}
+
+const get = (path: string): Call => ({ method: 'GET', path })
+export const statusFor = (statuses: Statuses | undefined, actor: DemoActor, otherwise: number) => statuses === undefined ? otherwise : typeof statuses === 'number' ? statuses : statuses[actor] ?? statuses.else
+
+/** The receipt that the contact signs in this table, before it is read back. */
+const RECEIPT = '0f2c7d84-5b1e-4c39-8d10-2a7be40c9a35'
+
+/** A JPEG in its final form that no other call has. */
+export async function finalPhoto(width = 64): Promise<{ bytes: Buffer, digest: string }> {
+  const bytes = await sharp(randomBytes(width * 48 * 3), { raw: { width, height: 48, channels: 3 } }).jpeg().toBuffer()
+  return { bytes, digest: createHash('sha256').update(bytes).digest('hex') }
+}
+
+export function noteWire(side: Pick<Side, 'id' | 'jobId' | 'roundId'>, author: string, more: { id?: string, words?: string, answers?: string[], replaces?: string[], device?: string } = {}) {
+  const { words = 'Mulch comes on Friday.', ...about } = more
+  return makeEntry({ kind: 'note', id: uuidv7(), salt: randomBytes(16).toString('hex'), madeAt: '2026-11-30T09:00:00-05:00', organisation: side.id, job: side.jobId, round: side.roundId, author, device: uuidv7(), payload: { words, photos: [] }, ...about }).wire
+}
+
+const jobBody = (side: Side) => ({
+  title: 'Back fence', neededBy: '2026-12-24', onsiteName: '', onsitePhone: '', emergencyName: '', emergencyPhone: '', contract: '', permit: '', buildingCode: '', gateTag: '',
+  system: 'imperial', language: 'en', checklists: ['school-grounds'], given: [{ accountId: side.accounts.inspector, as: 'inspector' }, { accountId: side.accounts.crew, as: 'crew' }],
+})
+const provision = (side: Side, setting: 'school' | 'pool' = 'school') => ({
+  authorityId: side.authorityId, clientId: null,
+  provision: {
+    id: randomUUID(), kind: 'authority', effect: 'add', measurand: 'fence-height', setting, name: 'Velmor County', citation: 'Sec. 4-12', confirmedBy: 'A. Clerk', confirmedOn: '2026-11-02',
+    limit: { datum: 'ground-outside', unit: 'length', low: { imperial: 585_216_000, inclusive: true }, high: null, avoid: null },
+  },
+})
+
+const GIVEN = 'exists (select 1 from job_given g where g.organisation_id = j.organisation_id and g.job_id = j.id and g.account_id = $2)'
+const SENT = `select p.record_id::text as id from recipient p join contact c on c.organisation_id = p.organisation_id and c.id = p.contact_id
+  join record r on r.organisation_id = p.organisation_id and r.id = p.record_id where c.account_id = $2 and r.sealing = 'sealed'`
+const idsOf = (json: { id: string }[]) => json.map(one => one.id)
+
+export const ROUTES: RouteRow[] = [
+  { file: 'api/account/act-for.post.ts', permission: 'account.own', call: (side, _, actor) => ({ method: 'POST', path: '/api/account/act-for', body: actor === 'client' ? { standing: 'client', organisationId: null } : { standing: actor === 'crew' ? 'crew' : 'staff', organisationId: side.id } }), foreign: { client: 200, else: 403 }, ownSession: true },
+  { file: 'api/account/links/[token].get.ts', permission: 'public', call: () => get(`/api/account/links/${'a'.repeat(43)}`), ok: 404, foreign: null },
+  { file: 'api/account/links/[token].post.ts', permission: 'public', call: () => ({ method: 'POST', path: `/api/account/links/${'a'.repeat(43)}`, body: {} }), ok: 404, foreign: null },
+  { file: 'api/account/me.get.ts', permission: 'account.own', call: () => get('/api/account/me'), foreign: null, rows: { ids: (json: { account: { id: string } }) => [json.account.id], staff: 'select $2::text as id where $1::text is not null', client: 'select $2::text as id where $1::text is not null' } },
+  { file: 'api/account/me.patch.ts', permission: 'account.own', call: () => ({ method: 'PATCH', path: '/api/account/me', body: { language: 'en' } }), foreign: null },
+  { file: 'api/account/reset.post.ts', permission: 'public', call: () => ({ method: 'POST', path: '/api/account/reset', body: { email: `${randomUUID()}@nowhere.example` } }), ok: 202, foreign: null },
+  { file: 'api/account/sign-in.post.ts', permission: 'public', call: () => ({ method: 'POST', path: '/api/account/sign-in', body: { email: `${randomUUID()}@nowhere.example`, password: 'not the one' } }), ok: 401, foreign: null },
+  { file: 'api/account/sign-out.post.ts', permission: 'account.own', call: () => ({ method: 'POST', path: '/api/account/sign-out', body: {} }), foreign: null, again: 401, ownSession: true },
+  { file: 'api/authorities/index.get.ts', permission: 'numbers.read', call: () => get('/api/authorities'), foreign: null, rows: { ids: idsOf, staff: 'select id from authority where organisation_id = $1' } },
+  { file: 'api/authorities/index.put.ts', permission: 'numbers.write', call: () => ({ method: 'PUT', path: '/api/authorities', body: { id: randomUUID(), name: `Town of ${randomUUID()}` } }), foreign: null },
+  { file: 'api/check/[key].get.ts', permission: 'public', call: () => get(`/api/check/${'0'.repeat(64)}`), foreign: null },
+  { file: 'api/check/index.post.ts', permission: 'public', call: () => ({ method: 'POST', path: '/api/check', body: Buffer.from('no PDF at all'), headers: { 'content-type': 'application/pdf' } }), foreign: null },
+  { file: 'api/checklists.get.ts', permission: 'checklist.read', call: () => get('/api/checklists'), foreign: null },
+  { file: 'api/clients/index.get.ts', permission: 'client.read', call: () => get('/api/clients'), foreign: null, rows: { ids: (json: { id: string, contacts: { id: string }[] }[]) => json.flatMap(one => [one.id, ...idsOf(one.contacts)]), staff: 'select id from client where organisation_id = $1 union all select id from contact where organisation_id = $1 and ended_at is null' } },
+  { file: 'api/clients/index.put.ts', permission: 'client.write', call: () => ({ method: 'PUT', path: '/api/clients', body: { id: randomUUID(), name: `Parks of ${randomUUID()}`, address: '' } }), foreign: null },
+  { file: 'api/clients/[clientId]/contacts.put.ts', permission: 'client.write', call: side => ({ method: 'PUT', path: `/api/clients/${side.clientId}/contacts`, body: { id: randomUUID(), name: 'Wen Solo', email: `${randomUUID()}@parks.example`, phone: '', title: '', accepts: false, mailbox: false } }) },
+  {
+    file: 'api/clients/[clientId]/contacts/[contactId].delete.ts', permission: 'client.write', again: 404,
+    async call(side, { admin }) {
+      const id = randomUUID()
+      await admin.query('insert into contact (organisation_id, id, client_id, name, email) values ($1, $2, $3, $4, $5)', [side.id, id, side.clientId, 'Ends soon', `${id}@parks.example`])
+      return { method: 'DELETE', path: `/api/clients/${side.clientId}/contacts/${id}` }
+    },
+  },
+  { file: 'api/field/v1/jobs/[jobId]/photos/[digest].put.ts', permission: 'photo.send', call: async (side) => { const { bytes, digest } = await finalPhoto(); return { method: 'PUT', path: `/api/field/v1/jobs/${side.jobId}/photos/${digest}`, body: bytes, headers: { 'content-type': 'image/jpeg' } } } },
+  { file: 'api/field/v1/jobs/[jobId]/take.post.ts', permission: 'round.take', call: side => ({ method: 'POST', path: `/api/field/v1/jobs/${side.jobId}/take`, body: { device: uuidv7(), name: 'A phone' } }) },
+  {
+    file: 'api/field/v1/rounds/[roundId]/entries.get.ts', permission: 'round.read', call: side => get(`/api/field/v1/rounds/${side.roundId}/entries`),
+    rows: { ids: (json: { entries: { envelope: string }[] }) => json.entries.map(one => (JSON.parse(one.envelope) as { id: string }).id), staff: `select e.id from entry e join job j on j.organisation_id = e.organisation_id and j.id = e.job_id join round r on r.id = e.round_id where e.organisation_id = $1 and j.title in ('Upper lawn', 'Bus loop')` },
+  },
+  { file: 'api/field/v1/rounds/[roundId]/entries.post.ts', permission: 'entry.send', maxBytes: 25_000_000, call: (side, _, actor) => ({ method: 'POST', path: `/api/field/v1/rounds/${side.roundId}/entries`, body: { device: uuidv7(), entries: [noteWire(side, side.accounts[actor])], empty: false } }), sameBody: false },
+  { file: 'api/jobs.csv.get.ts', permission: 'job.read', call: () => get('/api/jobs.csv'), foreign: null, rows: { ids: (_, text) => text.split('\r\n').slice(1).map(row => row.split(',')[0]!), staff: `select o.code || '-' || lpad(j.number::text, 4, '0') as id from job j join organisation o on o.id = j.organisation_id where o.id = $1`, crew: `select o.code || '-' || lpad(j.number::text, 4, '0') as id from job j join organisation o on o.id = j.organisation_id where o.id = $1 and ${GIVEN}` } },
+  { file: 'api/jobs/index.get.ts', permission: 'job.read', call: () => get('/api/jobs?most=200'), foreign: null, rows: { ids: (json: { rows: { id: string }[] }) => idsOf(json.rows), staff: 'select id from job where organisation_id = $1', crew: `select j.id from job j where j.organisation_id = $1 and ${GIVEN}` } },
+  { file: 'api/jobs/index.post.ts', permission: 'job.write', call: side => ({ method: 'POST', path: '/api/jobs', body: { id: randomUUID(), siteId: side.siteId, ...jobBody(side) } }), ok: 201, foreign: 422 },
+  { file: 'api/jobs/[jobId]/index.get.ts', permission: 'job.read', call: side => get(`/api/jobs/${side.jobId}`), rows: { ids: (json: { job: { id: string } }) => [json.job.id], staff: `select id from job where organisation_id = $1 and title in ('Upper lawn', 'Bus loop')` } },
+  { file: 'api/jobs/[jobId]/index.patch.ts', permission: 'job.write', call: side => ({ method: 'PATCH', path: `/api/jobs/${side.signedJobId}`, body: jobBody(side) }) },
+  {
+    file: 'api/jobs/[jobId]/line.put.ts', permission: 'line.write', maxBytes: 4_000_000, again: 409,
+    async call(side, { admin }) {
+      const { rows: [{ version, line }] } = await admin.query('select version, line from line_version where job_id = $1 order by version desc limit 1', [side.jobId])
+      return { method: 'PUT', path: `/api/jobs/${side.jobId}/line`, body: { from: version, line: JSON.parse(line), why: 'Drawn again' } }
+    },
+  },
+  { file: 'api/jobs/[jobId]/records.post.ts', permission: 'record.seal', call: side => ({ method: 'POST', path: `/api/jobs/${side.signedJobId}/records`, body: { id: '7d3f8c52-6a41-4a3b-9a57-1f1f4e0f6c01', scope: 'final', overDevices: null } }), ok: 202 },
+  {
+    file: 'api/numbers/[id].delete.ts', permission: 'numbers.write', again: 404,
+    async call(side, { admin }) {
+      const { authorityId, provision: one } = provision(side, 'pool')
+      await admin.query(`insert into provision (organisation_id, id, authority_id, setting, measurand, provision, written_by) values ($1, $2, $3, 'pool', 'fence-height', $4, $5)`, [side.id, one.id, authorityId, JSON.stringify(one), side.accounts.manager])
+      return { method: 'DELETE', path: `/api/numbers/${one.id}` }
+    },
+  },
+  { file: 'api/numbers/index.get.ts', permission: 'numbers.read', call: side => get(`/api/numbers?authorityId=${side.authorityId}`), foreign: null, rows: { ids: idsOf, staff: `select p.id from provision p join authority a on a.organisation_id = p.organisation_id and a.id = p.authority_id where p.organisation_id = $1 and p.ended_at is null and a.name = 'Velmor County'` } },
+  { file: 'api/numbers/index.put.ts', permission: 'numbers.write', call: side => ({ method: 'PUT', path: '/api/numbers', body: provision(side) }), foreign: 422 },
+  { file: 'api/numbers/page.get.ts', permission: 'numbers.read', call: side => get(`/api/numbers/page?setting=school&authorityId=${side.authorityId}`), foreign: null, rows: { ids: (json: { provisions: { id: string }[] }) => idsOf(json.provisions), staff: `select p.id from provision p join authority a on a.organisation_id = p.organisation_id and a.id = p.authority_id where p.organisation_id = $1 and p.ended_at is null and a.name = 'Velmor County' and p.setting = 'school'` } },
+  { file: 'api/people/index.get.ts', permission: 'people.read', call: () => get('/api/people'), foreign: null, rows: { ids: (json: { accountId: string }[]) => json.map(one => one.accountId), staff: 'select account_id as id from membership where organisation_id = $1' } },
+  { file: 'api/people/index.post.ts', permission: 'people.write', call: () => ({ method: 'POST', path: '/api/people', body: { email: `${randomUUID()}@trade.example`, name: 'Ode Marsh', role: 'crew', language: 'es' } }), ok: 202, foreign: null },
+  {
+    file: 'api/people/[accountId].patch.ts', permission: 'people.write',
+    async call(side, { admin }) {
+      const id = randomUUID()
+      await admin.query('insert into account (id, email, name) values ($1, $2, $3)', [id, `${id}@trade.example`, 'Ode Marsh'])
+      await admin.query(`insert into membership (organisation_id, account_id, role) values ($1, $2, 'crew')`, [side.id, id])
+      return { method: 'PATCH', path: `/api/people/${id}`, body: { role: 'inspector' } }
+    },
+  },
+  { file: 'api/photos/[digest].get.ts', permission: 'photo.read', call: side => get(`/api/photos/${side.photo}`), ok: { client: 404, else: 200 } },
+  { file: 'api/portal/sites/index.get.ts', permission: 'portal.read', call: () => get('/api/portal/sites'), foreign: null, rows: { ids: idsOf, staff: '', client: `select distinct j.site_id::text as id from (${SENT}) s join record r on r.id = s.id::uuid join job j on j.id = r.job_id where $1::text is not null` } },
+  { file: 'api/portal/sites/[siteId].get.ts', permission: 'portal.read', call: side => get(`/api/portal/sites/${side.siteId}`) },
+  { file: 'api/records/index.get.ts', permission: 'record.read', call: () => get('/api/records'), foreign: null, rows: { ids: idsOf, staff: 'select id from record where organisation_id = $1', client: `${SENT} and $1::text is not null` } },
+  { file: 'api/records/[recordId]/index.get.ts', permission: 'record.read', call: side => get(`/api/records/${side.recordId}`), sameBody: false },
+  { file: 'api/records/[recordId]/index.patch.ts', permission: 'record.standing', call: side => ({ method: 'PATCH', path: `/api/records/${side.recordId}`, body: { standing: 'underQuestion', reason: 'A post was found loose.' } }) },
+  { file: 'api/records/[recordId]/seal.post.ts', permission: 'record.seal', call: side => ({ method: 'POST', path: `/api/records/${side.recordId}/seal`, body: {} }) },
+  { file: 'api/records/[recordId]/transmittals.post.ts', permission: 'transmittal.send', call: side => ({ method: 'POST', path: `/api/records/${side.recordId}/transmittals`, body: { id: randomUUID(), contacts: [side.contactId], message: '' } }), ok: 202 },
+  {
+    file: 'api/records/[recordId]/acceptances.post.ts', permission: 'acceptance.write', maxBytes: 2_500_000, ok: 201,
+    async call(side, { admin }) {
+      const { rows: [{ document_digest: document }] } = await admin.query('select document_digest from record where id = $1', [side.recordId])
+      return { method: 'POST', path: `/api/records/${side.recordId}/acceptances`, body: { id: RECEIPT, meaning: 'receivedCopy', document, language: 'en', deviation: null, named: false, typed: 'Abel Quist', strokes: null, words: null } }
+    },
+  },
+  { file: 'api/sites/index.get.ts', permission: 'site.read', call: () => get('/api/sites'), foreign: null, rows: { ids: idsOf, staff: 'select id from site where organisation_id = $1', crew: `select distinct j.site_id as id from job j where j.organisation_id = $1 and ${GIVEN}` } },
+  { file: 'api/sites/index.put.ts', permission: 'site.write', call: side => ({ method: 'PUT', path: '/api/sites', body: { id: randomUUID(), clientId: side.clientId, name: `Yard ${randomUUID()}`, address: '', timeZone: 'America/New_York', authorityId: null } }), foreign: 422 },
+  { file: 'routes/acceptances/[acceptanceFile].get.ts', permission: 'record.read', call: () => get(`/acceptances/${RECEIPT}.pdf`) },
+  { file: 'routes/health/live.get.ts', permission: 'public', call: () => get('/health/live'), foreign: null },
+  { file: 'routes/health/ready.get.ts', permission: 'public', call: () => get('/health/ready'), foreign: null, sameBody: false },
+  { file: 'routes/records/[recordFile].get.ts', permission: 'record.read', call: side => get(`/records/${side.recordId}.pdf`) },
+  { file: 'routes/records/[recordId]/photos/[photoFile].get.ts', permission: 'record.read', call: side => get(`/records/${side.recordId}/photos/${side.recordPhoto}.jpg`) },
+  // Last, since it ends every session of the person.
+  { file: 'api/account/password.post.ts', permission: 'account.own', call: () => ({ method: 'POST', path: '/api/account/password', body: { now: DEMO_PASSWORD, next: DEMO_PASSWORD } }), ok: { client: 422, else: 200 }, foreign: null, ownSession: true },
+]
