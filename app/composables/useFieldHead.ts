@@ -1,5 +1,10 @@
 /** What stands at the head of a field page. */
-export interface FieldHead { title?: string, sub?: string }
+export interface FieldHead {
+  title?: string
+  sub?: string
+  /** Where the arrow leads; the list of jobs where absent. */
+  back?: string
+}
 
 /**
  * The words at the head of a job's field pages, which the parent page shows beside the tally. A page calls it with its own words ("outer face · pass 2 of 4");
