@@ -99,17 +99,27 @@ export class DemoWalker {
   }
 }
 
+/** What a tape or caliper would say on a fence like the demo's, in inches; null where the fence has nothing of the kind. */
+const USUAL: Record<string, number | null> = {
+  'tie-spacing-post': 14, 'tie-spacing-rail': 22, 'tie-spacing-wire': 17.5, 'band-spacing': 11.5, 'band-end-distance': 3, 'line-post-spacing': 119.5, 'fabric-give': 1.25, 'gap-below': 1.5, 'gap-below-pushed': 1.75,
+  'opening': 2.125, 'mesh-size': 2, 'climbable-distance': 61, 'swing-clearance': 1.25, 'pipe-outside-diameter': 1.9, 'pipe-wall': 0.12, 'fabric-wire-diameter': 0.148, 'tie-wire-diameter': 0.148,
+  'barbed-wire-height': null, 'barbed-tape-height': null, 'automatic-bottom-edge': null, 'bottom-edge-protrusion': null, 'gates-in-series': null, 'vehicle-clear-width': null, 'opening-beside-slat': null, 'slide-gate-opening': null,
+  'latch-below-top': null, 'opening-near-latch': null, 'clear-width': 44.25, 'manoeuvring-depth': 64, 'manoeuvring-latch-side': 24, 'threshold-height': 0.25, 'smooth-bottom-height': 10.5, 'use-zone': 78, 'finger-opening': 1.125,
+}
+
 const tape = (amount: number): ReadingValue => ({ method: 'measure', amount, text: formatLength(amount, { system: 'imperial' }).text, system: 'imperial' })
 
 /** A value that conforms with the limits of a task; null where the demo's fence has nothing of the kind. */
 function goodValue(check: Check, task: WalkTask, basis: RoundBasis, element: LineElement): ReadingValue | null {
+  if (check.measurand && USUAL[check.measurand] === null) return null
   if (check.method === 'look') return { method: 'look', found: 'clear' }
   if (check.method === 'trial') return { method: 'trial', tries: (check.tries ?? [{ from: 'once', times: 1 }]).map(({ from, times }) => ({ from, good: times, of: times })) }
   if (check.method === 'template') return { method: 'template', gauge: 'gauge of the set', went: check.conformsWhen === 'passes' ? 'passed' : 'stopped' }
   const fits = (amount: number) => task.limits.every(key => judge({ amount, system: 'imperial' }, basis.limits[key]!).verdict === 'conforms')
   if (check.method === 'count') return [2, 1, 0, 3, 4].filter(fits).map((amount): ReadingValue => ({ method: 'count', amount }))[0] ?? null
   if (check.unit === 'length') {
-    const heights = check.measurand === 'fence-height' ? [element.height] : []
+    const usual = check.measurand === 'fence-height' ? element.height : check.measurand === 'mesh-size' && element.mesh ? element.mesh : Math.round((USUAL[check.measurand ?? ''] ?? 1) * INCH)
+    const heights = [usual]
     const candidates = [...heights, 1, 1.5, 2, 0.25, 0, 3.25, 12, 14, 34, 40, 46, 54, 55, 60, 72, 120, 240].map((inches, at) => at < heights.length ? inches : Math.round(inches * INCH))
     const amount = candidates.find(fits)
     return amount === undefined ? null : tape(amount)

@@ -17,6 +17,7 @@ import { saveLine } from '../services/job/saveLine'
 import { storePhoto } from '../services/photo/storePhoto'
 import { requestSealing } from '../services/record/requestSealing'
 import { sealRecord } from '../services/record/sealRecord'
+import { putProvision } from '../services/provision/keepProvisions'
 import { readBasis, roundFold } from '../services/round/foldRound'
 import { listAuthorities, listSites, putAuthority, putClient, putContact, putSite } from '../services/site/keepSites'
 import { sendRecord } from '../services/transmittal/sendRecord'
@@ -78,11 +79,27 @@ async function takeContacts(): Promise<void> {
   await entrance.takeContactsByEmail(CONTACTS.ruth.email, ruth)
 }
 
-async function authority(session: Session, name: string): Promise<string> {
+/** Local numbers of an authority that does not exist. */
+async function setNumbers(session: Session & { accountId: string }, authorityId: string, name: string): Promise<void> {
+  const numbers = [
+    { measurand: 'tie-spacing-post', datum: 'centre-to-centre', high: 15 * INCH, setting: 'school' as const, citation: 'number 9' },
+    { measurand: 'band-spacing', datum: 'centre-to-centre', high: 12 * INCH, setting: 'school' as const, citation: 'number 10' },
+    { measurand: 'gap-below', datum: 'ground', high: 4 * INCH, setting: 'school' as const, citation: 'number 12' },
+  ]
+  for (const { measurand, datum, high, setting, citation } of numbers) {
+    await putProvision(session, { authorityId, clientId: null, provision: {
+      id: randomUUID(), kind: 'authority', measurand, setting, effect: 'replace', limit: { datum, unit: 'length', low: null, high: { imperial: high, inclusive: true }, avoid: null },
+      name, citation, edition: '2024', readAt: 'letter of the building division', confirmedBy: 'R. Tamm', confirmedOn: daysFromNow(-200).toISOString().slice(0, 10), reviewOn: daysFromNow(165).toISOString().slice(0, 10),
+    } })
+  }
+}
+
+async function authority(session: Session & { accountId: string }, name: string): Promise<string> {
   const known = (await listAuthorities(session)).find(one => one.name === name)
   if (known) return known.id
   const id = randomUUID()
   await putAuthority(session, { id, name })
+  await setNumbers(session, id, name)
   return id
 }
 
