@@ -40,10 +40,13 @@ export function useWalkPass(job: FieldJob, jobId: string) {
   /** Along the element, to the middle of the bay in hand. */
   const along = computed(() => !element.value ? 0 : element.value.kind === 'run' ? Math.round((bayEnd(element.value, pass.value!.at.bay - 1) + bayEnd(element.value, pass.value!.at.bay)) / 2) : Math.round(element.value.length / 2))
 
+  /** Faces of the passes that came to their end; one that is broken off for another is not among them. */
+  const finished = computed(() => pass.value ? passes.value.slice(0, -1) : passes.value)
+
   async function begin(face: Face, backwards: boolean, at?: string) {
     await job.startWalk()
     const first = elementsOf(line.value!).find(one => one.id === at) ?? passOrder(line.value!, backwards)[0]!
-    kept.value = { round: job.bundle.value!.round.id, face, backwards, at: entryOf(first, backwards), end: false, passes: [...passes.value, face], done: false, recent: [] }
+    kept.value = { round: job.bundle.value!.round.id, face, backwards, at: entryOf(first, backwards), end: false, passes: [...finished.value, face], done: false, recent: [] }
   }
   const change = (to: Partial<Kept>) => { kept.value = { ...kept.value!, ...to } }
   const here = () => ({ ...pass.value!.at, end: pass.value!.end })
@@ -82,7 +85,6 @@ export function useWalkPass(job: FieldJob, jobId: string) {
   }
   /** The bay in hand, where this element is the one in hand. */
   const bayOf = (id: string) => element.value?.id === id && element.value.kind === 'run' ? pass.value!.at.bay : null
-  const stop = () => kept.value && change({ done: true })
-  return { pass, element, along, number: computed(() => passes.value.length), count, asked, walked: passes, begin, forward, back, leave, goTo, takeBack, remember, bayOf, stop, recent: computed(() => kept.value?.recent ?? []) }
+  return { pass, element, along, number: computed(() => passes.value.length), count, asked, walked: finished, begin, forward, back, leave, goTo, takeBack, remember, bayOf, recent: computed(() => kept.value?.recent ?? []) }
 }
 export type WalkPassState = ReturnType<typeof useWalkPass>
