@@ -9,7 +9,7 @@ export interface Place {
 
 const PLACES = {
   staff: { jobs: '/jobs', sites: '/sites', tags: '/tags', records: '/records', numbers: '/numbers', people: '/people' },
-  client: { site: '/site', records: '/site/records', tags: '/site/tags', people: '/site/people' },
+  client: { site: '/site', records: '/records' },
 } as const
 
 /** Places of a job on the device. The walk itself is the job's first page. */

@@ -11,8 +11,8 @@ export interface StandingRow { standing: Standing, organisation_id: string | nul
 export interface LinkRow { purpose: 'invitation' | 'reset' | 'contact', email: string, name: string, organisation_name: string, role: Role | null, has_password: boolean, state: 'open' | 'redeemed' | 'expired' }
 export interface RedeemedRow { purpose: LinkRow['purpose'], account_id: string | null, organisation_id: string | null, contact_id: string | null, record_id: string | null, role: Role | null, email: string }
 export interface PublicRecordRow {
-  id: string, organisation_id: string, organisation_name: string, code: string, scope: 'interim' | 'final', standing: 'current' | 'superseded' | 'underQuestion' | 'withdrawn', sealed_at: Date
-  document_digest: string, range_digest: string, file_digest: string, leaf: string, root_certificate: string, replaced: { tag: string, by: string, at: string }[] | null
+  id: string, organisation_id: string, organisation_name: string, code: string, number: number, scope: 'interim' | 'final', standing: 'current' | 'superseded' | 'underQuestion' | 'withdrawn', standing_at: Date | null, sealed_at: Date
+  document_digest: string, range_digest: string, file_digest: string, leaf: string, root_certificate: string, elements: number, replaced: { tag: string, by: string, at: string }[] | null
 }
 
 export const entrance = {
@@ -35,6 +35,8 @@ export const entrance = {
     rows('select entrance.organisation_make($1, $2, $3, $4, $5, $6)', [organisation.id, organisation.name, organisation.code, organisation.timeZone, organisation.system, organisation.language]),
   recordOf: (key: string) => rows<PublicRecordRow>('select * from entrance.record_of($1)', [key]),
   acceptanceOf: async (digest: string) => (await rows<{ organisation_id: string, organisation_name: string, record_code: string, meaning: string, created_at: Date, leaf: string }>('select * from entrance.acceptance_of($1)', [digest]))[0],
+  signingRoots: async () => (await rows<{ root: string }>('select entrance.signing_roots() as root', [])).map(row => row.root),
+  logLeafText: async (position: number) => (await rows<{ text: string | null }>('select entrance.log_leaf_text($1) as text', [position]))[0]!.text,
   logHashes: async (from: number, to: number) => (await rows<{ hash: string }>('select hash from entrance.log_hashes($1, $2) order by position', [from, to])).map(row => row.hash),
   logSize: async () => Number((await rows<{ log_size: string }>('select entrance.log_size()', []))[0]!.log_size),
   writeLogHead: (size: number, root: string, text: string, signature: string) => rows('select entrance.log_head_write($1, $2, $3, $4)', [size, root, text, signature]),

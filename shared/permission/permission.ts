@@ -38,6 +38,7 @@ export const PERMISSIONS = {
   'record.standing': office,
   'transmittal.send': office,
   'acceptance.write': ['client'],
+  'portal.read': ['client'],
   'people.read': staff,
   'people.write': ['administrator'],
 } as const satisfies Record<string, readonly Actor[]>

@@ -13,7 +13,7 @@ import { fill } from './wording'
  * The live drawing of a reading as it stood at the seal; null where its check has none or the record does not hold what it would show.
  * It shows nothing that was not entered: where a picture needs more than the reading, a simpler one is drawn or none.
  */
-export function liveDrawing(check: RecordCheck, reading: RecordReading, limits: Limit[], element: LineElement, say: Speech, size: 'paper' | 'desk' = 'paper'): (Drawing & { summary: string }) | null {
+export function liveDrawing(check: RecordCheck, reading: RecordReading, limits: Limit[], element: LineElement, say: Speech, size: 'paper' | 'field' = 'paper'): (Drawing & { summary: string }) | null {
   try {
     const drawing = draw(check, reading, limits, element, say, size)
     return drawing ? { list: drawing.list, width: drawing.width, height: drawing.height, summary: drawing.alt.params.summary ?? '' } : null
@@ -25,7 +25,7 @@ export function liveDrawing(check: RecordCheck, reading: RecordReading, limits: 
   }
 }
 
-function draw(check: RecordCheck, { value }: RecordReading, limits: Limit[], element: LineElement, say: Speech, size: 'paper' | 'desk') {
+function draw(check: RecordCheck, { value }: RecordReading, limits: Limit[], element: LineElement, say: Speech, size: 'paper' | 'field') {
   const words: Say = (word, parameters = {}) => fill(say.w.drawing[word], parameters)
   const common = { say: words, size }
   if (check.drawing === 'tieEnd' && value.method === 'look') return drawLive('tieEnd', { ...common, ends: value.found === 'clear' ? 'in' : 'out' })

@@ -54,6 +54,8 @@ export const record = pgTable('record', {
   foreignKey({ columns: [table.organisationId, table.roundId], foreignColumns: [round.organisationId, round.id] }),
   index('record_document').on(table.documentDigest),
   index('record_public_code').on(table.code),
+  index('record_range').on(table.rangeDigest),
+  index('record_file').on(table.fileDigest),
 ])
 
 /** Which elements a record speaks of, and which later record holds instead. */
@@ -156,4 +158,5 @@ export const acceptance = pgTable('acceptance', {
   primaryKey({ columns: [table.organisationId, table.id] }),
   foreignKey({ columns: [table.organisationId, table.recordId], foreignColumns: [record.organisationId, record.id] }),
   foreignKey({ columns: [table.organisationId, table.contactId], foreignColumns: [contact.organisationId, contact.id] }),
+  index('acceptance_file').on(table.fileDigest),
 ])

@@ -11,7 +11,8 @@ import { documentKey, pdfKey } from './sealRecord'
 
 export const listRecords = (who: Session, query: { find: string, most: number }): Promise<RecordRow[]> => withSession(who, tx => records.listRecords(tx, query.find, query.most))
 
-async function documentOf(organisationId: string, digest: string | null): Promise<RecordDocument | null> {
+/** The canonical document of a record by its digest; null before it is built, or where the store has lost it. */
+export async function documentOf(organisationId: string, digest: string | null): Promise<RecordDocument | null> {
   const bytes = digest ? await useStorage().get(documentKey(organisationId, digest)) : null
   return bytes ? JSON.parse(bytes.toString('utf8')) as RecordDocument : null
 }
