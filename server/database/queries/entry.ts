@@ -14,8 +14,11 @@ export async function setAccepted(tx: Tx, roundId: string, accepted: number): Pr
   await tx.client.query('update round set accepted = $2 where organisation_id = app_organisation() and id = $1', [roundId, accepted])
 }
 
+/** Which of these ids are here, accepted (with a number) or held (without). */
 export async function digestsOf(tx: Tx, ids: string[]): Promise<Map<string, { digest: string, number: number | null }>> {
-  const { rows } = await tx.client.query<{ id: string, digest: string, number: number }>('select id, digest, number from entry where organisation_id = app_organisation() and id = any($1::uuid[])', [ids])
+  const { rows } = await tx.client.query<{ id: string, digest: string, number: number | null }>(
+    `select id, digest, null::int as number from entry_aside where organisation_id = app_organisation() and id = any($1::uuid[]) and why = 'held'
+     union all select id, digest, number from entry where organisation_id = app_organisation() and id = any($1::uuid[])`, [ids])
   return new Map(rows.map(row => [row.id, row]))
 }
 

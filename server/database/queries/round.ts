@@ -61,5 +61,5 @@ export async function contactsOf(tx: Tx, clientId: string): Promise<FieldBundle[
 }
 
 export async function openRounds(tx: Tx): Promise<string[]> {
-  return (await tx.client.query<{ id: string }>(`select id from round where organisation_id = app_organisation() and state <> 'sealed' order by id`)).rows.map(row => row.id)
+  return (await tx.client.query<{ id: string }>(`select id from round where organisation_id = app_organisation() and state = 'open' order by id`)).rows.map(row => row.id)
 }

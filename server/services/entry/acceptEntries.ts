@@ -1,5 +1,5 @@
 import { createHash } from 'node:crypto'
-import type { AnyEntry, KeptEntry, WireEntry } from '../../../shared/entry/entry'
+import type { KeptEntry, WireEntry } from '../../../shared/entry/entry'
 import { isKnown } from '../../../shared/entry/entry'
 import { entryRefusal } from '../../../shared/entry/entryRefused'
 import { checkTargets, ENTRY_RULES, type Target } from '../../../shared/entry/entryRules'
@@ -17,6 +17,8 @@ const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
 
 /** One entry of a push on its way: its texts, what was read, and what becomes of it. */
 interface Offered { wire: WireEntry, entry: KeptEntry | null, result: PushResult }
+/** One that may be let in: of this push, or held from an earlier one (which then has no result to tell). */
+interface Candidate { wire: WireEntry, entry: KeptEntry, offered: Offered | null }
 
 /**
  * Accepts what a device offers for a round: set union by id and digest. Numbers are given under the round's row lock, so they are gapless and in order of
@@ -26,18 +28,31 @@ interface Offered { wire: WireEntry, entry: KeptEntry | null, result: PushResult
  */
 export async function acceptEntries(who: Session, roundId: string, wires: WireEntry[]): Promise<{ accepted: number, results: PushResult[] }> {
   const offered = wires.map(wire => read(wire, who, roundId))
+  const twins = pairTwins(offered)
   const { accepted, all } = await withSession(who, async (tx) => {
     const round = await entries.lockRound(tx, roundId)
     if (!round) throw notFound('round')
-    const fresh = await sort(tx, round.jobId, offered.filter(one => one.result.state === 'accepted'))
-    const known = await accept(tx, who, round, fresh)
-    const accepted = await tryHeld(tx, who, round, known)
+    const accepted = await accept(tx, round, await sort(tx, round.jobId, offered.filter(one => one.result.state === 'accepted' && !twins.has(one))))
     if (accepted.length === 0) return { accepted: round.accepted, all: [] }
     await entries.setAccepted(tx, roundId, round.accepted)
     return { accepted: round.accepted, all: await keepState(tx, round, accepted) }
   })
   if (all.length > 0) rememberEntries(roundId, accepted, all)
+  for (const [one, first] of twins) one.result = first.result.state === 'accepted' ? { ...first.result, state: 'resent' } : first.result
   return { accepted, results: offered.map(one => one.result) }
+}
+
+/** The same entry twice in one push has one fate: the second goes with the first. */
+function pairTwins(offered: Offered[]): Map<Offered, Offered> {
+  const firsts = new Map<string, Offered>()
+  const twins = new Map<Offered, Offered>()
+  for (const one of offered) {
+    if (!one.entry || one.result.state === 'refused') continue
+    const first = firsts.get(one.entry.digest)
+    if (first) twins.set(one, first)
+    else firsts.set(one.entry.digest, one)
+  }
+  return twins
 }
 
 /** What can be said of an entry by itself: readable, of this round, by this person, of a kind that they may write. */
@@ -58,68 +73,64 @@ function idOf(wire: WireEntry): string | null {
   return /"id":"([0-9a-f-]{36})"/.exec(wire.envelope)?.[1] ?? null
 }
 
-/** Sets aside what is here already: the same again is a resend, the same id with another text is kept apart and shown. */
-async function sort(tx: Tx, jobId: string, offered: Offered[]): Promise<Offered[]> {
+/** Sets aside what is here already: the same again is a resend, the same id with another text is kept apart and shown. Whoever came first stands, also while it is held. */
+async function sort(tx: Tx, jobId: string, offered: Offered[]): Promise<Candidate[]> {
   const here = await entries.digestsOf(tx, offered.map(one => one.entry!.envelope.id))
-  const fresh: Offered[] = []
+  const fresh: Candidate[] = []
   for (const one of offered) {
     const { envelope, digest } = one.entry!
     const before = here.get(envelope.id)
     if (envelope.job !== jobId) one.result = { ...one.result, state: 'refused', refusal: entryRefusal('notYours', '/envelope/job') }
-    else if (before && before.digest === digest) one.result = { ...one.result, state: 'resent', number: before.number }
-    else if (before) {
+    else if (before && before.digest !== digest) {
       one.result = { ...one.result, state: 'quarantined' }
       await entries.putAside(tx, one.entry!, one.wire, 'quarantined')
     }
+    else if (before && before.number !== null) one.result = { ...one.result, state: 'resent', number: before.number }
     else {
       here.set(envelope.id, { digest, number: null })
-      fresh.push(one)
+      fresh.push({ wire: one.wire, entry: one.entry!, offered: one })
     }
   }
   return fresh
 }
 
-/** Numbers and stores the entries whose targets are all here; holds those that wait. Returns what was accepted. */
-async function accept(tx: Tx, who: Session, round: entries.LockedRound, fresh: Offered[]): Promise<{ entry: KeptEntry, wire: WireEntry }[]> {
-  const named = fresh.flatMap(one => [...one.entry!.envelope.answers, ...one.entry!.envelope.replaces])
-  const targets = await entries.targetsOf(tx, named)
-  const good: Offered[] = []
-  for (const one of fresh) {
-    const entry = one.entry!
-    const state = isKnown(entry) ? checkTargets(entry, id => targets.get(id)) : { state: 'ok' as const }
-    if (state.state === 'refused') one.result = { ...one.result, state: 'refused', refusal: state.refusal }
-    else if (state.state === 'waiting') {
-      one.result = { ...one.result, state: 'held' }
-      await entries.putAside(tx, entry, one.wire, 'held')
-    }
-    else {
-      one.result = { ...one.result, number: ++round.accepted }
-      entry.number = round.accepted
+/**
+ * Numbers and stores whatever names only what is here, of this push and of what was held, as often as something new lets something in. What still waits is
+ * held. Returns what was accepted, in order.
+ */
+async function accept(tx: Tx, round: entries.LockedRound, fresh: Candidate[]): Promise<KeptEntry[]> {
+  const offeredIds = new Set(fresh.map(one => one.entry.envelope.id))
+  const held = (await entries.heldOf(tx, round.id)).flatMap((wire): Candidate[] => {
+    const outcome = readEntry(wire, { sha256 })
+    return outcome.state === 'refused' || offeredIds.has(outcome.entry.envelope.id) ? [] : [{ wire, entry: outcome.entry, offered: null }]
+  })
+  let waiting = [...fresh, ...held]
+  const targets = await entries.targetsOf(tx, waiting.flatMap(({ entry: { envelope } }) => [...envelope.answers, ...envelope.replaces]))
+  const good: Candidate[] = []
+  for (let before = -1; before !== good.length;) {
+    before = good.length
+    waiting = waiting.filter((one) => {
+      const { entry, offered } = one
+      const state = isKnown(entry) ? checkTargets(entry, id => targets.get(id)) : { state: 'ok' as const }
+      if (state.state === 'waiting') return true
+      if (state.state === 'refused') {
+        if (offered) offered.result = { ...offered.result, state: 'refused', refusal: state.refusal }
+        return false
+      }
+      entry.number = ++round.accepted
+      if (offered) offered.result = { ...offered.result, number: entry.number }
       targets.set(entry.envelope.id, entry.envelope as Target)
       good.push(one)
-    }
-  }
-  await entries.insertEntries(tx, good.map(one => ({ entry: one.entry!, wire: one.wire })))
-  return good.map(one => ({ entry: one.entry!, wire: one.wire }))
-}
-
-/** Tries again what was held, as often as something new let something in. */
-async function tryHeld(tx: Tx, who: Session, round: entries.LockedRound, known: { entry: KeptEntry, wire: WireEntry }[]): Promise<KeptEntry[]> {
-  const all = known.map(one => one.entry)
-  for (let news = known; news.length > 0;) {
-    const held = await entries.heldOf(tx, round.id)
-    if (held.length === 0) break
-    const readable = held.map(wire => ({ wire, outcome: readEntry(wire, { sha256 }) })).filter(one => one.outcome.state !== 'refused')
-    const targets = await entries.targetsOf(tx, readable.flatMap(one => one.outcome.state === 'known' ? [...one.outcome.entry.envelope.answers, ...one.outcome.entry.envelope.replaces] : []))
-    const ready = readable.filter(one => one.outcome.state === 'known' && checkTargets(one.outcome.entry as AnyEntry, id => targets.get(id)).state === 'ok')
-    news = ready.map((one) => {
-      const entry = (one.outcome as { entry: KeptEntry }).entry
-      entry.number = ++round.accepted
-      return { entry, wire: one.wire }
+      return false
     })
-    await entries.insertEntries(tx, news)
-    await entries.dropAside(tx, news.map(one => one.entry))
-    all.push(...news.map(one => one.entry))
   }
-  return all
+  for (const { entry, wire, offered } of waiting) {
+    if (!offered) continue
+    offered.result = { ...offered.result, state: 'held' }
+    await entries.putAside(tx, entry, wire, 'held')
+  }
+  await entries.insertEntries(tx, good)
+  // Held by an earlier push, sent again or not.
+  await entries.dropAside(tx, good.map(one => one.entry))
+  return good.map(one => one.entry)
 }

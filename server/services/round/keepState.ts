@@ -7,10 +7,10 @@ import { foldRound } from './foldRound'
 
 /**
  * Writes the fold's result for lists, in the accepting transaction: round, checks, deficiencies, and what the list of jobs shows. Only what changed is
- * written. A sealed round's late entries change nothing. Returns all entries of the round.
+ * written. What comes after a round was frozen or sealed is late: it is kept, and changes nothing here. Returns all entries of the round.
  */
 export async function keepState(tx: Tx, round: LockedRound, accepted: KeptEntry[]): Promise<KeptEntry[]> {
-  if (round.state === 'sealed') return []
+  if (round.state !== 'open') return []
   const { outcome, line, signatures, entries } = await foldRound(tx, round, accepted)
   const before = await states.readOutcome(tx, round.id)
   await states.writeOutcome(tx, round.id, round.accepted, outcome)

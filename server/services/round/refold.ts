@@ -6,7 +6,7 @@ import * as states from '../../database/queries/state'
 import { forOrganisation, withSession } from '../../database/withSession'
 import { keepState } from './keepState'
 
-/** Folds every round that is not sealed again and writes what lists show; tells how many differed. What is kept may always be thrown away and made anew. */
+/** Folds every open round again and writes what lists show; tells how many differed. What is kept may always be thrown away and made anew. */
 export async function refoldAll(): Promise<{ rounds: number, changed: number }> {
   let rounds = 0
   let changed = 0
