@@ -66,7 +66,11 @@ export function useFieldJob(jobId: string): FieldJob {
   const { me } = useSession()
   const account = `${me.value?.account.id} ${me.value?.organisation?.id}`
   const before = open.get(jobId)
-  if (before && (before.account === account || me.value === null)) return before.job
+  if (before && (before.account === account || me.value === null)) {
+    // Somebody may have signed in again since.
+    if (before.job.trouble.value !== null) void before.job.sendNow()
+    return before.job
+  }
   before?.scope.stop()
   const scope = effectScope(true)
   const job = scope.run(() => openFieldJob(jobId, me))!

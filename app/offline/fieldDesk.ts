@@ -30,7 +30,9 @@ export async function enterField(me: Ref<Me | null>): Promise<Entered> {
   keepProfile(asked)
   if (!open || !sameProfile(open.me, asked)) open = { me: asked, desk: openDesk(asked) }
   try {
-    return { state: 'in', desk: await open.desk }
+    const desk = await open.desk
+    void desk.sender.sendNow()
+    return { state: 'in', desk }
   }
   catch (error) {
     open = null
@@ -54,9 +56,7 @@ async function openDesk(me: Me): Promise<FieldDesk> {
   // Asked without waiting: some browsers ask the person, and a no only means that a full device may clear what is not yet sent.
   void navigator.storage?.persist?.()
   await forgetOld(db, Date.now())
-  const sender = new FieldSender(db, serverWire, { accountId: me.account.id, organisationId: me.organisation!.id, device, name: deviceName() })
-  void sender.sendNow()
-  return { me, db, sender }
+  return { me, db, sender: new FieldSender(db, serverWire, { accountId: me.account.id, organisationId: me.organisation!.id, device, name: deviceName() }) }
 }
 
 /** What tells one device from another in a list, as the device names itself: its platform and screen. */
