@@ -10,6 +10,7 @@ import type { Permission } from '#shared/permission/permission'
 import type { RoundBasis } from '#shared/round/basis'
 import type { DeficiencyOutcome, DeficiencyState, Head, RoundOutcome } from '#shared/round/outcome'
 import { isEnded } from '#shared/round/outcome'
+import { wordAnswers } from '#shared/round/wordAnswers'
 
 /** The newest word of a kind on a tag, as it was written. */
 type Said<K extends EntryKind> = { entry: Entry<K>, payload: PayloadOf<K> } | null
@@ -103,24 +104,10 @@ export function tagSections(rows: readonly TagRow[], line: RoundOutcome['line'],
   return TAG_PARTS.map(part => ({ part, groups: [...groups.values()].filter(group => group.part === part) })).filter(section => section.groups.length > 0)
 }
 
-/** Words that stay on the table until a later one names them; a reading again and again of what is settled is not needed. */
-const TO_ANSWER: readonly EntryKind[] = ['assignment', 'cannot', 'disputed', 'deviationOffered']
-
-/**
- * What the next word of a kind on a tag names in `answers`: the readings that stand and corrections that nobody has looked at, and the newest word that waits
- * for one. Kinds that name one reading need one entry for each: several lists come back.
- */
+/** What the next word of a kind on a tag names in `answers`; several lists where each reading needs a word of its own. */
 export function answersOf(kind: EntryKind, row: Pick<TagRow, 'of'>, entries: readonly KeptEntry[]): string[][] {
-  const { answers, readings } = ENTRY_RULES[kind]
-  const byId = new Map(entries.filter(isKnown).map(entry => [entry.envelope.id, entry.envelope]))
-  const standing = row.of.standing.filter(one => answers.includes(one.kind))
-  const waiting = row.of.history.filter((id) => {
-    const word = byId.get(id)?.kind
-    return word !== undefined && TO_ANSWER.includes(word) && answers.includes(word)
-  })
-  const others = [...standing.filter(one => one.kind !== 'reading').map(one => one.entry), ...waiting]
-  const read = standing.filter(one => one.kind === 'reading').map(one => one.entry)
-  return readings === 'one' ? read.map(reading => [reading, ...others]) : [[...read, ...others]]
+  const kinds = new Map(entries.map(entry => [entry.envelope.id, entry.envelope.kind]))
+  return wordAnswers(kind, row.of, id => kinds.get(id))
 }
 
 /** What can be done with a tag. */
