@@ -1,5 +1,4 @@
 import { z } from 'zod'
-import { wireEntrySchema } from '../entry/entry'
 import type { EntryRefusal } from '../entry/entryRefused'
 import type { Role } from '../permission/permission'
 import type { RoundOutcome } from '../round/outcome'
@@ -16,7 +15,8 @@ export const jobParamsSchema = z.object({ jobId: uuid }).strict()
 export const takeSchema = z.object({ device: uuid, name: z.string().trim().min(1).max(120) }).strict()
 export const pushSchema = z.object({
   device: uuid,
-  entries: z.array(wireEntrySchema).max(PUSH_MOST),
+  /** Texts of any length: each entry is refused or taken by itself (shared/entry/entry.ts, wireEntrySchema). */
+  entries: z.array(z.object({ envelope: z.string(), payload: z.string() }).strict()).max(PUSH_MOST),
   /** True when nothing of this round waits on the device any more once these are accepted. */
   empty: z.boolean(),
 }).strict()

@@ -238,6 +238,7 @@ describe('a bad entry', () => {
     ['an unknown kind whose payload is nested ten thousand deep', (wire) => { const payload = '['.repeat(10_000) + ']'.repeat(10_000); return { payload, envelope: canonicalJson({ ...JSON.parse(wire.envelope), kind: 'weighed', payload: sha256Hex(payload) }) } }, 'notCanonical'],
     ['a year that no calendar of the database has', wire => forged(wire, { madeAt: '0000-01-01T00:00:00Z' }), 'envelope'],
     ['an offset that no place has', wire => forged(wire, { madeAt: '2026-11-30T09:00:00+23:59' }), 'envelope'],
+    ['an envelope longer than any', wire => ({ ...wire, envelope: wire.envelope + ' '.repeat(20_000) }), 'envelope'],
     ['more in its envelope than there is', wire => forged(wire, { surplus: 1 }), 'envelope'],
   ]
 

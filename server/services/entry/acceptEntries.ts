@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto'
 import type { KeptEntry, WireEntry } from '../../../shared/entry/entry'
-import { isKnown } from '../../../shared/entry/entry'
+import { isKnown, wireEntrySchema } from '../../../shared/entry/entry'
+import type { EntryRefusal } from '../../../shared/entry/entryRefused'
 import { entryRefusal } from '../../../shared/entry/entryRefused'
 import { checkTargets, ENTRY_RULES, type Target } from '../../../shared/entry/entryRules'
 import { readEntry } from '../../../shared/entry/readEntry'
@@ -57,8 +58,14 @@ function pairTwins(offered: Offered[]): Map<Offered, Offered> {
 
 /** What can be said of an entry by itself: readable, of this round, by this person, of a kind that they may write. */
 function read(wire: WireEntry, who: Session, roundId: string): Offered {
+  const refused = (refusal: EntryRefusal): Offered => ({ wire, entry: null, result: { id: idOf(wire), state: 'refused', number: null, refusal } })
+  const length = wireEntrySchema.safeParse(wire)
+  if (!length.success) {
+    const part = length.error.issues[0]!.path[0] as 'envelope' | 'payload'
+    return refused(entryRefusal(part, `/${part}`, length.error.issues[0]!.message))
+  }
   const outcome = readEntry(wire, { sha256 })
-  if (outcome.state === 'refused') return { wire, entry: null, result: { id: idOf(wire), state: 'refused', number: null, refusal: outcome.refusal } }
+  if (outcome.state === 'refused') return refused(outcome.refusal)
   const { entry } = outcome
   const { envelope } = entry
   const wrong = envelope.round !== roundId ? '/envelope/round'
