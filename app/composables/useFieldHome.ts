@@ -89,7 +89,13 @@ export function useFieldHome(): FieldHome {
     await readList()
   }
   onScopeDispose(() => stop())
-  if (import.meta.client) void begin()
+  if (import.meta.client) {
+    begin().catch((error) => {
+      console.error(error)
+      why.value = 'storageShut'
+      state.value = 'refused'
+    })
+  }
 
   const online = computed(() => desk.value?.sender.online.value ?? false)
   watch(online, now => now && listed.value === null && void readList())
@@ -106,6 +112,7 @@ export function useFieldHome(): FieldHome {
     },
     async letGo(jobId) {
       const gone = await letJobGo(desk.value!.db, jobId)
+      if (gone) closeFieldJob(jobId)
       await readHere()
       return gone
     },

@@ -61,6 +61,12 @@ export interface FieldJob {
 
 const open = new Map<string, { job: FieldJob, account: string, scope: EffectScope }>()
 
+/** Lets go of a job that was taken off this device. */
+export function closeFieldJob(jobId: string): void {
+  open.get(jobId)?.scope.stop()
+  open.delete(jobId)
+}
+
 /** The job of a field page. Every page and part of it shares one; it lives as long as the program is open. */
 export function useFieldJob(jobId: string): FieldJob {
   const { me } = useSession()
@@ -76,6 +82,9 @@ export function useFieldJob(jobId: string): FieldJob {
   const job = scope.run(() => openFieldJob(jobId, me))!
   open.set(jobId, { job, account, scope })
   // Who it is may only be known now.
-  watch(me, () => { open.get(jobId)!.account = `${me.value?.account.id} ${me.value?.organisation?.id}` }, { once: true })
+  watch(me, () => {
+    const now = open.get(jobId)
+    if (now) now.account = `${me.value?.account.id} ${me.value?.organisation?.id}`
+  }, { once: true })
   return job
 }

@@ -3,7 +3,6 @@ export const FIELD_FAULTS = {
   deviceFull: 'This device is full: nothing more can be kept on it. Free some space, then enter it again; what was written before is kept.',
   storageShut: 'The browser does not let Smoothside keep anything here (private window, or storage switched off). Open it in an ordinary window.',
   notReady: 'The job is not open on this device yet. Wait until it is, then enter it again.',
-  roundShut: 'This round was sealed. Take the job along again, then enter it in the new round.',
   notPicture: 'This is no picture that can be read. Take a photo, or choose a JPEG, PNG, WebP or HEIC picture.',
   pictureUnread: 'This picture cannot be opened on this device. Take the photo with Smoothside, or choose it as JPEG.',
   pictureTooLarge: 'This file is larger than 60 MB. Choose a smaller picture.',

@@ -110,7 +110,6 @@ export function openFieldJob(jobId: string, me: Ref<Me | null>): FieldJob {
   function ready() {
     const [of, at] = [bundle.value, desk.value]
     if (!of || !at || state.value !== 'ready') throw new FieldFault('notReady')
-    if (of.round.state === 'sealed') throw new FieldFault('roundShut')
     return { of, at }
   }
 
