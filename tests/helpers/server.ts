@@ -150,3 +150,10 @@ export async function startServer(options: { ground?: ServerGround, role?: 'web'
     },
   }
 }
+
+/** Has the built server do one thing and end, as scripts/demo.mjs and scripts/refold.mjs do. */
+export async function runOnce(ground: ServerGround, what: 'demo' | 'refold'): Promise<void> {
+  const { child, log } = spawnNode([entry], { ...ground.environment, PORT: '0', SMOOTHSIDE_ROLE: 'web', SMOOTHSIDE_RUN: what })
+  const code = await new Promise(resolve => child.once('exit', resolve))
+  if (code !== 0) throw new Error(`the run "${what}" ended with ${String(code)}:\n${log()}`)
+}
