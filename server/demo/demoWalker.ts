@@ -83,7 +83,7 @@ export class DemoWalker {
       const check = checks.get(task.check)!
       const element = elements.get(task.element)!
       const place: Place = { face: task.face, bay: null, from: null, height: null }
-      const found = findings.find(one => one.element === task.element && one.check === task.check && (one.place?.face ?? task.face) === task.face)
+      const found = findings.find(one => one.element === task.element && one.check === task.check && (task.face === null || one.place?.face === task.face))
       if (found) {
         ids.set(found.tag, this.write('reading', { value: found.value, tag: found.tag, photos: found.photos, ...(found.note ? { note: found.note } : {}), ...(found.class ? { class: found.class } : {}) }, { element: task.element, check: task.check, place: found.place ?? place }))
         continue
@@ -104,7 +104,7 @@ const USUAL: Record<string, number | null> = {
   'tie-spacing-post': 14, 'tie-spacing-rail': 22, 'tie-spacing-wire': 17.5, 'band-spacing': 11.5, 'band-end-distance': 3, 'line-post-spacing': 119.5, 'fabric-give': 1.25, 'gap-below': 1.5, 'gap-below-pushed': 1.75,
   'opening': 2.125, 'mesh-size': 2, 'climbable-distance': 61, 'swing-clearance': 1.25, 'pipe-outside-diameter': 1.9, 'pipe-wall': 0.12, 'fabric-wire-diameter': 0.148, 'tie-wire-diameter': 0.148,
   'barbed-wire-height': null, 'barbed-tape-height': null, 'automatic-bottom-edge': null, 'bottom-edge-protrusion': null, 'gates-in-series': null, 'vehicle-clear-width': null, 'opening-beside-slat': null, 'slide-gate-opening': null,
-  'latch-below-top': null, 'opening-near-latch': null, 'clear-width': 44.25, 'manoeuvring-depth': 64, 'manoeuvring-latch-side': 24, 'threshold-height': 0.25, 'smooth-bottom-height': 10.5, 'use-zone': 78, 'finger-opening': 1.125,
+  'latch-below-top': null, 'opening-near-latch': null, 'clear-width': 44.25, 'manoeuvring-depth': 64, 'manoeuvring-latch-side': 24, 'threshold-height': 0.25, 'smooth-bottom-height': 10.5, 'use-zone': 78, 'finger-opening': 1.125, 'latch-release-height': 54, 'latch-side-projection': 3,
 }
 
 const tape = (amount: number): ReadingValue => ({ method: 'measure', amount, text: formatLength(amount, { system: 'imperial' }).text, system: 'imperial' })
@@ -120,7 +120,7 @@ function goodValue(check: Check, task: WalkTask, basis: RoundBasis, element: Lin
   if (check.unit === 'length') {
     const usual = check.measurand === 'fence-height' ? element.height : check.measurand === 'mesh-size' && element.mesh ? element.mesh : Math.round((USUAL[check.measurand ?? ''] ?? 1) * INCH)
     const heights = [usual]
-    const candidates = [...heights, 1, 1.5, 2, 0.25, 0, 3.25, 12, 14, 34, 40, 46, 54, 55, 60, 72, 120, 240].map((inches, at) => at < heights.length ? inches : Math.round(inches * INCH))
+    const candidates = [...heights, ...(check.measurand === 'latch-release-height' ? [46] : []), 1, 1.5, 2, 0.25, 0, 3.25, 12, 14, 34, 40, 46, 54, 55, 60, 72, 120, 240].map((inches, at) => at < heights.length ? inches : Math.round(inches * INCH))
     const amount = candidates.find(fits)
     return amount === undefined ? null : tape(amount)
   }
