@@ -18,7 +18,7 @@ export interface Waiting {
 }
 
 /** Texts of one push together, so that a weak signal still gets something through; one entry alone may be larger. */
-export const PUSH_SIZE = 1_000_000
+const PUSH_SIZE = 1_000_000
 
 /** Most photos that one push waits for. */
 export const PUSH_PHOTOS = 10
@@ -74,7 +74,7 @@ export function pauseAfter(failures: number, chance: number, retryAfterSeconds =
 }
 
 /** How long after the last word the outbox waits, so that an answer can still be taken back; what speaks of danger waits for nothing. */
-export const GRACE = 10_000
+const GRACE = 10_000
 const GRACE_MOST = 60_000
 
 /** Milliseconds until what waits may be offered. `oldest` and `newest` are when the first and the last of it were written. */
