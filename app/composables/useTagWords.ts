@@ -27,17 +27,19 @@ export function useTagWords(system: MaybeRefOrGetter<System>) {
   const margin = ({ head, check, limits }: TagRow) => head && check
     ? speech.value.margin(head as never, { unit: check.unit ?? null }, Object.fromEntries(limits.map(limit => [limit.id, limit]))) ?? ''
     : ''
+  const plainly = ({ check, finding }: TagRow) => check?.method === 'look' && te(`deficiency.found.${finding}`)
   const limitWords = ({ limits }: TagRow) => limits.map(limit => `${speech.value.limit(limit)} (${limit.basis.name})`).join('; ')
 
   return {
     before,
-    title: (row: TagRow, single = true) => [row.check?.title[language.value] ?? row.of.check, single ? margin(row) : ''].filter(Boolean).join(', '),
+    /** What is wrong, where the kind of finding says it plainly; else which check does not conform, and by how much. */
+    title: (row: TagRow, single = true) => plainly(row) ? t(`deficiency.found.${row.finding}`) : [row.check?.title[language.value] ?? row.of.check, single ? margin(row) : ''].filter(Boolean).join(', '),
     where(rows: readonly TagRow[]) {
       const element = rows[0]!.element
       const places = [...new Set(rows.map(row => speech.value.place(row.of.place)))].filter(Boolean).join('; ')
       return [element ? [element.tag, element.name].filter(Boolean).join(' ') : '', places].filter(Boolean).join(', ')
     },
-    standing(row: TagRow, part: TagPart): TagLine[] {
+    standing(row: TagRow, part: TagPart, known = false): TagLine[] {
       const { of, assignment, cannot, correction, offered } = row
       const lines: TagLine[] = []
       const say = (look: TagLine['look'], text: string) => text && lines.push({ look, text })
@@ -52,7 +54,7 @@ export function useTagWords(system: MaybeRefOrGetter<System>) {
       if (of.state === 'offered') say('wait', [t('base.tape.offered'), offered?.payload.words].filter(Boolean).join(': '))
       if (of.state === 'corrected') say('soft', correction ? t('deficiency.correctedBy', { name: correction.payload.by.name, at: at(correction.entry.envelope.madeAt) }) : t('base.tape.corrected'))
       if (part === 'settled') say('soft', [t(`base.tape.${of.state}`), of.until ? t('deficiency.until', { day: day(of.until) }) : ''].filter(Boolean).join(', '))
-      else if (assignment && of.state !== 'corrected') say('soft', of.due ? t('deficiency.givenBefore', { name: assignment.payload.to.name, before: before(of.due) }) : t('deficiency.given', { name: assignment.payload.to.name }))
+      else if (!known && assignment && of.state !== 'corrected') say('soft', of.due ? t('deficiency.givenBefore', { name: assignment.payload.to.name, before: before(of.due) }) : t('deficiency.given', { name: assignment.payload.to.name }))
       return lines
     },
     toDo(rows: readonly TagRow[]): string[] {
@@ -69,7 +71,7 @@ export function useTagWords(system: MaybeRefOrGetter<System>) {
         ].filter(Boolean).join(' '),
       ].filter(Boolean)
     },
-    needed: (row: TagRow) => row.limits.length > 0 ? t('deficiency.needed', { limit: limitWords(row) }) : row.check?.noLimit?.[language.value] ?? '',
+    needed: (row: TagRow) => row.limits.length > 0 ? t('deficiency.needed', { limit: limitWords(row) }) : plainly(row) ? t('deficiency.needed', { limit: row.check!.title[language.value] }) : row.check?.noLimit?.[language.value] ?? '',
     /** How it is read again, and what else is. */
     afterwards: (row: TagRow, titleOf: (check: string) => string = check => check) => [
       row.check ? t('deficiency.readBy', { task: row.check.task[language.value] }) : '',
