@@ -1,5 +1,4 @@
-import type { DemoOrganisation } from './people'
-import type { CONTACTS } from './people'
+import type { CONTACTS, DemoOrganisation } from './people'
 
 /** How far a job of the demo has come. */
 export type DemoStage = 'line' | 'begun' | 'walked' | 'correcting' | 'corrected' | 'waitsForPart' | 'offered' | 'signed' | 'interimSent' | 'finalSealed' | 'finalSent'

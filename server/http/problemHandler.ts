@@ -29,5 +29,5 @@ export default async function problemHandler(error: H3Error, event: H3Event): Pr
 /** A database that is down, restarting or out of connections is "not now", which a device may try again. */
 function databaseStatus(error: Error): number | null {
   const code = (error as { code?: string }).code ?? ((error.cause ?? {}) as { code?: string }).code ?? ''
-  return /^(ECONNREFUSED|ECONNRESET|EPIPE|57P0[123]|08\w{3}|53\w{3}|57014|55P03|40P01)$/.test(code) || /connection timeout|Connection terminated|timeout exceeded/i.test(error.message) ? 503 : null
+  return /^(ECONNREFUSED|ECONNRESET|EPIPE|57P0[123]|08\w{3}|53\w{3}|57014|55P03|40P01)$/.test(code) || /connection timeout|Connection terminated|connection error|timeout exceeded/i.test(error.message) ? 503 : null
 }

@@ -3,7 +3,6 @@ import type { Session } from '../database/withSession'
 import { entrance, type SessionRow } from '../database/entrance'
 import { useSettings } from '../settings'
 import { hashToken } from '../services/account/token'
-import { Failure } from '../services/failure'
 
 export interface SignedIn extends Session { accountId: string, email: string, name: string, language: 'en' | 'es', organisationName: string | null, tokenHash: string }
 
