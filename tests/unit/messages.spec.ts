@@ -33,3 +33,18 @@ describe('words that we do not use', () => {
     expect(read(`i18n/locales/en/${room}`).filter(([, text]) => UNUSED.test(text)).map(([key]) => key)).toEqual([])
   })
 })
+
+describe('screens', () => {
+  const known = new Set(rooms.flatMap(room => read(`i18n/locales/en/${room}`).map(([key]) => key)))
+  const files = readdirSync(join(root, 'app'), { recursive: true, withFileTypes: true }).filter(entry => entry.isFile() && /\.(vue|ts)$/.test(entry.name)).map(entry => join(entry.parentPath, entry.name))
+
+  it('name only messages that there are', () => {
+    const missing = files.flatMap((file) => {
+      const text = readFileSync(file, 'utf8')
+      const whole = [...text.matchAll(/\bt\(\s*'([a-zA-Z]+(?:\.[\w-]+)+)'/g)].map(match => match[1]!).filter(key => !known.has(key))
+      const begun = [...text.matchAll(/\bt\(\s*`([a-zA-Z]+(?:\.[\w-]+)*)\.\$\{/g)].map(match => match[1]!).filter(start => ![...known].some(key => key.startsWith(`${start}.`)))
+      return [...whole, ...begun].map(key => `${key} in ${file.slice(root.length + 1)}`)
+    })
+    expect([...new Set(missing)]).toEqual([])
+  })
+})
