@@ -28,6 +28,7 @@ async function sideOf(key: Side['key']): Promise<Side> {
     clientId: await first('select client_id as id from job where id = (select job_id from record where id = $1)', recordId),
     contactId: await first('select contact_id as id from recipient where record_id = $1 and email = $2', recordId, CLIENT_OF[key]),
     siteId: await first('select site_id as id from job where id = $1', jobId),
+    deficiencyId: await first(`select id from deficiency_state where organisation_id = $1 and state in ('open', 'assigned') limit 1`, id),
     authorityId: await first(`select id from authority where organisation_id = $1 and name = 'Velmor County'`, id),
     photo: await first('select digest as id from photo where organisation_id = $1 order by digest limit 1', id),
     recordPhoto: ((await visitors.get(`${key} manager`)!.send('GET', `/api/records/${recordId}`)).json.document.photos as { digest: string }[])[0]?.digest ?? '',
@@ -180,7 +181,7 @@ describe('queries', () => {
   it.each([
     ['/api/jobs?surplus=1', '/query/surplus'], ['/api/jobs?filter=mine', '/query/filter'], ['/api/jobs?most=0', '/query/most'], ['/api/jobs?siteId=7', '/query/siteId'], ['/api/jobs?find=%00', '/query/find'],
     ['/api/jobs?after=garbage', '/query/after'], ['/api/jobs?after=00000000-0000-4000-8000-000000000000.2026-99-99', '/query/after'], ['/api/jobs?sort=number&after=00000000-0000-4000-8000-000000000000.99999999999', '/query/after'],
-    ['/api/jobs.csv?find=a%00b', '/query/find'], ['/api/records?most=x', '/query/most'], ['/api/records?find=%00', '/query/find'], ['/api/numbers?authorityId=1', '/query/authorityId'], ['/api/numbers/page', '/query/setting'],
+    ['/api/jobs.csv?find=a%00b', '/query/find'], ['/api/deficiencies?after=garbage', '/query/after'], ['/api/deficiencies?sort=job&after=00000000-0000-4000-8000-000000000000.x', '/query/after'], ['/api/records?most=x', '/query/most'], ['/api/records?find=%00', '/query/find'], ['/api/numbers?authorityId=1', '/query/authorityId'], ['/api/numbers/page', '/query/setting'],
   ])('%s is refused with a pointer', async (path, pointer) => {
     const answer = await send(manager(), { method: 'GET', path })
     expect({ status: answer.status, pointers: answer.json.errors?.map((error: { pointer: string }) => error.pointer) }).toEqual({ status: 422, pointers: [pointer] })
@@ -215,6 +216,13 @@ describe('what is asked for by another\'s id', () => {
     const answer = await send(visitors.get('osprey manager')!, { method: 'PUT', path: '/api/clients', body: { id: one.clientId, name: 'Somebody else', address: '1 Other Road' } })
     expect(answer.status).toBe(200)
     expect((await demo.admin.query('select name, address from client where organisation_id = $1 and id = $2', [one.id, one.clientId])).rows).toEqual(theirs)
+  })
+
+  it('gives another organisation\'s tag to nobody, and says that it is not there', async () => {
+    const call = await ROUTES.find(row => row.file === 'api/deficiencies/assignments.post.ts')!.call(one, demo, 'manager')
+    const answer = await send(visitors.get('osprey manager')!, call)
+    expect(answer.json).toEqual({ written: [], refused: [{ deficiencyId: one.deficiencyId, code: 'notFound' }] })
+    expect((await demo.admin.query('select from entry where id = $1', [(call.body as { tags: { entryId: string }[] }).tags[0]!.entryId])).rowCount).toBe(0)
   })
 
   it('narrows a list by another organisation\'s id to nothing', async () => {

@@ -15,6 +15,9 @@ const folder = at('node_modules/.cache/smoothside-bench')
 const wanted = process.argv.slice(2)
 const benches = fs.readdirSync(at('tests/bench')).filter(name => name.endsWith('.bench.ts') && (!wanted.length || wanted.some(word => name.includes(word)))).sort()
 
+/** Files that look for others beside themselves find them from the bundle too. */
+const ownFolder = { name: 'own-folder', transform: (code, id) => (code.includes('import.meta.dirname') ? code.replaceAll('import.meta.dirname', JSON.stringify(path.dirname(id))) : null) }
+
 /** TypeScript and aliases away, packages left alone: what runs is what the server's bundle would run. */
 async function bundle(name) {
   const outDir = path.join(folder, name.replace(/\.bench\.ts$/, ''))
@@ -22,6 +25,7 @@ async function bundle(name) {
     configFile: false,
     root: projectRoot,
     logLevel: 'error',
+    plugins: [ownFolder],
     resolve: { alias: { '#shared': at('shared'), '#server': at('server'), '~~': projectRoot, '~': at('app') } },
     build: { ssr: at(`tests/bench/${name}`), outDir, emptyOutDir: true, target: 'node20', minify: false, rollupOptions: { output: { entryFileNames: 'bench.mjs' } } },
   })

@@ -19,6 +19,7 @@ export interface Side {
   /** A job that was signed, ready to be sealed; tarnbeck alone. */
   signedJobId: string
   recordId: string
+  deficiencyId: string
   photo: string
   recordPhoto: string
   accounts: Record<DemoActor, string>
@@ -108,6 +109,13 @@ export const ROUTES: RouteRow[] = [
       await admin.query('insert into contact (organisation_id, id, client_id, name, email) values ($1, $2, $3, $4, $5)', [side.id, id, side.clientId, 'Ends soon', `${id}@parks.example`])
       return { method: 'DELETE', path: `/api/clients/${side.clientId}/contacts/${id}` }
     },
+  },
+  { file: 'api/deficiencies.csv.get.ts', permission: 'deficiency.assign', call: () => get('/api/deficiencies.csv'), foreign: null, rows: { ids: (_, text) => text.split('\r\n').slice(1).map(row => row.split(',')[0]!), staff: `select tag as id from deficiency_state where organisation_id = $1 and state not like 'ended%'` } },
+  { file: 'api/deficiencies/index.get.ts', permission: 'deficiency.assign', call: () => get('/api/deficiencies?most=200'), foreign: null, rows: { ids: (json: { rows: { id: string }[] }) => idsOf(json.rows), staff: `select id from deficiency_state where organisation_id = $1 and state not like 'ended%'` } },
+  { file: 'api/deficiencies/[deficiencyId].get.ts', permission: 'deficiency.assign', call: side => get(`/api/deficiencies/${side.deficiencyId}`) },
+  {
+    file: 'api/deficiencies/assignments.post.ts', permission: 'deficiency.assign', foreign: null,
+    call: side => ({ method: 'POST', path: '/api/deficiencies/assignments', body: { tags: [{ deficiencyId: side.deficiencyId, entryId: uuidv7() }], to: { account: side.accounts.crew, name: 'Luis Barrientos' }, due: '2026-12-04T15:00:00-05:00', words: 'Bring ties' } }),
   },
   { file: 'api/field/v1/jobs/[jobId]/photos/[digest].put.ts', permission: 'photo.send', call: async (side) => { const { bytes, digest } = await finalPhoto(); return { method: 'PUT', path: `/api/field/v1/jobs/${side.jobId}/photos/${digest}`, body: bytes, headers: { 'content-type': 'image/jpeg' } } } },
   { file: 'api/field/v1/jobs/[jobId]/take.post.ts', permission: 'round.take', call: side => ({ method: 'POST', path: `/api/field/v1/jobs/${side.jobId}/take`, body: { device: uuidv7(), name: 'A phone' } }) },

@@ -7,7 +7,8 @@ import { freePort } from '../../scripts/lib/ports.mjs'
 import { cloneDatabase, type TestDatabase } from './postgres'
 
 const root = path.resolve(import.meta.dirname, '../..')
-const entry = path.join(root, '.output/server/index.mjs')
+/** Another build than the checkout's own, for a run beside others. */
+const entry = process.env.TEST_BUILT_SERVER ?? path.join(root, '.output/server/index.mjs')
 
 /** One message as the mail catcher keeps it. */
 export interface CaughtMail {

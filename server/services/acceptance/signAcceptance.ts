@@ -113,5 +113,7 @@ export async function signAcceptance(who: Who, recordId: string, input: Acceptan
     return true
   })
   if (written) await writeHead()
-  return { id: input.id, at: new Date(at).toISOString() }
+  // As it is kept, so that the same again gets the same answer.
+  const kept = (await withSession(who, tx => portal.acceptancesOf(tx, recordId))).find(one => one.id === input.id)!
+  return { id: kept.id, at: kept.createdAt.toISOString() }
 }

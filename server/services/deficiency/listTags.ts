@@ -5,6 +5,7 @@ import * as tags from '../../database/queries/deficiency'
 import type { Session } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
 import { readBuiltIn } from '../checklist/readBuiltIn'
+import { fromPlace } from '../fromPlace'
 
 let titles: Map<string, Both> | undefined
 /** A check's title by its id; ids are stable over versions. */
@@ -20,7 +21,7 @@ export function toTagRow({ organisationCode, number, key: _, ...row }: tags.TagR
 /** One page of the tags of all jobs that the person may see, and how many each filter holds. */
 export async function listTags(who: Session, query: TagListQuery): Promise<TagListPage> {
   return withSession(who, async (tx) => {
-    const rows = await tags.listTags(tx, query)
+    const rows = await fromPlace(query.after, tags.listTags(tx, query))
     const page = rows.slice(0, query.most)
     const last = page.at(-1)
     return { rows: page.map(toTagRow), next: rows.length > query.most && last ? `${last.id}.${last.key}` : null, counts: await tags.countTags(tx) }

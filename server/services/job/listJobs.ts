@@ -3,7 +3,7 @@ import { jobCode } from '../../../shared/api/job'
 import * as jobs from '../../database/queries/job'
 import type { Session } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
-import { Failure } from '../failure'
+import { fromPlace } from '../fromPlace'
 
 const toRow = ({ organisationCode, key: _, ...row }: jobs.JobListRow): JobRow => {
   const strip = 'elements' in row.strip ? row.strip : null
@@ -13,11 +13,7 @@ const toRow = ({ organisationCode, key: _, ...row }: jobs.JobListRow): JobRow =>
 /** One page of the jobs list, and how many each filter holds. */
 export async function listJobs(who: Session, query: JobListQuery): Promise<JobPage> {
   return withSession(who, async (tx) => {
-    const rows = await jobs.listJobs(tx, query).catch((error: { code?: string }) => {
-      // Data that the database cannot read (class 22) can only be the place to go on from: all else has been checked.
-      if (query.after !== undefined && error.code?.startsWith('22')) throw new Failure('invalid', 'This place in the list is not known. Begin at its top.', [{ pointer: '/query/after', code: 'unknown', detail: 'Begin at the top of the list.' }])
-      throw error
-    })
+    const rows = await fromPlace(query.after, jobs.listJobs(tx, query))
     const page = rows.slice(0, query.most)
     const last = page.at(-1)
     return { rows: page.map(toRow), next: rows.length > query.most && last ? `${last.id}.${last.key}` : null, counts: await jobs.countJobs(tx) }
