@@ -155,11 +155,11 @@ describe('every page', () => {
         if (wide > 0 || beyond) found.push(`${where}: scrolls sideways`)
         found.push(...(await faultsOfAxe(page)).map(fault => `${where}: ${fault}`))
         if (language === 'en') {
-          await keepPicture(page, `page-${file.replace(/\.vue$/, '').replace(/[^\w-]+/g, '_')}-${size}`)
+          await keepPicture(page, `page-${file.replace(/\.vue$/, '').replace(/[^\w-]+/g, '_')}-${size}`, true)
           await page.evaluate(() => { document.documentElement.dataset.theme = 'dusk' })
           found.push(...(await faultsOfAxe(page, true)).map(fault => `${where} dusk: ${fault}`))
         }
-        else if (size === 'phone') await keepPicture(page, `page-${file.replace(/\.vue$/, '').replace(/[^\w-]+/g, '_')}-phone-es`)
+        else if (size === 'phone') await keepPicture(page, `page-${file.replace(/\.vue$/, '').replace(/[^\w-]+/g, '_')}-phone-es`, true)
         found.push(...faults.map(fault => `${where}: ${fault}`))
       }
     }

@@ -18,8 +18,8 @@ let phone: Visit
 
 const picture = () => sharp({ create: { width: 4000, height: 3000, channels: 3, background: '#7a8f6a', noise: { type: 'gaussian', mean: 120, sigma: 40 } } }).jpeg({ quality: 92 }).toBuffer()
 const key = (page: Page, words: string) => page.getByRole('button', { name: words, exact: true })
-const waiting = (page: Page, count: number) => page.getByRole('button', { name: say('base.tally.waiting', { count }) }).waitFor({ timeout: 30_000 })
-const allSent = (page: Page) => page.getByRole('button', { name: new RegExp(`^${say('base.tally.sent')}`) }).waitFor({ timeout: 150_000 })
+const waiting = (page: Page, count: number) => page.getByText(say('base.tally.waiting', { count }), { exact: true }).waitFor({ timeout: 30_000 })
+const allSent = (page: Page) => page.getByText(new RegExp(`^${say('base.tally.sent')}`)).first().waitFor({ timeout: 150_000 })
 const entries = async () => (await job.admin.query<{ id: string, number: number, kind: string }>('select id, number, kind from entry order by number')).rows
 /** Without gaps and without doubles, as the server numbers what it has accepted. */
 const gapless = (rows: { number: number }[]) => expect(rows.map(row => row.number)).toEqual(rows.map((_, at) => at + 1))

@@ -31,9 +31,9 @@ export async function visit(browser: Browser, baseURL: string, size: Size, optio
   return { context, page, faults }
 }
 
-/** Keeps a picture of the screen under tests/.artefacts (not in the repository), to be looked at. */
-export async function keepPicture(page: Page, name: string): Promise<void> {
+/** Keeps a picture of the screen under tests/.artefacts (not in the repository), to be looked at: as it is seen on a phone, the whole page at a desk. */
+export async function keepPicture(page: Page, name: string, fullPage = page.viewportSize()!.width > sizes.phone.viewport.width): Promise<void> {
   const folder = path.resolve(import.meta.dirname, '../.artefacts')
   mkdirSync(folder, { recursive: true })
-  await page.screenshot({ path: path.join(folder, `${name}.png`), fullPage: true })
+  await page.screenshot({ path: path.join(folder, `${name}.png`), fullPage })
 }
