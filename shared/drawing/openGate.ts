@@ -21,7 +21,7 @@ function fence(from: number, to: number, gate: number): PathShape[] {
   const posts: number[] = []
   for (let x = gate + (gate === to ? -150 : 150); x > from && x < to; x += gate === to ? -150 : 150) posts.push(x)
   return [
-    path('mesh', meshPath(to - from, FOOT - 26, 30, 30, (u, v) => [from + u, 26 + v]), { role: 'pine', width: 1 }),
+    path('mesh', meshPath(to - from, FOOT - 26, 15, 15, (u, v) => [from + u, 26 + v]), { role: 'pine', width: 1 }),
     ...[24, TOP, FOOT].map(y => seg('rail', from, y, to, y, { width: 'hair' })),
     ...posts.map(x => seg('post', x, 19, x, 164, { width: 3 })),
   ]
@@ -33,7 +33,7 @@ function paper(x: number): PathShape[] {
   return [
     box('fit', left, 44, 88, 112, { role: 'ink', width: 'line', fill: 'paper' }),
     seg('fit', left + 10, 56, left + 46, 56, { width: 3 }),
-    path('fit', meshPath(68, 12, 8, 8, (u, v) => [left + 10 + u, 68 + v]), { role: 'pine', width: 'wire' }),
+    path('fit', meshPath(68, 12, 4, 4, (u, v) => [left + 10 + u, 68 + v]), { role: 'pine', width: 'wire' }),
     ...[67, 81].map(y => seg('fit', left + 10, y, left + 78, y)),
     ...[0, 19, 23, 48, 68].map(at => seg('fit', left + 10 + at, 64, left + 10 + at, 82, { width: 2 })),
     ...[0, 1, 2, 3, 4].flatMap(i => [
@@ -60,7 +60,7 @@ export function openGate({ width, gate = 'open' }: { width: number, gate?: 'open
         ? [...leaf(left, 1), ...leaf(right, -1), ...paper(middle)]
         : [
             ...[[left + 7, middle - 2], [middle + 2, right - 7]].flatMap(([from, to]) => [
-              path('leaf', meshPath(to! - from!, 122, 20, 20, (u, v) => [from! + u, 32 + v]), { role: 'mark', width: 'wire' }),
+              path('leaf', meshPath(to! - from!, 122, 12, 12, (u, v) => [from! + u, 32 + v]), { role: 'mark', width: 'wire' }),
               box('leaf', from!, 32, to! - from!, 122, { role: 'ink', width: 2 }),
             ]),
             box('leaf', middle - 12, 88, 24, 10, { role: 'ink', width: 2, fill: 'paper' }),

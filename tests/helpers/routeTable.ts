@@ -179,7 +179,7 @@ export const ROUTES: RouteRow[] = [
   { file: 'routes/acceptances/[acceptanceFile].get.ts', permission: 'record.read', call: () => get(`/acceptances/${RECEIPT}.pdf`) },
   { file: 'routes/health/live.get.ts', permission: 'public', call: () => get('/health/live'), foreign: null },
   { file: 'routes/health/ready.get.ts', permission: 'public', call: () => get('/health/ready'), foreign: null, sameBody: false },
-  { file: 'routes/records/[recordFile].get.ts', permission: 'record.read', call: side => get(`/records/${side.recordId}.pdf`) },
+  { file: 'routes/records/files/[recordFile].get.ts', permission: 'record.read', call: side => get(`/records/${side.recordId}.pdf`) },
   { file: 'routes/records/[recordId]/photos/[photoFile].get.ts', permission: 'record.read', call: side => get(`/records/${side.recordId}/photos/${side.recordPhoto}.jpg`) },
   // Last, since it ends every session of the person.
   { file: 'api/account/password.post.ts', permission: 'account.own', call: () => ({ method: 'POST', path: '/api/account/password', body: { now: DEMO_PASSWORD, next: DEMO_PASSWORD } }), ok: { client: 422, else: 200 }, foreign: null, ownSession: true },
