@@ -1,10 +1,11 @@
 import type { PDFRef } from 'pdf-lib'
 import { tapeTag, tapeTagWidth } from '../../shared/drawing/displayList'
 import { tapeOf } from '../../shared/line/lineMark'
-import type { RecordDeficiency, RecordPhoto, RecordStep } from '../../shared/record/record'
+import type { RecordDeficiency, RecordPhoto } from '../../shared/record/record'
 import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
-import { heading, tagOf } from './recordFrame'
+import { heading } from './recordFrame'
+import { captionOf, photosOfDeficiency, stepWords, tagOf } from '../../shared/record/recordWords'
 import { fill, sentence } from '../../shared/record/wording'
 
 /** The image of each photo, by digest. */
@@ -32,7 +33,7 @@ function paintDeficiency(frame: Frame, one: RecordDeficiency, images: Images): v
   const { states, classes } = say.w
   const check = record.checks.find(each => each.element === one.element && each.check === one.check)
   const place = say.place(one.place)
-  const photos = photosOf(frame, one)
+  const photos = photosOfDeficiency(frame, one)
   const x = PAPER.left + HANG
   const title = sheet.lay([{ text: `${tagOf(frame, one.element)}: ${check?.title ?? one.check}`, weight: 500 }], PAPER.right - x, { size: 10.5, lead: 14 })
   const state = fill(states[one.state], { who: one.assignedTo ?? '', for: one.waitsFor ?? '' })
@@ -70,43 +71,6 @@ function paintDeficiency(frame: Frame, one: RecordDeficiency, images: Images): v
   sheet.y += 8
 }
 
-function stepWords({ say }: Frame, step: RecordStep, at: number): string {
-  const { phrases, helds, findings, decisions } = say.w
-  if (step.erased) return phrases.erased
-  const person = step.person ?? step.by
-  const words = step.words ? `: ${step.words}` : ''
-  const deviation = [...(step.condition ? [fill(phrases.condition, { words: step.condition })] : []), ...(step.until ? [fill(phrases.until, { on: say.day(step.until) })] : [])].map(part => `, ${part}`).join('')
-  switch (step.kind) {
-    case 'reading': {
-      const look = step.value?.method === 'look' ? (step.value.found === 'clear' ? phrases.clear : findings[step.value.finding ?? 'other']) : step.value ? say.reading(step.value, { unit: step.value.method === 'measure' ? 'length' : null }) : ''
-      return `${at === 0 ? phrases.found : phrases.readAgainStep}: ${look}${step.words ? `, ${step.words}` : ''}`
-    }
-    case 'correction': return fill(phrases.corrected, { person }) + words
-    case 'assignment': return fill(phrases.assigned, { person }) + (step.due ? `, ${fill(phrases.due, { at: say.at(step.due) })}` : '') + words
-    case 'cannot': return fill(phrases.cannot, { for: step.waitsFor ?? '' }) + words
-    case 'dangerNow': return fill(phrases.dangerNow, { done: sentence(step.done ? helds[step.done] : ''), person, at: step.toldAt ? say.time(step.toldAt) : '' }) + words
-    case 'deviationOffered': return phrases.offered + words + deviation
-    case 'deviationAccepted': return fill(step.accepted ? phrases.accepted : phrases.declined, { person, for: step.actsFor ?? '' }) + words + deviation
-    case 'decided': return fill(phrases.decided, { person, decision: step.decision ? decisions[step.decision] : '', document: step.document ?? '', on: step.on ? say.day(step.on) : '' }) + words
-    case 'referred': return fill(phrases.referred, { person, on: step.on ? say.day(step.on) : '' }) + words
-    case 'enteredInError': return fill(phrases.enteredInError, { reason: step.reason ?? '' })
-    case 'settled': return fill(phrases.settled, { reason: step.reason ?? '' })
-    case 'disputed': return phrases.disputed + words
-    default: return phrases.noted + words
-  }
-}
-
-interface Shown { photo: RecordPhoto, what: string }
-
-function photosOf({ record, say }: Frame, one: RecordDeficiency): Shown[] {
-  const corrected = one.steps.findIndex(step => step.kind === 'correction')
-  return one.steps.flatMap((step, at) => step.photos.flatMap((digest) => {
-    const photo = record.photos.find(each => each.digest === digest)
-    const what: string = corrected === -1 ? say.w.labels.found : at < corrected ? say.w.labels.before : say.w.labels.after
-    return photo ? [{ photo, what: `${what}, ${one.tag}` }] : []
-  }))
-}
-
 /** Photos that no deficiency shows. */
 export function paintOtherPhotos(frame: Frame, images: Images): void {
   const { sheet, record, say } = frame
@@ -120,14 +84,13 @@ export function paintOtherPhotos(frame: Frame, images: Images): void {
 }
 
 /** Photos in rows of three, each with its number and who took it when. */
-function paintPhotos(frame: Frame, shown: Shown[], images: Images, left: number = PAPER.left): void {
+function paintPhotos(frame: Frame, shown: { photo: RecordPhoto, what: string }[], images: Images, left: number = PAPER.left): void {
   const { sheet, say, photoNumbers } = frame
   const { phrases } = say.w
   const wide = (PAPER.right - left - 2 * GAP) / 3
   for (let from = 0; from < shown.length; from += 3) {
     const row = shown.slice(from, from + 3).map(({ photo, what }) => {
-      const gallery = photo.taken.origin === 'gallery' ? `, ${photo.taken.at ? fill(phrases.fromGallery, { at: say.at(photo.taken.at) }) : phrases.fromGalleryUnknown}` : ''
-      const caption = fill(phrases.photoCaption, { n: photoNumbers.get(photo.digest)!, what, by: photo.by, at: say.at(photo.taken.at ?? photo.at) }) + gallery
+      const caption = captionOf({ photo, what }, frame)
       const scale = Math.min(wide / photo.width, PHOTO.height / photo.height)
       return { photo, what, caption: sheet.lay(caption, wide, { size: 8.25, lead: 11, role: 'soft' }), width: photo.width * scale, height: photo.height * scale }
     })

@@ -1,15 +1,16 @@
 import { FOOT, MILLIMETRE } from '../../shared/measure/length'
 import { formatLength } from '../../shared/measure/formatLength'
-import { elementsOf, type LineElement } from '../../shared/line/line'
+import { elementsOf } from '../../shared/line/line'
 import { MEASURE, PAPER } from './paper'
 import type { Frame } from './recordFrame'
-import { diamondStateOf, heading, tableRow } from './recordFrame'
+import { heading, tableRow } from './recordFrame'
+import { diamondStateOf, elementWords, useWords } from '../../shared/record/recordWords'
 import { fill, listed, sentence } from '../../shared/record/wording'
 
 /** Every element along the line, what it is, how it stands, and whether people may use it. */
 export function paintElements(frame: Frame): void {
   const { sheet, record, say } = frame
-  const { labels, phrases, works, legend, titles } = say.w
+  const { labels, phrases, legend, titles } = say.w
   const columns = [0, 50, 222, 276, 324, 436].map((x, at, all) => ({ x: PAPER.left + x, width: (all[at + 1] ?? MEASURE + 6) - x - 6 }))
   sheet.structure.within('Sect', () => {
     heading(frame, titles.elements)
@@ -18,23 +19,11 @@ export function paintElements(frame: Frame): void {
       for (const element of elementsOf(record.line)) {
         const of = record.elements.find(one => one.element === element.id)
         const state = of ? diamondStateOf(of) : 'notRead'
-        const use = !of ? '' : of.outOfUse ? (element.gate?.exit ? phrases.attended : phrases.outOfUse) : of.released ? phrases.released : phrases.notReleased
-        tableRow(frame, columns, [element.tag, what(element), element.length === 0 ? '' : feetOrMetres(element.length), feetOrMetres(element.height), legend[state], use], { before: 3.2, after: 3.2, marks: [{ column: 4, state }] })
+        tableRow(frame, columns, [element.tag, elementWords(frame, element), element.length === 0 ? '' : feetOrMetres(element.length), feetOrMetres(element.height), legend[state], useWords(frame, element.id)], { before: 3.2, after: 3.2, marks: [{ column: 4, state }] })
       }
-      for (const element of record.struck) tableRow(frame, columns, [element.tag, what(element), feetOrMetres(element.length), feetOrMetres(element.height), phrases.struck, ''], { before: 3.2, after: 3.2 })
+      for (const element of record.struck) tableRow(frame, columns, [element.tag, elementWords(frame, element), feetOrMetres(element.length), feetOrMetres(element.height), phrases.struck, ''], { before: 3.2, after: 3.2 })
     })
   })
-
-  function what(element: LineElement): string {
-    const { gate } = element
-    return sentence([
-      say.kind(element),
-      ...(element.name ? [element.name] : []),
-      ...(gate?.exit ? [phrases.exit] : []), ...(gate?.selfClosing ? [phrases.selfClosing] : []), ...(gate?.automatic ? [phrases.automatic] : []),
-      works[element.work],
-      ...(element.kind === 'run' ? [element.bays === 1 ? phrases.bayOne : fill(phrases.bays, { n: element.bays })] : []),
-    ].join(', '))
-  }
 
   /** Lengths of a line are drawn and said in feet and inches, or in metres. */
   function feetOrMetres(length: number): string {

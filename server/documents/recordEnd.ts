@@ -1,11 +1,12 @@
 import type { RecordSignature } from '../../shared/record/record'
 import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
-import { heading, tableRow, tagOf } from './recordFrame'
+import { heading, tableRow } from './recordFrame'
 import type { Block, Sheet, Words } from './sheet'
 import type { Speech } from '../../shared/record/speech'
 import { squareCode } from './squareCode'
 import { signatureDrawing } from '../../shared/record/signatureDrawing'
+import { tagOf } from '../../shared/record/recordWords'
 import { fill, grouped, listed, sentence } from '../../shared/record/wording'
 
 export function paintNotes(frame: Frame): void {

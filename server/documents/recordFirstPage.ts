@@ -1,13 +1,12 @@
 import { diamond, DIAMONDS } from '../../shared/drawing/displayList'
 import { drawLine } from '../../shared/line/drawLine'
-import type { LineMarks } from '../../shared/line/lineMark'
-import { diamondOf, placeAlong, tapeOf } from '../../shared/line/lineMark'
+import { diamondOf } from '../../shared/line/lineMark'
 import { elementsOf } from '../../shared/line/line'
-import type { RecordDocument } from '../../shared/record/record'
 import { MEASURE, PAPER } from './paper'
 import type { Frame } from './recordFrame'
-import { columnHeading, tagOf } from './recordFrame'
+import { columnHeading } from './recordFrame'
 import type { Words } from './sheet'
+import { askedOf, closed, heldOf, marksOf, notSeenOf, particularsOf, tagOf, walkedWords } from '../../shared/record/recordWords'
 import { fill, listed, sentence } from '../../shared/record/wording'
 
 const GAP = 24
@@ -17,15 +16,13 @@ const RIGHT = PAPER.left + COLUMN + GAP
 /** Page 1: the outcome in one sentence, the line, who and where, what is held, not seen and asked, and what the record is not. */
 export function paintFirstPage(frame: Frame): void {
   const { sheet, record, say } = frame
-  const { titles, phrases } = say.w
+  const { titles } = say.w
   sheet.paragraph([{ text: `${record.sentence.lead} `, weight: 500 }, { text: record.sentence.rest }], { type: 'H1', size: 18.75, weight: 300, lead: 23.4, after: 3 })
-  const read = [...record.walks.map(({ at, by }) => ({ at, by })), ...record.checks.flatMap(check => check.readings.map(({ madeAt, by }) => ({ at: madeAt, by })))]
-  const walked = read.length === 0 ? phrases.notWalked : fill(phrases.walked, { days: say.days(read.map(one => one.at)), names: listed([...new Set(read.map(one => one.by))], say.w.and) })
-  sheet.paragraph(walked, { role: 'soft', after: 8 })
+  sheet.paragraph(walkedWords(frame), { role: 'soft', after: 8 })
   paintAmended(frame)
   const columns: [Part[], Part[]] = [
-    [[titles.whoAndWhere, definitions(frame)]],
-    [[titles.held, held(frame)], [titles.notSeen, [notSeen(frame)]], [titles.asked, asked(frame)]],
+    [[titles.whoAndWhere, { pairs: particularsOf(frame), labels: 69 }]],
+    [[titles.held, held(frame)], [titles.notSeen, [notSeenOf(frame).join(' ')]], [titles.asked, askedOf(frame)]],
   ]
   const body = sheet.lay(record.isNot, MEASURE, SMALL)
   paintLine(frame, columnsHeight(frame, columns) + body.height + 30)
@@ -39,23 +36,11 @@ export function paintFirstPage(frame: Frame): void {
   paintCautions(frame)
 }
 
-function paintAmended({ sheet, record, say, ...rest }: Frame): void {
-  const { amends } = record
+function paintAmended(frame: Frame): void {
+  const { sheet, record: { amends }, say } = frame
   if (!amends) return
-  const tags = listed(amends.elements.map(element => tagOf({ sheet, record, say, ...rest }, element)), say.w.and)
+  const tags = listed(amends.elements.map(element => tagOf(frame, element)), say.w.and)
   sheet.paragraph(fill(say.w.phrases[amends.how], { code: amends.code, tags, why: closed(amends.why) }), { weight: 500, after: 8 })
-}
-
-/** What the record says of the line, as marks for its drawing. */
-export function marksOf(record: RecordDocument): LineMarks {
-  return Object.fromEntries(elementsOf(record.line).map((element) => {
-    const of = record.elements.find(one => one.element === element.id)
-    const tags = record.deficiencies.flatMap((deficiency) => {
-      const state = deficiency.element === element.id ? tapeOf(deficiency.state) : null
-      return state ? [{ words: deficiency.tag, state, along: placeAlong(element, deficiency.place) }] : []
-    })
-    return [element.id, { verdict: of?.verdict ?? 'notRead' as const, settled: of?.settled ?? false, outOfUse: of?.outOfUse ?? false, tags }]
-  }))
 }
 
 /** The line, drawn smaller (never under two thirds) where what must stand on this page would not fit under it. */
@@ -182,84 +167,9 @@ function paintColumn(frame: Frame, top: number, x: number, body: ColumnBody): vo
   }))
 }
 
-function definitions({ record, say }: Frame): ColumnBody {
-  const { labels, phrases } = say.w
-  const { job, site, client, organisation, inspectors } = record
-  const named = (person: { name: string, title?: string, phone?: string }) => [person.name, person.title, person.phone?.replace(/ /g, '\u00a0')].filter(part => part).join(', ')
-  const pairs: Cells = [
-    [labels.site, [site.name, site.address].filter(part => part).join(', ')],
-    [labels.client, [client.name, ...(client.contact ? [named(client.contact)] : [])].join(', ')],
-    [labels.job, [job.number, job.title].filter(part => part).join(', ')],
-    ...(['contract', 'permit', 'buildingCode', 'gateTag'] as const).flatMap((key): Cells => job.keys[key] ? [[labels[key], job.keys[key]]] : []),
-    [labels.contractor, [organisation.name, ...organisation.address].join(', ')],
-    ...inspectors.map(({ employer, builtTheFence, ...person }): [string, Words] => [labels.inspector, fill(builtTheFence ? phrases.employedBuilt : phrases.employed, { name: named(person), employer })]),
-    ...(site.onSite ? [[labels.onSite, named(site.onSite)] as [string, Words]] : []),
-    ...(site.emergency ? [[labels.emergency, named(site.emergency)] as [string, Words]] : []),
-  ]
-  return { pairs, labels: 69 }
-}
-
 function held(frame: Frame): ColumnBody {
-  const { record, say } = frame
-  const { phrases, helds } = say.w
-  const out = record.elements.filter(element => element.outOfUse)
-  if (out.length === 0) return [phrases.nothingHeld]
-  const pairs = out.map(({ element }): [string, Words] => {
-    const open = record.deficiencies.filter(one => one.element === element && one.class === 'outOfUse' && !one.state.startsWith('ended'))
-    const words = open.map((one) => {
-      const step = [...one.steps].reverse().find(each => each.kind === 'dangerNow')
-      const how = one.held ? helds[one.held] : phrases.heldUnknown
-      const since = step ? fill(phrases.heldSince, { how, at: `${say.time(step.at)}, ${say.day(step.at.slice(0, 10))}` }) : how
-      const reading = record.checks.find(check => check.element === element && check.check === one.check)
-      const margin = reading?.readings[0] ? say.margin(reading.readings[0], reading, record.limits) : null
-      return `${since}; ${[reading?.title.toLowerCase() ?? '', margin].filter(part => part).join(', ')} (${one.tag})`
-    }).join('\n')
-    return [tagOf(frame, element), frame.elements.get(element)?.gate?.exit ? fill(phrases.heldWayOut, { how: words }) : words]
-  })
-  return { pairs, labels: 38, ruled: true }
-}
-
-function asked({ record, say }: Frame): string[] {
-  const { phrases } = say.w
-  if (record.questions.length === 0) return [phrases.nothingAsked]
-  return record.questions.map(({ words, askedOf, on }) => fill(phrases.putTo, { words: closed(words), to: askedOf, on: say.day(on) }))
-}
-
-/** What nobody saw: set aside with a reason, not read in full, ground that is still to come, and what no walk ever sees. */
-function notSeen(frame: Frame): string {
-  const { record, say, elements } = frame
-  const { phrases, whys } = say.w
-  const groups = new Map<string, { tags: Set<string>, checks: number }>()
-  for (const check of record.checks) {
-    if (check.verdict !== 'notInspected') continue
-    const whole = record.elements.find(one => one.element === check.element)?.verdict === 'notInspected'
-    const aside = check.setAside
-    const why = aside ? aside.words ?? whys[aside.why as keyof typeof whys] ?? aside.why : ''
-    const key = `${whole ? 'whole' : check.element}\u0000${why}`
-    const group = groups.get(key) ?? { tags: new Set<string>(), checks: 0 }
-    group.tags.add(tagOf(frame, check.element))
-    groups.set(key, { tags: group.tags, checks: group.checks + 1 })
-  }
-  const lines = [...groups].map(([key, { tags, checks }]) => {
-    const [scope, why] = key.split('\u0000')
-    return fill(scope === 'whole' ? phrases.setAsideWhole : phrases.setAside, { tags: listed([...tags], say.w.and), checks: checks === 1 ? phrases.checksOne : fill(phrases.checksMany, { n: checks }), why: why || say.w.verdicts.notInspected })
-  })
-  const unread = record.elements.filter(one => one.verdict === 'notRead' || record.checks.some(check => check.element === one.element && check.verdict === 'notRead')).map(one => tagOf(frame, one.element))
-  if (unread.length > 0) lines.push(fill(phrases.unread, { tags: listed(unread, say.w.and) }))
-  const ground = new Map<string, string[]>()
-  for (const { element, verdict } of record.elements) {
-    const faces = elements.get(element)?.faces
-    if (!faces || verdict === 'notInspected' || (faces.outer.ground.finished && faces.inner.ground.finished)) continue
-    const open = faces.outer.ground.finished ? faces.inner.ground : faces.outer.ground
-    const what = open.coming && open.comingThickness ? fill(phrases.thickOf, { x: say.length(open.comingThickness), what: open.coming }) : open.coming ?? ''
-    ground.set(what, [...ground.get(what) ?? [], tagOf(frame, element)])
-  }
-  for (const [what, tags] of ground) lines.push(fill(what ? phrases.groundComing : phrases.groundOpen, { tags: listed(tags, say.w.and), what }))
-  return [...(lines.length === 0 ? [phrases.nothingUnseen] : lines.map(closed)), phrases.nothingBelow].join(' ')
-}
-
-function closed(words: string): string {
-  return /[.!?]$/.test(words) ? words : `${words}.`
+  const all = heldOf(frame)
+  return all.length === 0 ? [frame.say.w.phrases.nothingHeld] : { pairs: all.map(({ tag, words }) => [tag, words]), labels: 38, ruled: true }
 }
 
 function paintCautions(frame: Frame): void {

@@ -1,40 +1,19 @@
 import type { Drawing, DiamondState } from '../../shared/drawing/displayList'
 import { diamond, path } from '../../shared/drawing/displayList'
-import type { LineElement } from '../../shared/line/line'
-import { elementsOf } from '../../shared/line/line'
-import type { RecordCheck, RecordDocument } from '../../shared/record/record'
+import type { RecordDocument } from '../../shared/record/record'
 import { PAPER } from './paper'
 import type { Sheet, TextStyle, Words } from './sheet'
-import type { Speech } from '../../shared/record/speech'
+import { tellingOf, type Telling } from '../../shared/record/recordWords'
 import { fill, grouped } from '../../shared/record/wording'
 
 /** What the parts of a record share while it is built. */
-export interface Frame {
+export interface Frame extends Telling {
   sheet: Sheet
-  record: RecordDocument
-  say: Speech
   digest: string
-  elements: Map<string, LineElement>
-  /** Number of each photo on the pages, by digest. */
-  photoNumbers: Map<string, number>
 }
 
-export function frameOf(sheet: Sheet, record: RecordDocument, say: Speech, digest: string): Frame {
-  return {
-    sheet, record, say, digest,
-    elements: new Map([...record.struck, ...elementsOf(record.line)].map(element => [element.id, element])),
-    photoNumbers: new Map(record.photos.map((photo, at) => [photo.digest, at + 1])),
-  }
-}
-
-/** The short name of an element, also of one that was struck. */
-export function tagOf({ elements }: Frame, element: string | null): string {
-  return element === null ? '' : elements.get(element)?.tag ?? element.slice(0, 8)
-}
-
-/** The verdict of a check as its diamond has it. */
-export function diamondStateOf(check: Pick<RecordCheck, 'verdict' | 'settled'>): DiamondState {
-  return check.settled && check.verdict === 'conforms' ? 'settled' : check.verdict
+export function frameOf(sheet: Sheet, record: RecordDocument, digest: string): Frame {
+  return { ...tellingOf(record), sheet, digest }
 }
 
 /** A verdict diamond beside its word, painted as an artifact: the word says it. */

@@ -13,8 +13,7 @@ import { frameOf, paintHeadAndFoot, scopeTitle, shortDigest } from './recordFram
 import { paintReadings } from './recordReadings'
 import { leaveSealPlace } from './sealPlace'
 import { Sheet } from './sheet'
-import { Speech } from '../../shared/record/speech'
-import { fill, WORDING } from '../../shared/record/wording'
+import { fill } from '../../shared/record/wording'
 
 export interface PhotoSource {
   /** The final bytes of a photo (upright, sRGB JPEG, no metadata) by the SHA-256 that the record names. */
@@ -28,13 +27,12 @@ export interface PhotoSource {
 export async function buildRecordPdf(record: RecordDocument, { photoBytes }: PhotoSource): Promise<Uint8Array> {
   const text = canonicalJson(record)
   const digest = createHash('sha256').update(text).digest('hex')
-  const wording = WORDING[record.language]
-  const say = new Speech({ wording, system: record.system, zones: record.zones })
   const doc = await PDFDocument.create({ updateMetadata: false })
   const images = await embedPhotos(doc, record.photos.map(photo => photo.digest), photoBytes)
 
   const sheet = await Sheet.open(doc)
-  const frame = frameOf(sheet, record, say, digest)
+  const frame = frameOf(sheet, record, digest)
+  const { say } = frame
   paintFirstPage(frame)
   paintElements(frame)
   paintReadings(frame)
@@ -46,7 +44,7 @@ export async function buildRecordPdf(record: RecordDocument, { photoBytes }: Pho
   paintSet(frame)
   paintChecking(frame)
 
-  const { titles } = wording
+  const { titles } = say.w
   const scope = scopeTitle(frame)
   sheet.finish(record.language, (page, of) => paintHeadAndFoot(sheet, {
     name: record.organisation.name,

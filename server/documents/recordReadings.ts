@@ -1,29 +1,21 @@
-import type { Verdict } from '../../shared/round/outcome'
-import type { RecordCheck, RecordReading } from '../../shared/record/record'
-import { liveDrawing } from './liveDrawing'
+import type { RecordCheck } from '../../shared/record/record'
+import { liveDrawing } from '../../shared/record/liveDrawing'
 import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
-import { diamondStateOf, heading, placeDiamond, tableRow, tagOf } from './recordFrame'
+import { heading, placeDiamond, tableRow } from './recordFrame'
 import type { Block, Words } from './sheet'
+import { asideWords, circumstancesOf, clearRows, conditionsOf, diamondStateOf, earlierWords, isPlainLook, READING_ORDER, tagOf } from '../../shared/record/recordWords'
 import { fill, listed } from '../../shared/record/wording'
 
-/** Gravest first: the order in which readings are shown. */
-const ORDER: Verdict[] = ['doesNotConform', 'withinError', 'groundNotFinished', 'noLimit', 'notRead', 'conforms', 'notInspected', 'notApplicable']
 const PICTURE = { x: PAPER.left + 37.5, width: 112.5 }
 const TEXT = { x: PICTURE.x + PICTURE.width + 12, width: 231 }
 const FIGURE = { x: PAPER.right - 111, width: 111 }
-
-/** A look that was clear from the start says nothing more than that: it goes into the short list, all others get a row of their own. */
-function isPlainLook(check: RecordCheck): boolean {
-  return check.verdict === 'conforms' && !check.settled && !check.readAgain && check.earlier.length === 0
-    && check.readings.every(({ value, note, photos, disagreesWith }) => value.method === 'look' && note === null && photos.length === 0 && disagreesWith.length === 0)
-}
 
 export function paintReadings(frame: Frame): void {
   const { sheet, record, say } = frame
   const shown = record.checks.filter(check => !isPlainLook(check) && (check.readings.length > 0 || check.verdict === 'notRead'))
   // Sorting is stable: within one verdict the rows keep the order of the walk.
-  shown.sort((a, b) => ORDER.indexOf(a.verdict) - ORDER.indexOf(b.verdict))
+  shown.sort((a, b) => READING_ORDER.indexOf(a.verdict) - READING_ORDER.indexOf(b.verdict))
   if (shown.length > 0) {
     sheet.newPage()
     sheet.structure.within('Sect', () => {
@@ -31,7 +23,7 @@ export function paintReadings(frame: Frame): void {
       shown.forEach((check, at) => paintReading(frame, check, at === 0))
     })
   }
-  paintClear(frame, record.checks.filter(isPlainLook))
+  paintClear(frame)
   paintSetAside(frame)
 }
 
@@ -48,14 +40,14 @@ function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
   const said: Block[] = [
     sheet.lay(check.title, wide.width, { size: 10.5, weight: 500, lead: 14 }),
     ...limits.map(limit => sheet.lay([{ text: say.limit(limit) }, { text: `\n${say.basis(limit.basis)}`, role: 'soft' }], wide.width, small)),
-    ...conditions(check, frame).map(words => sheet.lay(words, wide.width, small)),
-    ...(governing ? [sheet.lay(circumstances(governing, check, frame), wide.width, { ...small, role: 'soft' })] : []),
+    ...conditionsOf(check, frame).map(words => sheet.lay(words, wide.width, small)),
+    ...(governing ? [sheet.lay(circumstancesOf(governing, check, frame), wide.width, { ...small, role: 'soft' })] : []),
     ...(check.readAgain ? [sheet.lay(phrases.readAgain, wide.width, { ...small, weight: 500 })] : []),
   ]
   // There may be one for each of five hundred bays: these go on over pages, the rest of the row stands together.
   const more: Words[] = [
-    ...others.map((reading): Words => [{ text: fill(phrases.moreReadings, { list: say.reading(reading.value, check, limits) }) }, { text: ` (${circumstances(reading, check, frame)})`, role: 'soft' }]),
-    ...check.earlier.map((reading): Words => [{ text: earlier(reading, check, frame), role: 'soft' }]),
+    ...others.map((reading): Words => [{ text: fill(phrases.moreReadings, { list: say.reading(reading.value, check, limits) }) }, { text: ` (${circumstancesOf(reading, check, frame)})`, role: 'soft' }]),
+    ...check.earlier.map((reading): Words => [{ text: earlierWords(reading, check, frame), role: 'soft' }]),
   ]
   const figure = governing ? sheet.lay(say.reading(governing.value, check, limits), FIGURE.width, { size: governing.value.method === 'template' ? 10.5 : 15, weight: 300, lead: governing.value.method === 'template' ? 14 : 18 }) : null
   const margin = governing ? say.margin(governing, check, record.limits) : null
@@ -92,64 +84,17 @@ function paintReading(frame: Frame, check: RecordCheck, first: boolean): void {
   sheet.y += 7
 }
 
-/** What the answer was held against, where that is no limit with a figure. */
-function conditions(check: RecordCheck, { say }: Frame): string[] {
-  const { phrases } = say.w
-  if (check.method === 'trial') return [listed(check.tries.map(each => fill(phrases.triesFrom, { times: each.times, label: each.label })), say.w.and)]
-  if (check.method === 'template' && check.conformsWhen) return [check.conformsWhen === 'passes' ? phrases.passesConforms : phrases.stopsConforms]
-  if (check.method !== 'look' && check.limits.length === 0) return [check.noLimit ?? phrases.noLimit]
-  return []
-}
-
-/** With what, where, by whom and when it was read, and what else was noted. */
-function circumstances(reading: RecordReading, check: RecordCheck, { say, photoNumbers, record }: Frame): string {
-  const { phrases, dimensions } = say.w
-  const { value } = reading
-  const numbers = reading.photos.flatMap(digest => photoNumbers.get(digest) ?? [])
-  return [
-    ...(value.method === 'measure' && value.instrument ? [value.instrument] : []),
-    ...(value.method === 'measure' && value.dimension ? [dimensions[value.dimension]] : []),
-    ...(value.method === 'measure' && value.uncertainty ? [fill(phrases.uncertainty, { x: say.amount(value.uncertainty, check.unit, { system: value.system, beside: [0] }) })] : []),
-    ...(value.method === 'measure' && value.system !== record.system ? [fill(phrases.typed, { text: value.text })] : []),
-    ...(reading.place ? [say.place(reading.place)] : check.face ? [say.w.faces[check.face]] : []),
-    fill(phrases.writtenBy, { by: reading.by, at: say.at(reading.madeAt) }),
-    ...(numbers.length > 0 ? [fill(numbers.length === 1 ? phrases.photo : phrases.photos, { n: listed(numbers.map(String), say.w.and) })] : []),
-    ...(reading.tag ? [fill(phrases.tag, { tag: reading.tag })] : []),
-    ...(reading.note ? [fill(phrases.note, { words: reading.note })] : []),
-    ...(reading.otherSystemDiffers ? [phrases.otherSystem] : []),
-    ...(reading.disagreesWith.length > 0 ? [fill(phrases.disagrees, { n: reading.disagreesWith.length + 1 })] : []),
-    ...(reading.overruledBy ? [phrases.overruled] : []),
-  ].filter(part => part).join(' \u00b7 ')
-}
-
-function earlier(reading: RecordReading, check: RecordCheck, { say }: Frame): string {
-  const { phrases } = say.w
-  const values = { reading: say.reading(reading.value, check), by: reading.by, at: say.at(reading.madeAt) }
-  return reading.replacedBy === null
-    ? `${values.reading} (${fill(phrases.writtenBy, values)})`
-    : fill(reading.reason ? phrases.replaced : phrases.replacedNoReason, { ...values, reason: reading.reason ?? '' }).trim()
-}
-
 /** Looks that were clear, in few words: elements on which the same was looked at by the same people on the same days share a row. */
-function paintClear(frame: Frame, checks: RecordCheck[]): void {
-  if (checks.length === 0) return
+function paintClear(frame: Frame): void {
+  const rows = clearRows(frame)
+  if (rows.length === 0) return
   const { sheet, say } = frame
   const columns = [{ x: PAPER.left, width: 132 }, { x: PAPER.left + 144, width: 230 }, { x: PAPER.left + 386, width: 118 }]
-  const rows = new Map<string, { tags: string[], titles: string, who: string }>()
-  for (const element of new Set(checks.map(check => check.element))) {
-    const own = checks.filter(check => check.element === element)
-    const titles = own.map(check => check.face ? `${check.title} (${say.w.faces[check.face]})` : check.title).join(' \u00b7 ')
-    const readings = own.flatMap(check => check.readings)
-    const who = fill(say.w.phrases.writtenBy, { by: listed([...new Set(readings.map(reading => reading.by))], say.w.and), at: say.days(readings.map(reading => reading.madeAt)) })
-    const row = rows.get(`${titles}\u0000${who}`) ?? { tags: [], titles, who }
-    row.tags.push(tagOf(frame, element))
-    rows.set(`${titles}\u0000${who}`, row)
-  }
   sheet.structure.within('Sect', () => {
     heading(frame, say.w.titles.clear)
     sheet.structure.within('Table', () => {
       tableRow(frame, columns, [say.w.labels.element, say.w.labels.checks, say.w.labels.who], { head: true, before: 0 })
-      for (const { tags, titles, who } of rows.values()) tableRow(frame, columns, [listed(tags, say.w.and), titles, who], { marks: [{ column: 1, state: 'conforms' }] })
+      for (const { tags, titles, who } of rows) tableRow(frame, columns, [listed(tags, say.w.and), titles, who], { marks: [{ column: 1, state: 'conforms' }] })
     })
   })
 }
@@ -159,16 +104,14 @@ function paintSetAside(frame: Frame): void {
   const { record, sheet, say } = frame
   const checks = record.checks.filter(check => check.verdict === 'notInspected' || check.verdict === 'notApplicable')
   if (checks.length === 0) return
-  const { whys, verdicts, phrases, titles } = say.w
+  const { verdicts, titles } = say.w
   const columns = [{ x: PAPER.left, width: 46 }, { x: PAPER.left + 50, width: 200 }, { x: PAPER.left + 262, width: 242 }]
   sheet.structure.within('Sect', () => {
     heading(frame, titles.setAside, 90)
     sheet.structure.within('Table', () => {
       tableRow(frame, columns, [say.w.labels.element, say.w.labels.checks, say.w.labels.state], { head: true, before: 0 })
       for (const check of checks) {
-        const aside = check.setAside
-        const why = aside ? [whys[aside.why as keyof typeof whys] ?? aside.why, aside.words, fill(phrases.writtenBy, { by: aside.by, at: say.at(aside.at) })].filter(part => part).join(', ') : ''
-        tableRow(frame, columns, [tagOf(frame, check.element), check.title, [verdicts[check.verdict], why].filter(part => part).join(': ')], { marks: [{ column: 2, state: check.verdict }] })
+        tableRow(frame, columns, [tagOf(frame, check.element), check.title, [verdicts[check.verdict], asideWords(check, frame)].filter(part => part).join(': ')], { marks: [{ column: 2, state: check.verdict }] })
       }
     })
   })

@@ -125,7 +125,7 @@ export function notSeenOf(telling: Telling): string[] {
     const faces = elements.get(element)?.faces
     if (!faces || verdict === 'notInspected' || (faces.outer.ground.finished && faces.inner.ground.finished)) continue
     const open = faces.outer.ground.finished ? faces.inner.ground : faces.outer.ground
-    const what = [open.comingThickness ? say.length(open.comingThickness) : '', open.coming ?? ''].filter(part => part).join(' ')
+    const what = open.coming && open.comingThickness ? fill(phrases.thickOf, { x: say.length(open.comingThickness), what: open.coming }) : open.coming ?? ''
     ground.set(what, [...ground.get(what) ?? [], tagOf(telling, element)])
   }
   for (const [what, tags] of ground) lines.push(fill(what ? phrases.groundComing : phrases.groundOpen, { tags: listed(tags, say.w.and), what }))

@@ -1,1 +1,0 @@
-export { liveDrawing } from '../../shared/record/liveDrawing'
