@@ -77,7 +77,7 @@ async function expectAllThere(who: Visitor, round: StoryAt, known: Acknowledged)
   for (const [id, number] of known.entries) expect(numbers.get(id), id).toBe(number)
   for (const [digest, bytes] of known.photos) expect((await who.send('GET', `/api/photos/${digest}`)).bytes.equals(bytes), digest).toBe(true)
   const fresh = fold(entries.map((one) => { const read = readEntry(one, { number: one.number }); if (read.state === 'refused') throw new Error(read.refusal.message); return read.entry }), round.bases, { basis: round.basis })
-  const { rows } = await story.admin.query('select s.outcome, s.accepted, r.accepted as "of" from round_state s join round r on r.id = s.round_id where r.id = $1', [round.round])
+  const { rows } = await story.admin.query(`select s.outcome || jsonb_build_object('checks', (select jsonb_agg(c.outcome order by c.at) from check_state c where c.round_id = s.round_id)) as outcome, s.accepted, r.accepted as "of" from round_state s join round r on r.id = s.round_id where r.id = $1`, [round.round])
   expect(rows[0].accepted).toBe(rows[0].of)
   expect(canonicalJson(rows[0].outcome)).toBe(canonicalJson(JSON.parse(JSON.stringify(fresh))))
 }

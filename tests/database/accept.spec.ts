@@ -7,6 +7,8 @@ import { fold } from '#shared/round/fold'
 import { tasksFor } from '#shared/round/makeBasis'
 import type { RoundOutcome } from '#shared/round/outcome'
 import { readEntry } from '#shared/entry/readEntry'
+import { readOutcome } from '../../server/database/queries/state'
+import { withSession } from '../../server/database/withSession'
 import { acceptEntries } from '../../server/services/entry/acceptEntries'
 import { pullEntries } from '../../server/services/entry/pullEntries'
 import { refoldAll } from '../../server/services/round/refold'
@@ -273,8 +275,7 @@ describe('a bad entry', () => {
     expect(states(await push(story, [strange]))).toEqual(['accepted'])
     const { entries } = await pullEntries(ana, story.round, 0)
     expect(entries).toEqual([{ number: 1, ...strange }])
-    const { rows } = await scene.admin.query<{ outcome: RoundOutcome }>('select outcome from round_state where round_id = $1', [story.round])
-    expect(rows[0]!.outcome.unknown).toHaveLength(1)
+    expect((await withSession(ana, tx => readOutcome(tx, story.round)))!.unknown).toHaveLength(1)
   })
 
   it('comes back letter by letter, whatever its words', async () => {
@@ -310,13 +311,14 @@ describe('late entries', () => {
 
 describe('the kept state', () => {
   const keptOf = async (story: StoryAt) => {
-    const [round, checks, deficiencies, accepted] = await Promise.all([
-      scene.admin.query<{ outcome: RoundOutcome, accepted: number }>('select outcome, accepted from round_state where round_id = $1', [story.round]),
+    const [outcome, round, checks, deficiencies, accepted] = await Promise.all([
+      withSession(ana, tx => readOutcome(tx, story.round)),
+      scene.admin.query<{ accepted: number }>('select accepted from round_state where round_id = $1', [story.round]),
       scene.admin.query('select element_id as element, check_id as check, face, verdict, settled, read_again as "readAgain" from check_state where round_id = $1', [story.round]),
       scene.admin.query('select id, tag, element_id as element, check_id as check, class, state, assigned_to as "assignedTo", due, outcome from deficiency_state where round_id = $1', [story.round]),
       scene.admin.query('select accepted from round where id = $1', [story.round]),
     ])
-    return { outcome: round.rows[0]?.outcome, accepted: round.rows[0]?.accepted, of: accepted.rows[0]!.accepted, checks: checks.rows, deficiencies: deficiencies.rows }
+    return { outcome, accepted: round.rows[0]?.accepted, of: accepted.rows[0]!.accepted, checks: checks.rows, deficiencies: deficiencies.rows }
   }
   /** A fold of what the database holds, by the shared rules alone. */
   const freshOf = async (story: StoryAt): Promise<RoundOutcome> => {

@@ -48,6 +48,10 @@ export async function basesOf(tx: Tx, jobId: string): Promise<{ digest: string, 
   return (await tx.client.query<{ digest: string, text: string }>('select digest, text from basis where organisation_id = app_organisation() and job_id = $1 order by created_at', [jobId])).rows
 }
 
+export async function basisDigestsOf(tx: Tx, jobId: string): Promise<string[]> {
+  return (await tx.client.query<{ digest: string }>('select digest from basis where organisation_id = app_organisation() and job_id = $1 order by created_at', [jobId])).rows.map(row => row.digest)
+}
+
 export async function peopleOf(tx: Tx): Promise<FieldBundle['people']> {
   const { rows } = await tx.client.query<FieldBundle['people'][number]>(
     `select a.id as "accountId", a.name, m.role from membership m join account a on a.id = m.account_id where m.organisation_id = app_organisation() and m.ended_at is null order by a.name`)

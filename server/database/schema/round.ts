@@ -77,7 +77,7 @@ export const entryAside = pgTable('entry_aside', {
   foreignKey({ columns: [table.organisationId, table.roundId], foreignColumns: [round.organisationId, round.id] }),
 ])
 
-/** The fold as kept for lists, written in the accepting transaction; `npm run refold` rebuilds it. */
+/** The fold as kept for lists, written in the accepting transaction; `npm run refold` rebuilds it. Its checks stand in rows of their own. */
 export const roundState = pgTable('round_state', {
   organisationId: organisationId(),
   roundId: uuid('round_id').notNull(),
@@ -88,6 +88,7 @@ export const roundState = pgTable('round_state', {
   foreignKey({ columns: [table.organisationId, table.roundId], foreignColumns: [round.organisationId, round.id] }),
 ])
 
+/** One check of the fold, whole, so that a push writes only the checks that it changes. `at` is its place in the outcome. */
 export const checkState = pgTable('check_state', {
   organisationId: organisationId(),
   roundId: uuid('round_id').notNull(),
@@ -98,6 +99,8 @@ export const checkState = pgTable('check_state', {
   verdict: text('verdict', { enum: VERDICTS }).notNull(),
   settled: boolean('settled').notNull(),
   readAgain: boolean('read_again').notNull(),
+  at: integer('at').notNull().default(0),
+  outcome: jsonb('outcome').notNull().default({}),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.roundId, table.elementId, table.checkId, table.face] }),
   foreignKey({ columns: [table.organisationId, table.roundId], foreignColumns: [round.organisationId, round.id] }),

@@ -11,7 +11,7 @@ import type { Session, Tx } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
 import * as entries from '../../database/queries/entry'
 import { notFound } from '../failure'
-import { rememberEntries } from '../round/foldRound'
+import { rememberRound } from '../round/foldRound'
 import { keepState } from '../round/keepState'
 
 const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
@@ -30,15 +30,20 @@ interface Candidate { wire: WireEntry, entry: KeptEntry, offered: Offered | null
 export async function acceptEntries(who: Session, roundId: string, wires: WireEntry[]): Promise<{ accepted: number, results: PushResult[] }> {
   const offered = wires.map(wire => read(wire, who, roundId))
   const twins = pairTwins(offered)
-  const { accepted, all } = await withSession(who, async (tx) => {
+  const { accepted, held } = await withSession(who, async (tx) => {
     const round = await entries.lockRound(tx, roundId)
     if (!round) throw notFound('round')
-    const accepted = await accept(tx, round, await sort(tx, round.jobId, offered.filter(one => one.result.state === 'accepted' && !twins.has(one))))
-    if (accepted.length === 0) return { accepted: round.accepted, all: [] }
-    await entries.setAccepted(tx, roundId, round.accepted)
-    return { accepted: round.accepted, all: await keepState(tx, round, accepted) }
+    const good = await accept(tx, round, await sort(tx, round.jobId, offered.filter(one => one.result.state === 'accepted' && !twins.has(one))))
+    if (good.length === 0) return { accepted: round.accepted, held: null }
+    const held = await keepState(tx, round, good.map(one => one.entry), async () => {
+      await entries.insertEntries(tx, good)
+      // Held by an earlier push, sent again or not.
+      await entries.dropAside(tx, good.map(one => one.entry))
+      await entries.setAccepted(tx, roundId, round.accepted)
+    })
+    return { accepted: round.accepted, held }
   })
-  if (all.length > 0) rememberEntries(roundId, accepted, all)
+  if (held) rememberRound(roundId, accepted, held)
   for (const [one, first] of twins) one.result = first.result.state === 'accepted' ? { ...first.result, state: 'resent' } : first.result
   return { accepted, results: offered.map(one => one.result) }
 }
@@ -102,10 +107,10 @@ async function sort(tx: Tx, jobId: string, offered: Offered[]): Promise<Candidat
 }
 
 /**
- * Numbers and stores whatever names only what is here, of this push and of what was held, as often as something new lets something in. What still waits is
- * held. Returns what was accepted, in order.
+ * Numbers whatever names only what is here, of this push and of what was held, as often as something new lets something in. What still waits is held.
+ * Returns what is to be stored, in order.
  */
-async function accept(tx: Tx, round: entries.LockedRound, fresh: Candidate[]): Promise<KeptEntry[]> {
+async function accept(tx: Tx, round: entries.LockedRound, fresh: Candidate[]): Promise<Candidate[]> {
   const offeredIds = new Set(fresh.map(one => one.entry.envelope.id))
   const held = (await entries.heldOf(tx, round.id)).flatMap((wire): Candidate[] => {
     const outcome = readEntry(wire, { sha256 })
@@ -136,8 +141,5 @@ async function accept(tx: Tx, round: entries.LockedRound, fresh: Candidate[]): P
     offered.result = { ...offered.result, state: 'held' }
     await entries.putAside(tx, entry, wire, 'held')
   }
-  await entries.insertEntries(tx, good)
-  // Held by an earlier push, sent again or not.
-  await entries.dropAside(tx, good.map(one => one.entry))
-  return good.map(one => one.entry)
+  return good
 }
