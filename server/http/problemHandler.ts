@@ -12,7 +12,7 @@ export default async function problemHandler(error: H3Error, event: H3Event): Pr
   const cause = error.cause instanceof Failure ? error.cause : error as unknown as Error
   const failure = cause instanceof Failure ? cause : null
   const status = failure ? FAILURES[failure.code] : databaseStatus(cause) ?? (error.statusCode >= 400 && error.statusCode < 500 ? error.statusCode : 500)
-  if (status >= 500) logger.error({ path: event.method, code: (cause as { code?: string }).code, stack: cause.stack?.replace(/:.*\n/, '\n') }, 'a request failed')
+  if (status >= 500) logger.error({ path: event.method, code: codeOf(cause), stack: cause.stack?.replace(/:.*\n/, '\n') }, 'a request failed')
   setResponseHeaders(event, { 'content-type': 'application/problem+json', 'cache-control': 'no-store' })
   if (failure?.retryAfterSeconds) setResponseHeader(event, 'retry-after', failure.retryAfterSeconds)
   setResponseStatus(event, status)
@@ -26,8 +26,11 @@ export default async function problemHandler(error: H3Error, event: H3Event): Pr
   }))
 }
 
+/** The code of an error, or of the one that it wraps. */
+const codeOf = (error: Error) => (error as { code?: string }).code ?? ((error.cause ?? {}) as { code?: string }).code
+
 /** A database that is down, restarting or out of connections is "not now", which a device may try again. */
 function databaseStatus(error: Error): number | null {
-  const code = (error as { code?: string }).code ?? ((error.cause ?? {}) as { code?: string }).code ?? ''
+  const code = codeOf(error) ?? ''
   return /^(ECONNREFUSED|ECONNRESET|EPIPE|57P0[123]|08\w{3}|53\w{3}|57014|55P03|40P01)$/.test(code) || /connection timeout|Connection terminated|connection error|timeout exceeded/i.test(error.message) ? 503 : null
 }

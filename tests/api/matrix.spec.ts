@@ -2,6 +2,7 @@ import { readdirSync, readFileSync } from 'node:fs'
 import { join, relative, resolve } from 'node:path'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { may } from '#shared/permission/permission'
+import { DEMO_PASSWORD } from '../../server/demo/people'
 import { CLIENT_OF, emailOf, layDemoGround, type DemoActor, type DemoGround } from '../helpers/demoGround'
 import { ROUTES, statusFor, type Call, type RouteRow, type Side } from '../helpers/routeTable'
 import { Visitor, type Answer } from '../helpers/visitor'
@@ -35,6 +36,9 @@ async function sideOf(key: Side['key']): Promise<Side> {
   }
 }
 
+/** Not all jobs are given to the crew, or what is given and what is there would be the same. */
+const takeFromCrew = () => demo.admin.query(`delete from job_given g using job j where j.id = g.job_id and g.account_id = $1 and j.title in ('Plant yard', 'Ball court')`, [one.accounts.crew])
+
 async function signAllIn(): Promise<void> {
   for (const key of ['tarnbeck', 'osprey'] as const) for (const actor of ACTORS) visitors.set(`${key} ${actor}`, await demo.visitor(key, actor))
 }
@@ -43,13 +47,9 @@ beforeAll(async () => {
   demo = await layDemoGround()
   await signAllIn()
   ;[one, other] = [await sideOf('tarnbeck'), await sideOf('osprey')]
-  // Not all jobs are given to the crew, or what is given and what is there would be the same.
-  await demo.admin.query(`delete from job_given g using job j where j.id = g.job_id and g.account_id = $1 and j.title in ('Plant yard', 'Ball court')`, [one.accounts.crew])
+  await takeFromCrew()
 }, 300_000)
-afterAll(async () => {
-  if (process.env.KEEP_LOG) (await import('node:fs')).writeFileSync('/tmp/matrix.log', demo.server.log())
-  await demo.end()
-})
+afterAll(() => demo.end())
 
 const nobody = () => new Visitor(demo.server.baseURL)
 const visitorFor = async (row: RouteRow, key: Side['key'], actor: DemoActor) => row.ownSession ? demo.visitor(key, actor) : visitors.get(`${key} ${actor}`)!
@@ -203,6 +203,8 @@ describe('queries', () => {
 
 describe('what is asked for by another\'s id', () => {
   it('gives crew nothing of a job that was not given to them, on any path', async () => {
+    // Tags that were assigned above gave them the job of each.
+    await takeFromCrew()
     const { rows: [{ id: jobId, round }] } = await demo.admin.query(`select j.id, r.id as round from job j join round r on r.job_id = j.id where j.title = 'Ball court'`)
     const closed = { ...one, jobId, roundId: round }
     for (const row of ROUTES.filter(each => /\[(jobId|roundId)\]/.test(each.file) && each.permission !== 'public' && may('crew', each.permission))) {
@@ -229,5 +231,37 @@ describe('what is asked for by another\'s id', () => {
     const manager = visitors.get('osprey manager')!
     expect((await send(manager, { method: 'GET', path: `/api/jobs?siteId=${one.siteId}` })).json.rows).toEqual([])
     expect((await send(manager, { method: 'GET', path: `/api/numbers?authorityId=${one.authorityId}` })).json).toEqual([])
+  })
+})
+
+describe('a fault of ours', () => {
+  it('is told without the inside, and logged by its code without a text', async () => {
+    await demo.admin.query('alter table site rename column address to address_elsewhere')
+    try {
+      const answer = await visitors.get('tarnbeck manager')!.send('GET', '/api/sites')
+      expectProblem(answer, 'a broken query')
+      expect(answer).toMatchObject({ status: 500, json: { type: '/problems/ours' } })
+      // 42703 is PostgreSQL's "undefined column".
+      expect(demo.server.log().trim().split('\n').at(-1)).toContain('"code":"42703"')
+    }
+    finally { await demo.admin.query('alter table site rename column address_elsewhere to address') }
+  })
+})
+
+// Last: the log of everything above.
+describe('the server\'s log', () => {
+  it('holds ids alone: no name, address, e-mail, telephone, word of anybody, password or token', async () => {
+    const log = demo.server.log()
+    expect(log.split('\n').length).toBeGreaterThan(2)
+    const { rows } = await demo.admin.query<{ text: string }>(`
+      select name as text from account union select email from account union select name from contact union select email from contact union select phone from contact union select name from client
+      union select name from site union select address from site union select name from organisation union select phone from organisation union select title from job union select onsite_name from job
+      union select permit from job union select payload->>'words' from entry where payload ? 'words' union select payload->>'note' from entry where payload ? 'note' union select reason from (select standing_reason as reason from record) r`)
+    const texts = rows.map(row => row.text).filter(text => text && text.length > 3)
+    expect(texts.length).toBeGreaterThan(60)
+    const secrets = [DEMO_PASSWORD, ...[...visitors.values()].flatMap(visitor => visitor.secrets()), ...(await demo.ground.mails()).flatMap(mail => [...mail.text.matchAll(/\/link\/([\w-]{43})/g)].map(found => found[1]!))]
+    expect(secrets.length).toBeGreaterThan(10)
+    expect([...texts, ...secrets].filter(text => log.includes(text))).toEqual([])
+    expect(log).not.toMatch(/[\w.+-]+@[\w-]+\.\w+/)
   })
 })

@@ -11,6 +11,11 @@ export class Visitor {
     return twin
   }
 
+  /** What must never be written anywhere. */
+  secrets(): string[] {
+    return [...this.cookies.values()]
+  }
+
   async send(method: string, path: string, body?: unknown, headers: Record<string, string> = {}): Promise<Answer> {
     const raw = body === undefined || typeof body === 'string' || body instanceof Uint8Array
     const response = await fetch(`${this.baseURL}${path}`, {

@@ -102,6 +102,8 @@ export const job = pgTable('job', {
   foreignKey({ columns: [table.organisationId, table.siteId], foreignColumns: [site.organisationId, site.id] }),
   foreignKey({ columns: [table.organisationId, table.clientId], foreignColumns: [client.organisationId, client.id] }),
   index('job_needed').on(table.organisationId, table.neededBy, table.id),
+  // The list's own order: a page reads as many rows as it shows.
+  index('job_order').on(table.organisationId, sql`coalesce(${table.neededBy}, date '9999-12-31')`, table.id).where(sql`state <> 'closed'`),
   index('job_state').on(table.organisationId, table.state, table.neededBy, table.id),
   index('job_site').on(table.organisationId, table.siteId),
 ])

@@ -1,0 +1,1 @@
+CREATE INDEX "job_order" ON "job" USING btree ("organisation_id",coalesce("needed_by", date '9999-12-31'),"id") WHERE state <> 'closed';
