@@ -310,8 +310,14 @@ describe('the main job', () => {
 
   step('corrects both with a photo, and reads them again', async () => {
     const { page } = field
+    // A pad hides the rail: one goes back from it, then along the rail.
+    const toTags = async () => {
+      const tags = page.getByRole('link', { name: say('base.place.tags'), exact: true })
+      if (!await tags.isVisible()) await within(page, 'link', 'walk.pass.backThere').click()
+      await tags.click()
+    }
     for (const reading of ['clear', '1 1/2'] as const) {
-      await page.getByRole('link', { name: say('base.place.tags'), exact: true }).click()
+      await toTags()
       await heading(page, say('deficiency.part.toCorrect'))
       await page.getByLabel(say('deficiency.photoCorrected'), { exact: true }).first().setInputFiles(await photo(reading === 'clear' ? 60 : 160))
       const dialog = page.getByRole('dialog')
@@ -331,21 +337,22 @@ describe('the main job', () => {
       }
       await page.getByRole('status').filter({ hasText: say('base.verdict.conforms') }).first().waitFor()
     }
-    await page.getByRole('link', { name: say('base.place.tags'), exact: true }).click()
+    await toTags()
     await heading(page, say('deficiency.part.settled'))
     await keepPicture(page, 'main-22-tags-settled-phone')
   })
 
-  step('answers what is left, and sets aside with a reason what wants another instrument', async () => {
+  step('answers some of what is left one by one, and sets the rest aside with a reason', async () => {
     const { page } = field
     const job = page.url().replace(/(\/w\/[^/]+).*/, '$1')
     for (const tag of ['R1', 'G1']) {
       await open(page, `${job}/check`)
-      await page.getByRole('link', { name: new RegExp(tag) }).click()
+      await page.getByRole('main').getByRole('listitem').getByRole('link', { name: new RegExp(tag) }).click()
+      await page.waitForURL(/\/check\/[^/]+$/)
       const element = page.url()
       const left = () => page.getByRole('region').or(page.locator('section')).filter({ has: page.getByRole('heading', { name: new RegExp(`^(${say('walk.check.oneByOne')}|${say('walk.check.byGroup')})$`) }) }).getByRole('link')
       const tried = new Set<string>()
-      for (let n = 0; n < 60; n++) {
+      for (let n = 0; n < 3; n++) {
         await open(page, element)
         await page.getByRole('link', { name: say('walk.check.allElements') }).waitFor()
         const hrefs = await left().evaluateAll(links => links.map(link => link.getAttribute('href')!))
