@@ -39,6 +39,29 @@ describe('the rooms of the house', () => {
     expect(found).toEqual([])
   })
 
+  it('keeps SQL in server/database: services and routes call it by name', () => {
+    const found = ['server/api', 'server/routes', 'server/services', 'server/http', 'server/mail', 'server/storage'].flatMap(filesUnder)
+      .filter(file => /[`'"]\s*(select|insert into|update|delete from)\s+\w/.test(readFileSync(file, 'utf8'))).map(file => relative(root, file))
+    // A health probe and the advisory lock of a sealing are about the connection, not about rows.
+    expect(found.filter(file => !['server/services/health.ts', 'server/services/record/sealRecord.ts'].includes(file))).toEqual([])
+  })
+
+  it('has no circle among the words of the services', () => {
+    const graph = new Map<string, Set<string>>()
+    const fileOf = (place: string) => `${place}.ts`
+    for (const file of filesUnder('server/services')) graph.set(relative(root, file), new Set(importsOf(file).map(specifier => placeOf(specifier, file)).filter((place): place is string => place !== null && place.startsWith('server/services')).map(fileOf)))
+    const circles: string[] = []
+    const visit = (file: string, path: string[]): void => {
+      if (path.includes(file)) { circles.push([...path.slice(path.indexOf(file)), file].join(' > ')); return }
+      if (done.has(file)) return
+      for (const next of graph.get(file) ?? []) visit(next, [...path, file])
+      done.add(file)
+    }
+    const done = new Set<string>()
+    for (const file of graph.keys()) visit(file, [])
+    expect(circles).toEqual([])
+  })
+
   it('keeps shared free of clock and random', () => {
     const found = filesUnder('shared').filter(file => /Date\.now\(|Math\.random\(|new Date\(\)/.test(readFileSync(file, 'utf8'))).map(file => relative(root, file))
     expect(found).toEqual([])
@@ -65,6 +88,12 @@ describe('routes', () => {
     expect(permission === 'public' || permission! in PERMISSIONS, `permission of ${name}`).toBe(true)
     if (/\[\w+\]/.test(name)) expect(text, `${name} checks its path`).toMatch(/params[:,]/)
     if (/\.(post|put|patch)\.ts$/.test(name) && !/photos|^check\/index/.test(name)) expect(text, `${name} checks its body`).toMatch(/body[:,]/)
+  })
+
+  it('has a row for each in the table that calls every route as every role', () => {
+    const table = readFileSync(join(root, 'tests/helpers/routeTable.ts'), 'utf8')
+    const missing = [...filesUnder('server/api'), ...filesUnder('server/routes')].map(file => relative(join(root, 'server'), file)).filter(file => !table.includes(`file: '${file}'`))
+    expect(missing).toEqual([])
   })
 
   it('names every permission in at least one route or rule of entries', () => {

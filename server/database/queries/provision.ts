@@ -11,6 +11,14 @@ export async function listProvisions(tx: Tx, authorityId: string | null, clientI
         and authority_id is not distinct from $1 and client_id is not distinct from $2 order by measurand, id`, [authorityId, clientId])).rows.map(row => row.provision)
 }
 
+/** The local numbers that hold at a job: of its site's authority, of its client's specification, and of the organisation itself. */
+export async function provisionsInForce(tx: Tx, job: { authorityId: string | null, clientId: string }): Promise<Provision[]> {
+  const { rows } = await tx.client.query<{ provision: Provision }>(
+    `select provision from provision where organisation_id = app_organisation() and ended_at is null
+        and (authority_id = $1 or client_id = $2 or (authority_id is null and client_id is null)) order by id`, [job.authorityId, job.clientId])
+  return rows.map(row => row.provision)
+}
+
 export async function isThere(tx: Tx, id: string): Promise<boolean> {
   return (await tx.client.query('select from provision where organisation_id = app_organisation() and id = $1', [id])).rowCount === 1
 }
