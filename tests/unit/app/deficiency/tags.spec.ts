@@ -94,7 +94,7 @@ describe('the next word on a tag', () => {
     const [row] = folded(story).rows
     const lists = answersOf('referred', row!, story.entries)
     expect(lists.map(list => list.length)).toEqual(row!.of.standing.map(() => 1))
-    for (const answers of lists) story.write('referred', SAID.referred, { element: RUN, check: 'post-spacing', author: PEOPLE.manager, answers })
+    for (const answers of lists) story.write('referred', SAID.referred as Omit<PayloadOf<'referred'>, 'salt'>, { element: RUN, check: 'post-spacing', author: PEOPLE.manager, answers })
     expect(folded(story).outcome.deficiencies[0]!.state).toBe('endedReferred')
   })
 })

@@ -1,4 +1,4 @@
-import { nextTick, ref, shallowRef } from 'vue'
+import { nextTick, ref, shallowRef, type Ref } from 'vue'
 import { describe, expect, it } from 'vitest'
 import { useLineDraft } from '~/composables/useLineDraft'
 import { addSide, renameSide } from '#shared/line/editLine'
@@ -8,9 +8,9 @@ import { schoolLine } from '~~/tests/fixtures/line/schoolLine'
 const keys = (line: Line | null | undefined) => line?.sides.map(side => side.key).join('')
 
 describe('steps of a line in the making', () => {
-  for (const [name, hold] of [['a deep ref', ref], ['a shallow ref', shallowRef]] as const) {
+  for (const [name, hold] of [['a deep ref', (line: Line | null) => ref(line) as Ref<Line | null>], ['a shallow ref', (line: Line | null) => shallowRef(line) as Ref<Line | null>]] as const) {
     it(`can be taken back and done again, held in ${name}`, async () => {
-      const line = hold<Line | null>(schoolLine)
+      const line = hold(schoolLine)
       const draft = useLineDraft(line)
       expect(draft.canTakeBack.value).toBe(false)
       draft.change(addSide(draft.now()!, 'a'))

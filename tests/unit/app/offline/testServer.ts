@@ -2,7 +2,7 @@ import type { Me } from '#shared/api/account'
 import type { EntryKind, PayloadOf, PhotoRef } from '#shared/entry/entry'
 import { makeEntry } from '#shared/entry/makeEntry'
 import { sha256Hex } from '#shared/record/canonicalJson'
-import type { FieldBundle, PullAnswer, PushResult } from '#shared/sync/sync'
+import type { FieldBundle, PullAnswer, PushResult, PushAnswer } from '#shared/sync/sync'
 import { uuidv7 } from 'uuidv7'
 import type { EntryRow } from '~/offline/fieldDatabase'
 import { headOf } from '~/offline/fieldStore'
@@ -90,7 +90,7 @@ export class TestServer {
     take: () => this.request('take', () => answer(200, this.bundle())),
     push: (_round, { entries, empty }) => this.request('push', () => {
       const ids = entries.map(one => headOf(one.envelope).id)
-      if (this.tooLarge(ids)) return answer(413, null, 'tooLarge')
+      if (this.tooLarge(ids)) return answer<PushAnswer>(413, null, 'tooLarge')
       this.pushes.push(ids)
       const results = entries.map(one => this.offer(one))
       this.empty = empty && results.every(one => one.state === 'accepted' || one.state === 'resent')

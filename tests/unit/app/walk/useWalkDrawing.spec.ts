@@ -49,7 +49,7 @@ describe('the drawing of a check in hand', () => {
   it('leaves a limit on another datum out, unless it was brought to ours', () => {
     const one = standing('latch-height-leaf', ['pool', 'reach'])
     const drawing = drawingOf({ one, element: gate, limits: LIMITS, value: null, system: 'imperial', language: 'en' })!
-    expect((drawing.parameters as { limits: { limit: Limit }[] }).limits.map(each => each.limit.id)).toEqual(['pool'])
+    expect((drawing.parameters as unknown as { limits: { limit: Limit }[] }).limits.map(each => each.limit.id)).toEqual(['pool'])
   })
 })
 
