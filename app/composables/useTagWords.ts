@@ -36,7 +36,7 @@ export function useTagWords(system: MaybeRefOrGetter<System>) {
     title: (row: TagRow, single = true) => plainly(row) ? t(`deficiency.found.${row.finding}`) : [row.check?.title[language.value] ?? row.of.check, single ? margin(row) : ''].filter(Boolean).join(', '),
     where(rows: readonly TagRow[]) {
       const element = rows[0]!.element
-      const places = [...new Set(rows.map(row => speech.value.place(row.of.place)))].filter(Boolean).join('; ')
+      const places = [...new Set(rows.map(row => [speech.value.place(row.of.place), rows.length > 1 ? margin(row) : ''].filter(Boolean).join(', ')))].filter(Boolean).join('; ')
       return [element ? [element.tag, element.name].filter(Boolean).join(' ') : '', places].filter(Boolean).join(', ')
     },
     standing(row: TagRow, part: TagPart, known = false): TagLine[] {
