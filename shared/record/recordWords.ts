@@ -228,8 +228,11 @@ export function stepWords({ say }: Telling, step: RecordStep, at: number): strin
   const { phrases, helds, findings, decisions } = say.w
   if (step.erased) return phrases.erased
   const person = step.person ?? step.by
-  const words = step.words ? `: ${step.words}` : ''
-  const deviation = [...(step.condition ? [fill(phrases.condition, { words: step.condition })] : []), ...(step.until ? [fill(phrases.until, { on: say.day(step.until) })] : [])].map(part => `, ${part}`).join('')
+  // What somebody closed with a full stop goes on in this sentence.
+  const open = (said: string) => said.replace(/\.$/, '')
+  const terms = step.condition ?? step.until
+  const words = step.words ? `: ${terms ? open(step.words) : step.words}` : ''
+  const deviation = [...(step.condition ? [fill(phrases.condition, { words: step.until ? open(step.condition) : step.condition })] : []), ...(step.until ? [fill(phrases.until, { on: say.day(step.until) })] : [])].map(part => `, ${part}`).join('')
   switch (step.kind) {
     case 'reading': {
       const look = step.value?.method === 'look' ? (step.value.found === 'clear' ? phrases.clear : findings[step.value.finding ?? 'other']) : step.value ? say.reading(step.value, { unit: step.value.method === 'measure' ? 'length' : null }) : ''
