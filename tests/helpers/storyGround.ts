@@ -1,7 +1,7 @@
 import pg from 'pg'
 import { hashPassword } from '../../server/services/account/password'
 import { makeRound, makeStoryOrganisation, type StoryAt } from './roundAt'
-import { PEOPLE } from './roundStory'
+import type { PEOPLE } from './roundStory'
 import { layServerGround, startServer, type RunningServer, type ServerGround } from './server'
 import { Visitor } from './visitor'
 
