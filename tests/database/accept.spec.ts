@@ -12,7 +12,7 @@ import { withSession } from '../../server/database/withSession'
 import { acceptEntries } from '../../server/services/entry/acceptEntries'
 import { pullEntries } from '../../server/services/entry/pullEntries'
 import { refoldAll } from '../../server/services/round/refold'
-import type { StoryAt} from '../helpers/roundAt';
+import type { StoryAt } from '../helpers/roundAt'
 import { makeRound, makeStoryOrganisation, senderOf, wireOf } from '../helpers/roundAt'
 import { bay, gap, GATE, look, ORGANISATION, PEOPLE, RUN } from '../helpers/roundStory'
 import { makeScene, type Scene } from '../helpers/scene'
