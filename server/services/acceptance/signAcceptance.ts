@@ -50,7 +50,7 @@ async function answerOffer(who: Who, organisationId: string, jobId: string, cont
   if (there.length > 0 && there[0]!.kind === 'deviationAccepted' && offer) return offer
   if (!offer || !seen.includes(offer.deficiency)) throw notFound('deviation')
   if (offer.state !== 'offered' || offer.offer !== input.deviation!.offer) throw new Failure('stale', 'This deviation is not offered like that any more: it was answered, corrected or offered anew. Load the page again and read it.')
-  if (offer.class !== 'ownerMayAccept') throw new Failure('notAllowed', 'This deficiency is of a class that no owner may accept. It has to be corrected, or decided by the authority.')
+  if (offer.class !== 'ownerMayAccept') throw new Failure('conflict', 'This deficiency is of a class that no owner may accept. It has to be corrected, or decided by the authority.')
   if (offer.readings.length !== 1) throw new Failure('notReady', 'Readings at this place disagree. Ask the contractor which one stands before you answer.')
   if (found!.round.state !== 'open') throw new Failure('frozen', 'A record of this job is being sealed at this moment. Try again in a minute.')
   await writeDeskEntry(staff, who.accountId, {
