@@ -7,8 +7,8 @@ import { SYSTEMS } from '../measure/length'
 export const digestSchema = z.string().regex(/^[0-9a-f]{64}$/)
 const uuid = z.string().uuid()
 const length = z.number().int().safe()
-/** An instant with its offset, as the device's clock had it. */
-const instant = z.string().datetime({ offset: true }).regex(/^(19[7-9]\d|2[01]\d\d)-.*(Z|[+-](0\d|1[0-4]):?[0-5]\d)$/, 'a year from 1970 to 2199, an offset of at most 14 hours')
+/** An instant with its offset, as the device's clock had it. (`datetime()` of zod makes its pattern anew for every text.) */
+const instant = z.string().regex(z.datetimeRegex({ offset: true })).regex(/^(19[7-9]\d|2[01]\d\d)-.*(Z|[+-](0\d|1[0-4]):?[0-5]\d)$/, 'a year from 1970 to 2199, an offset of at most 14 hours')
 const words = z.string().trim().min(1).max(2000)
 
 /**
