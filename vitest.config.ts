@@ -9,8 +9,8 @@ const project = (name: string, include: string[], more: object = {}) => ({ resol
 export default defineConfig({
   test: {
     projects: [
-      project('unit', ['tests/unit/**/*.spec.ts']),
-      project('published', ['tests/published/**/*.spec.ts']),
+      project('unit', ['tests/unit/**/*.spec.ts'], { testTimeout: 60_000 }),
+      project('published', ['tests/published/**/*.spec.ts'], { testTimeout: 60_000 }),
       project('documents', ['tests/documents/**/*.spec.ts'], { testTimeout: 60_000, hookTimeout: 60_000 }),
       project('database', ['tests/database/**/*.spec.ts'], { testTimeout: 60_000, hookTimeout: 120_000 }),
       project('api', ['tests/api/**/*.spec.ts'], { fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 }),
