@@ -110,14 +110,14 @@ describe.each(ROUTES)('$file', (row) => {
     else expect({ status: answer.status, type: answer.json.type }).toEqual({ status: 401, type: '/problems/signInNeeded' })
   })
 
-  it.runIf(row.foreign !== null)('shows the other organisation\'s people nothing', async () => {
+  if (row.foreign !== null) it('shows the other organisation\'s people nothing', async () => {
     for (const actor of allowed) {
       const answer = await send(await visitorFor(row, 'osprey', actor), await row.call(one, demo, actor))
       expect({ actor, status: answer.status }).toEqual({ actor, status: statusFor(row.foreign ?? undefined, actor, 404) })
     }
   })
 
-  it.runIf(row.rows)('answers with exactly the rows that are theirs', async () => {
+  if (row.rows) it('answers with exactly the rows that are theirs', async () => {
     for (const [key, side] of [['tarnbeck', one], ['osprey', other]] as const) {
       for (const actor of allowed) {
         const answer = await send(await visitorFor(row, key, actor), await row.call(side, demo, actor))
