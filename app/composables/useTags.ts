@@ -137,9 +137,9 @@ export function readAgainAt(jobId: string, { of, face }: Pick<TagRow, 'of' | 'fa
   return { path: `/w/${jobId}/check/${of.element}/${of.check}`, query: { ...(face && { face }), ...(of.place?.bay && { bay: of.place.bay }), again: of.id } }
 }
 
-/** An hour as people on site say it: `3 pm`, `3:30 pm`; in Spanish `15:00`. */
+/** An hour as people on site say it: `3 pm`, `3:30 pm`; in Spanish `15:00`. What stands after the minutes (a zone) is left out. */
 export function hourWords(clock: string, language: 'en' | 'es'): string {
-  const [hour = 0, minute = 0] = clock.split(':').map(Number)
+  const [hour = 0, minute = 0] = clock.slice(0, 5).split(':').map(Number)
   if (language === 'es') return `${hour}:${String(minute).padStart(2, '0')}`
   return `${hour % 12 || 12}${minute ? `:${String(minute).padStart(2, '0')}` : ''} ${hour < 12 ? 'am' : 'pm'}`
 }

@@ -120,7 +120,7 @@ describe('what is offered', () => {
 })
 
 describe('hours', () => {
-  it.each([['15:00', '3 pm', '15:00'], ['00:30', '12:30 am', '0:30'], ['12:00', '12 pm', '12:00'], ['09:05', '9:05 am', '9:05']])('%s is said %s', (clock, english, spanish) => {
+  it.each([['15:00', '3 pm', '15:00'], ['00:30', '12:30 am', '0:30'], ['12:00', '12 pm', '12:00'], ['09:05', '9:05 am', '9:05'], ['15:12 EST', '3:12 pm', '15:12']])('%s is said %s', (clock, english, spanish) => {
     expect(hourWords(clock, 'en')).toBe(english)
     expect(hourWords(clock, 'es')).toBe(spanish)
   })
