@@ -48,13 +48,13 @@ export function formatLength(amount: Length, { system, style = 'inches', denomin
   const steps = imperial
     ? [{ per: denominator, decimals: 0 }, ...FINER_INCH.filter(step => step.decimals > 0 || step.per > denominator)]
     : [{ per: 1, decimals: 0 }, ...FINER_MILLIMETRE]
-  // One of exactly this length has no side to be hidden: it is shown by the same figure, whatever that is.
-  const others = beside.filter(other => other !== amount)
-  const step = steps.find(({ per }) => {
+  // A step fits that leaves everything beside it on its side: exactly this length too, where a figure can say it at all; the last steps are finer than the
+  // unit of length itself, so one always fits the others.
+  const fits = ({ per }: Step, others: readonly Length[]) => {
     const count = rounded(amount, size, per)
-    // The last steps are finer than the unit of length itself, so one always fits.
     return others.every(other => compareShown(count, per, other, size) === compareLengths(amount, other))
-  })!
+  }
+  const step = steps.find(one => fits(one, beside)) ?? steps.find(one => fits(one, beside.filter(other => other !== amount)))!
   const count = rounded(amount, size, step.per)
   return { ...shown(count, step, imperial, imperial && style === 'feet'), exact: compareShown(count, step.per, amount, size) === 0 }
 }

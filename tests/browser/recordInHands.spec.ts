@@ -23,6 +23,7 @@ beforeAll(async () => {
   browser = await launchBrowser()
   desk = await visit(browser, demo.server.baseURL, 'desk')
   client = await visit(browser, demo.server.baseURL, 'phone')
+  for (const { page } of [desk, client]) page.setDefaultTimeout(120_000)
 }, 300_000)
 afterAll(async () => {
   await browser?.close()
@@ -82,8 +83,9 @@ describe('a client with a mail in their hands', () => {
     }
     expect((await demo.admin.query('select 1 from link where redeemed_at is not null')).rowCount).toBe(0)
     await page.getByRole('button', { name: say('account.link.contact.button') }).click()
-    await page.waitForURL(/\/records\//)
-    await page.getByRole('heading', { level: 1 }).waitFor()
+    await page.waitForURL(/\/records\//, { waitUntil: 'commit' })
+    // The page before stays until this one has come: its own sign is the way to the file.
+    await page.locator('a[href$=".pdf"]').first().waitFor()
     await keepPicture(page, 'hands-03-record')
     expect(await axeFinds(page)).toEqual([])
   })

@@ -3,6 +3,7 @@ import fc from 'fast-check'
 import Fraction from 'fraction.js'
 import { compareLengths } from '#shared/measure/compareLengths'
 import { formatLength } from '#shared/measure/formatLength'
+import { INCH } from '#shared/measure/length'
 import { parseLength } from '#shared/measure/parseLength'
 
 const inch = (inches: number) => inches * 8_128_000
@@ -88,9 +89,11 @@ describe('formatLength', () => {
     }))
   })
 
-  it('shows a limit of the very same length by the very same figure, also one that no tape can say', () => {
+  it('shows a limit of the very same length exactly where a figure can, and never gives up where none can', () => {
+    expect(formatLength(INCH / 25, { system: 'imperial', beside: [INCH / 25] }).text).toBe('0.040 in')
     fc.assert(fc.property(amounts, fc.constantFrom('imperial' as const, 'metric' as const), (amount, system) => {
-      expect(formatLength(amount, { system, beside: [amount] }).text).toBe(formatLength(amount, { system }).text)
+      const shown = formatLength(amount, { system, beside: [amount] })
+      expect(shown.exact || formatLength(amount, { system }).text === shown.text).toBe(true)
     }))
   })
 })
