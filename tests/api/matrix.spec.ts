@@ -242,7 +242,7 @@ describe('a fault of ours', () => {
       expectProblem(answer, 'a broken query')
       expect(answer).toMatchObject({ status: 500, json: { type: '/problems/ours' } })
       // 42703 is PostgreSQL's "undefined column".
-      expect(demo.server.log().trim().split('\n').at(-1)).toContain('"code":"42703"')
+      await expect.poll(() => demo.server.log(), { timeout: 20_000 }).toContain('"code":"42703"')
     }
     finally { await demo.admin.query('alter table site rename column address_elsewhere to address') }
   })
@@ -260,6 +260,8 @@ describe('the server\'s log', () => {
     const texts = rows.map(row => row.text).filter(text => text && text.length > 3)
     expect(texts.length).toBeGreaterThan(60)
     const secrets = [DEMO_PASSWORD, ...[...visitors.values()].flatMap(visitor => visitor.secrets()), ...(await demo.ground.mails()).flatMap(mail => [...mail.text.matchAll(/\/link\/([\w-]{43})/g)].map(found => found[1]!))]
+      // A cookie may also hold a plain word, as the language's "en".
+      .filter(secret => secret.length > 8)
     expect(secrets.length).toBeGreaterThan(10)
     expect([...texts, ...secrets].filter(text => log.includes(text))).toEqual([])
     expect(log).not.toMatch(/[\w.+-]+@[\w-]+\.\w+/)
