@@ -36,10 +36,12 @@ async function axeFinds(page: Page) {
   return violations.flatMap(({ id, nodes }) => nodes.slice(0, 3).map(node => `${id}: ${node.html.slice(0, 160)}`))
 }
 
-/** Drops a file once the page is alive: before that nobody listens to the field. */
+/** The page is alive: before that nobody listens to its fields and buttons. */
+const alive = (page: Page) => page.waitForFunction(() => (window as unknown as { useNuxtApp?: () => { isHydrating?: boolean } }).useNuxtApp?.().isHydrating === false)
+
 async function drop(page: Page, file: string) {
   await page.goto('/check')
-  await page.waitForFunction(() => (window as unknown as { useNuxtApp?: () => { isHydrating?: boolean } }).useNuxtApp?.().isHydrating === false)
+  await alive(page)
   await page.locator('input[type=file]').setInputFiles(file)
 }
 
@@ -48,6 +50,7 @@ describe('a manager at the desk', () => {
     const { page } = desk
     await page.goto('/jobs')
     await page.getByRole('heading', { level: 1, name: say('account.signIn.title') }).waitFor()
+    await alive(page)
     await page.getByLabel(say('account.email')).fill(emailOf('tarnbeck', 'manager'))
     await page.getByLabel(say('account.password')).fill('not this one')
     await page.getByRole('button', { name: say('account.signIn.button') }).click()
@@ -80,6 +83,7 @@ describe('a client with a mail in their hands', () => {
     for (let time = 0; time < 2; time++) {
       await page.goto(`/link/${token}`)
       await page.getByRole('button', { name: say('account.link.contact.button') }).waitFor()
+      await alive(page)
     }
     expect((await demo.admin.query('select 1 from link where redeemed_at is not null')).rowCount).toBe(0)
     await page.getByRole('button', { name: say('account.link.contact.button') }).click()
