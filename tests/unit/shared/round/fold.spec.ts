@@ -1,3 +1,4 @@
+// Over 400 lines: one rule of the fold a test, side by side, so that what contracts.md 2 says can be read through in one place.
 import { describe, expect, it } from 'vitest'
 import type { AnyEntry, Place } from '#shared/entry/entry'
 import { INCH } from '#shared/measure/length'
