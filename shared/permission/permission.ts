@@ -26,6 +26,8 @@ export const PERMISSIONS = {
   'job.read': field,
   'job.write': office,
   'line.write': staff,
+  'trial.read': staff,
+  'trial.write': staff,
   'round.read': field,
   'round.take': field,
   'round.basis': office,

@@ -138,6 +138,17 @@ export const ROUTES: RouteRow[] = [
   },
   { file: 'api/jobs/[jobId]/records.post.ts', permission: 'record.seal', call: side => ({ method: 'POST', path: `/api/jobs/${side.signedJobId}/records`, body: { id: '7d3f8c52-6a41-4a3b-9a57-1f1f4e0f6c01', scope: 'final', overDevices: null } }), ok: 202 },
   {
+    file: 'api/jobs/[jobId]/trials/index.get.ts', permission: 'trial.read', call: side => get(`/api/jobs/${side.jobId}/trials`),
+    rows: { ids: idsOf, staff: `select t.id from trial t join job j on j.organisation_id = t.organisation_id and j.id = t.job_id where t.organisation_id = $1 and j.title in ('Upper lawn', 'Bus loop')` },
+  },
+  {
+    file: 'api/jobs/[jobId]/trials/index.put.ts', permission: 'trial.write', maxBytes: 60_000,
+    async call(side, { admin }) {
+      const { rows: [{ id: element }] } = await admin.query('select e.id from element e join job j on j.organisation_id = e.organisation_id and j.site_id = e.site_id where j.id = $1 order by e.tag limit 1', [side.jobId])
+      return { method: 'PUT', path: `/api/jobs/${side.jobId}/trials`, body: { id: randomUUID(), element, trial: { kind: 'frame', version: 1, system: 'imperial', width: 390_144_000, height: 487_680_000, first: 625_000_000, second: 624_000_000, error: 508_000 } } }
+    },
+  },
+  {
     file: 'api/numbers/[id].delete.ts', permission: 'numbers.write', again: 404,
     async call(side, { admin }) {
       const { authorityId, provision: one } = provision(side, 'pool')

@@ -134,6 +134,22 @@ export const lineVersion = pgTable('line_version', {
   foreignKey({ columns: [table.organisationId, table.jobId], foreignColumns: [job.organisationId, job.id] }),
 ])
 
+/** A trial calculation that somebody kept with an element (shared/trial): no reading, no part of a record. Only ever added. */
+export const trial = pgTable('trial', {
+  organisationId: organisationId(),
+  id: uuid('id').notNull(),
+  jobId: uuid('job_id').notNull(),
+  elementId: uuid('element_id').notNull(),
+  trial: jsonb('trial').notNull(),
+  writtenBy: uuid('written_by').notNull().references(() => account.id),
+  createdAt: createdAt(),
+}, table => [
+  primaryKey({ columns: [table.organisationId, table.id] }),
+  foreignKey({ columns: [table.organisationId, table.jobId], foreignColumns: [job.organisationId, job.id] }),
+  foreignKey({ columns: [table.organisationId, table.elementId], foreignColumns: [element.organisationId, element.id] }),
+  index('trial_job').on(table.organisationId, table.jobId, table.createdAt),
+])
+
 /** What a walk is held against (shared/round/basis.ts): canonical text named by its SHA-256. Never edited. */
 export const basis = pgTable('basis', {
   organisationId: organisationId(),
