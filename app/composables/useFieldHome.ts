@@ -107,6 +107,8 @@ export function useFieldHome(): FieldHome {
     waiting: computed(() => here.value.reduce((sum, job) => sum + (job.tally?.waiting ?? 0) + (job.tally?.heldBack ?? 0), 0)),
     async take(jobId) {
       const reply = await desk.value!.sender.take(jobId)
+      // Whoever puts the phone away now may have no signal at the fence: it is along when what others wrote is along.
+      if (reply.body) await desk.value!.sender.sendNow()
       if (reply.body) await readHere()
       return reply.body ? null : reply.problem?.code || 'noSignal'
     },

@@ -66,9 +66,12 @@ export class FieldSender {
     return this.running ??= this.runs().finally(() => { this.running = null })
   }
 
-  /** Takes a job along, in turn with the runs. */
-  take(jobId: string) {
-    return takeAlong(this.run, jobId)
+  /** Takes a job along. What others wrote on it is fetched at once, whether or not a run that knows nothing of this job is under way. */
+  async take(jobId: string) {
+    const reply = await takeAlong(this.run, jobId)
+    const { id, accepted } = reply.body?.round ?? { id: '', accepted: 0 }
+    if (accepted > ((await this.db.rounds.get(id))?.cursor ?? 0)) void this.sendNow()
+    return reply
   }
 
   private get run() {

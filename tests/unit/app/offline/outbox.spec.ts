@@ -24,6 +24,15 @@ describe('what goes first', () => {
 describe('a push', () => {
   const rows = fc.array(fc.record({ size: fc.integer({ min: 1, max: 60 }), photos: fc.integer({ min: 0, max: 14 }), round: fc.constantFrom('r', 's') }), { minLength: 1, maxLength: 30 })
     .map(list => list.map((row, at) => one(at, { ...row, photos: Array.from({ length: row.photos }, (_, n) => `${at}-${n}`) })))
+  it('fits into the 25 MB that the server reads of one request, whatever script it is written in', () => {
+    // The longest entry that is taken at all (shared/entry/entry.ts: 20,000 and 2,200,000), in signs of three bytes and in quotes that are escaped twice.
+    for (const sign of ['犬', '"']) {
+      const text = JSON.stringify(sign.repeat(2_200_000)).slice(0, 2_200_000)
+      expect(Buffer.byteLength(JSON.stringify({ device: 'd', entries: [{ envelope: sign.repeat(20_000), payload: text }], empty: false }))).toBeLessThan(25_000_000)
+    }
+    // Longer ones never ride together.
+    expect(nextBatch([one(1, { size: 900_000 }), one(2, { size: 900_000 })])).toHaveLength(1)
+  })
   it('is of one round, from its head, without a gap, within its bounds, and never empty', () => {
     fc.assert(fc.property(rows, fc.integer({ min: 1, max: 8 }), (list, most) => {
       const batch = nextBatch(list, most, 100)
