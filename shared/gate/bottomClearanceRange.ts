@@ -123,7 +123,8 @@ function measuredRises({ width, to }: ClearanceDemand, ground: Exclude<Ground, {
 function bounds(rises: Rises, width: number, rake: number, margin: Length, closedAtMost: Length) {
   const lift = Math.max(0, rises.swing - width * rake)
   const hollow = Math.max(...rises.closed.map(({ distance, height }) => rake * distance - height))
-  return { low: Math.ceil(margin + lift - SPECK), high: Math.floor(closedAtMost - hollow + SPECK), lift }
+  // + 0: a negative zero would be no length that equals 0.
+  return { low: Math.ceil(margin + lift - SPECK) + 0, high: Math.floor(closedAtMost - hollow + SPECK) + 0, lift }
 }
 
 /** The least change of rake that opens a window; none when no rake does. The width of the window is concave in the rake, so its kinks are enough to search. */
