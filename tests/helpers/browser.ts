@@ -1,4 +1,4 @@
-import { mkdirSync } from 'node:fs'
+import { mkdirSync, writeFileSync } from 'node:fs'
 import path from 'node:path'
 import { chromium, type Browser, type BrowserContext, type BrowserContextOptions, type Page } from 'playwright-core'
 
@@ -33,7 +33,12 @@ export async function visit(browser: Browser, baseURL: string, size: Size, optio
 
 /** Keeps a picture of the screen under tests/.artefacts (not in the repository), to be looked at: as it is seen on a phone, the whole page at a desk. */
 export async function keepPicture(page: Page, name: string, fullPage = page.viewportSize()!.width > sizes.phone.viewport.width): Promise<void> {
+  keepFile(`${name}.png`, await page.screenshot({ fullPage }))
+}
+
+/** Keeps a file there, to be opened by hand. */
+export function keepFile(name: string, bytes: Buffer): void {
   const folder = path.resolve(import.meta.dirname, '../.artefacts')
   mkdirSync(folder, { recursive: true })
-  await page.screenshot({ path: path.join(folder, `${name}.png`), fullPage })
+  writeFileSync(path.join(folder, name), bytes)
 }
