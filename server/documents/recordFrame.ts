@@ -40,20 +40,31 @@ export function columnHeading({ sheet }: Frame, words: string, x: number, top: n
 
 export interface Column { x: number, width: number, head?: string }
 
-/** A row of a table whose cells are texts; the first is the row's head where `head` says so. Keeps a row on one page. */
+/**
+ * A row of a table whose cells are texts; the first is the row's head where `head` says so. Stands on one page; what is taller than a page goes on
+ * in rows of the same head.
+ */
 export function tableRow({ sheet }: Frame, columns: Column[], cells: (Words | null)[], { head = false, size = 8.6, before = 5, after = 5, rule = true, marks = [] as { column: number, state: DiamondState }[] } = {}): void {
   const inset = (at: number) => marks.some(mark => mark.column === at) ? 15 : 0
-  const blocks = columns.map((column, at) => sheet.lay(cells[at] ?? '', column.width - inset(at), { size, lead: size * 1.38, ...(head && { weight: 500, role: 'soft' as const }) }))
-  const height = Math.max(...blocks.map(block => block.height))
-  sheet.room(before + height + after)
-  const top = sheet.y + before
-  sheet.structure.within('TR', () => blocks.forEach((block, at) => {
-    const column = columns[at]!
-    const mark = marks.find(one => one.column === at)
-    if (mark) placeDiamond(sheet, mark.state, column.x, top + size * 0.1, size * 1.2)
-    sheet.structure.within(head || at === 0 ? 'TH' : 'TD', () => sheet.place(block, column.x + inset(at), top, null), head ? { scope: 'Column' } : at === 0 ? { scope: 'Row' } : {})
-  }))
-  sheet.y = top + height + after
+  const lead = size * 1.38
+  const blocks = columns.map((column, at) => sheet.lay(cells[at] ?? '', column.width - inset(at), { size, lead, ...(head && { weight: 500, role: 'soft' as const }) }))
+  const lines = Math.max(...blocks.map(block => block.lines.length))
+  const linesFrom = (y: number) => Math.floor((PAPER.bottom - y - before - after) / lead + 0.001)
+  sheet.room(before + Math.min(lines, linesFrom(PAPER.top)) * lead + after)
+  for (let from = 0; from < lines;) {
+    if (from > 0) sheet.newPage()
+    const [fits, top] = [Math.min(lines - from, linesFrom(sheet.y)), sheet.y + before]
+    sheet.structure.within('TR', () => blocks.forEach((whole, at) => {
+      const column = columns[at]!
+      const first = at === 0 && whole.lines.length <= from ? 0 : from
+      const mark = from === 0 && marks.find(one => one.column === at)
+      if (mark) placeDiamond(sheet, mark.state, column.x, top + size * 0.1, size * 1.2)
+      const block = { ...whole, lines: whole.lines.slice(first, first + fits) }
+      sheet.structure.within(head || at === 0 ? 'TH' : 'TD', () => sheet.place(block, column.x + inset(at), top, null), head ? { scope: 'Column' } : at === 0 ? { scope: 'Row' } : {})
+    }))
+    sheet.y = top + fits * lead + after
+    from += fits
+  }
   if (rule) sheet.rule(sheet.y, head ? {} : { width: 0.75, role: 'line' })
 }
 

@@ -4,7 +4,7 @@ import { PAPER } from './paper'
 import type { Frame } from './recordFrame'
 import { heading, placeDiamond, tableRow } from './recordFrame'
 import type { Block, Words } from './sheet'
-import { asideWords, circumstancesOf, clearRows, conditionsOf, diamondStateOf, earlierWords, isPlainLook, READING_ORDER, tagOf } from '../../shared/record/recordWords'
+import { asideRows, circumstancesOf, clearRows, conditionsOf, diamondStateOf, earlierWords, isPlainLook, READING_ORDER, tagOf } from '../../shared/record/recordWords'
 import { fill, listed } from '../../shared/record/wording'
 
 const PICTURE = { x: PAPER.left + 37.5, width: 112.5 }
@@ -17,9 +17,8 @@ export function paintReadings(frame: Frame): void {
   // Sorting is stable: within one verdict the rows keep the order of the walk.
   shown.sort((a, b) => READING_ORDER.indexOf(a.verdict) - READING_ORDER.indexOf(b.verdict))
   if (shown.length > 0) {
-    sheet.newPage()
     sheet.structure.within('Sect', () => {
-      heading(frame, say.w.titles.readings)
+      heading(frame, say.w.titles.readings, 300)
       shown.forEach((check, at) => paintReading(frame, check, at === 0))
     })
   }
@@ -89,7 +88,7 @@ function paintClear(frame: Frame): void {
   const rows = clearRows(frame)
   if (rows.length === 0) return
   const { sheet, say } = frame
-  const columns = [{ x: PAPER.left, width: 132 }, { x: PAPER.left + 144, width: 230 }, { x: PAPER.left + 386, width: 118 }]
+  const columns = [{ x: PAPER.left, width: 62 }, { x: PAPER.left + 74, width: 312 }, { x: PAPER.left + 398, width: 106 }]
   sheet.structure.within('Sect', () => {
     heading(frame, say.w.titles.clear)
     sheet.structure.within('Table', () => {
@@ -101,18 +100,15 @@ function paintClear(frame: Frame): void {
 
 /** What was set aside, with its reason and who set it aside. */
 function paintSetAside(frame: Frame): void {
-  const { record, sheet, say } = frame
-  const checks = record.checks.filter(check => check.verdict === 'notInspected' || check.verdict === 'notApplicable')
-  if (checks.length === 0) return
-  const { verdicts, titles } = say.w
-  const columns = [{ x: PAPER.left, width: 46 }, { x: PAPER.left + 50, width: 200 }, { x: PAPER.left + 262, width: 242 }]
+  const rows = asideRows(frame)
+  if (rows.length === 0) return
+  const { sheet, say } = frame
+  const columns = [{ x: PAPER.left, width: 62 }, { x: PAPER.left + 74, width: 250 }, { x: PAPER.left + 336, width: 168 }]
   sheet.structure.within('Sect', () => {
-    heading(frame, titles.setAside, 90)
+    heading(frame, say.w.titles.setAside, 90)
     sheet.structure.within('Table', () => {
       tableRow(frame, columns, [say.w.labels.element, say.w.labels.checks, say.w.labels.state], { head: true, before: 0 })
-      for (const check of checks) {
-        tableRow(frame, columns, [tagOf(frame, check.element), check.title, [verdicts[check.verdict], asideWords(check, frame)].filter(part => part).join(': ')], { marks: [{ column: 2, state: check.verdict }] })
-      }
+      for (const { tags, titles, words, verdict } of rows) tableRow(frame, columns, [listed(tags, say.w.and), titles, words], { marks: [{ column: 2, state: verdict }] })
     })
   })
 }

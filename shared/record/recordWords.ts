@@ -4,6 +4,7 @@ import { elementsOf } from '../line/line'
 import type { LineMarks } from '../line/lineMark'
 import { placeAlong, tapeOf } from '../line/lineMark'
 import type { Verdict } from '../round/outcome'
+import { elementsSeen } from './recordSentence'
 import type { RecordCheck, RecordDeficiency, RecordDocument, RecordPhoto, RecordReading, RecordStep } from './record'
 import { Speech } from './speech'
 import { fill, listed, sentence, WORDING } from './wording'
@@ -104,10 +105,11 @@ export function askedOf({ record, say }: Telling): string[] {
 export function notSeenOf(telling: Telling): string[] {
   const { record, say, elements } = telling
   const { phrases, whys } = say.w
+  const seen = elementsSeen(record.checks)
   const groups = new Map<string, { whole: boolean, why: string, tags: Set<string>, checks: number }>()
   for (const check of record.checks) {
     if (check.verdict !== 'notInspected') continue
-    const whole = record.elements.find(one => one.element === check.element)?.verdict === 'notInspected'
+    const whole = !seen.has(check.element)
     const why = check.setAside ? check.setAside.words ?? whys[check.setAside.why as keyof typeof whys] ?? check.setAside.why : ''
     const key = `${whole ? 'whole' : check.element}\u0000${why}`
     const group = groups.get(key) ?? { whole, why, tags: new Set<string>(), checks: 0 }
@@ -217,10 +219,27 @@ export function clearRows(telling: Telling): { tags: string[], titles: string, w
   return [...rows.values()]
 }
 
-/** Why a check was set aside, and by whom. */
-export function asideWords({ setAside }: RecordCheck, { say }: Telling): string {
-  const { whys, phrases } = say.w
-  return setAside ? [whys[setAside.why as keyof typeof whys] ?? setAside.why, setAside.words, fill(phrases.writtenBy, { by: setAside.by, at: say.at(setAside.at) })].filter(part => part).join(', ') : ''
+/** What was set aside, in few words: checks for which the same person gave the same reason on the same day share a row, and so do elements to which it happened alike. */
+export function asideRows(telling: Telling): { tags: string[], titles: string, words: string, verdict: 'notInspected' | 'notApplicable' }[] {
+  const { record, say } = telling
+  const { whys, phrases, verdicts } = say.w
+  const ofElement = new Map<string, { element: string, titles: string[], words: string, verdict: 'notInspected' | 'notApplicable' }>()
+  for (const { element, title, face, verdict, setAside } of record.checks) {
+    if (verdict !== 'notInspected' && verdict !== 'notApplicable') continue
+    const by = setAside && fill(phrases.writtenBy, { by: setAside.by, at: say.days([setAside.at]) })
+    const words = [verdicts[verdict], [setAside && (whys[setAside.why as keyof typeof whys] ?? setAside.why), setAside?.words, by].filter(part => part).join(', ')].filter(part => part).join(': ')
+    const row = ofElement.get(`${element}\u0000${words}`) ?? { element, titles: [], words, verdict }
+    row.titles.push(face ? `${title} (${say.w.faces[face]})` : title)
+    ofElement.set(`${element}\u0000${words}`, row)
+  }
+  const rows = new Map<string, ReturnType<typeof asideRows>[number]>()
+  for (const { element, titles: own, ...rest } of ofElement.values()) {
+    const titles = own.join(' \u00b7 ')
+    const row = rows.get(`${titles}\u0000${rest.words}`) ?? { tags: [], titles, ...rest }
+    row.tags.push(tagOf(telling, element))
+    rows.set(`${titles}\u0000${rest.words}`, row)
+  }
+  return [...rows.values()]
 }
 
 /** One step in the history of a deficiency, in a sentence. `at` is its place in the history. */

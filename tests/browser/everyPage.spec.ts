@@ -1,4 +1,3 @@
-// Not run by `npm test` yet: no run of it has passed. Name it .spec.ts once it was seen to pass.
 import { readdirSync } from 'node:fs'
 import path from 'node:path'
 import AxeBuilder from '@axe-core/playwright'
