@@ -214,6 +214,7 @@ describe('the main job', () => {
     await press(page, 'job.line.save')
     await page.waitForURL(/\/jobs\/[^/]+$/)
     await heading(page, SITE)
+    await page.getByRole('link', { name: say('job.changeLine') }).waitFor()
     await keepPicture(page, 'main-09-job')
   })
 
