@@ -1,4 +1,3 @@
-// Not run by `npm test` yet: written ahead of a run that passed from the first step to the last. Name it .spec.ts once each step was seen to pass.
 import { createHash } from 'node:crypto'
 import { readdirSync, readFileSync, statSync } from 'node:fs'
 import path from 'node:path'
