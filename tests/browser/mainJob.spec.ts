@@ -6,7 +6,7 @@ import sharp from 'sharp'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { hashPassword } from '../../server/services/account/password'
 import { readBuiltIn } from '../../server/services/checklist/readBuiltIn'
-import { keepFile, keepPicture, launchBrowser, visit, type Visit } from '../helpers/browser'
+import { keepFile, keepPicture, launchBrowser, visit, type Size, type Visit } from '../helpers/browser'
 import { linkIn } from '../helpers/demoGround'
 import { run, testFolder, tryRun } from '../helpers/outsideTools'
 import { layServerGround, startServer, type RunningServer, type ServerGround } from '../helpers/server'
@@ -24,6 +24,12 @@ const SITE = 'Lindenhall Nursery'
 const GAP = readBuiltIn().flatMap(checklist => checklist.checks).find(check => check.measurand === 'gap-below')!.title.en
 const LINE = 'all 4 ft high, mesh 1 1/4 in, outer playground\nA Path side\nrun 20 ft, 2 bays\ngate 4 ft, self-closing'
 
+/** Who holds what: the way people mostly do, and the other way round. */
+const HANDS: { name: string, office: Size, field: Size, client: Size }[] = [
+  { name: 'a desk in the office and a phone at the fence', office: 'desk', field: 'phone', client: 'desk' },
+  { name: 'a phone in the office and a wide screen at the fence', office: 'phone', field: 'desk', client: 'phone' },
+]
+
 const say = wordsOf('en')
 const files = testFolder()
 let ground: ServerGround
@@ -35,6 +41,7 @@ let field: Visit
 let client: Visit
 let pdf: Buffer
 let broken: string | null = null
+let keep: (page: Page, name: string) => Promise<void>
 
 /** Each step stands on the one before; after one that did not come through, the others say so and do nothing. */
 const step = (name: string, work: () => Promise<void>) => it(name, async () => {
@@ -44,7 +51,7 @@ const step = (name: string, work: () => Promise<void>) => it(name, async () => {
     await work()
   }
   catch (error) {
-    for (const [who, one] of Object.entries({ office, field, client })) if (one) await keepPicture(one.page, `main-broken-${who}`).catch(() => undefined)
+    for (const [who, one] of Object.entries({ office, field, client })) if (one) await keep(one.page, `broken-${who}`).catch(() => undefined)
     throw error
   }
   broken = null
@@ -99,30 +106,33 @@ async function draw(page: Page, name: string) {
 }
 const bare = (text: string) => text.replace(/\s/g, '')
 
-beforeAll(async () => {
-  ground = await layServerGround()
-  admin = new pg.Pool({ connectionString: ground.database.adminUrl, max: 2 })
-  admin.on('error', () => undefined)
-  const [organisation, account] = [randomUUID(), randomUUID()]
-  await admin.query(`insert into organisation (id, name, code, time_zone) values ($1, 'Penhallow Fencing', 'PF', 'America/Chicago')`, [organisation])
-  await admin.query('insert into account (id, email, name, password_hash) values ($1, $2, $3, $4)', [account, ADMINISTRATOR.email, ADMINISTRATOR.name, await hashPassword(PASSWORD)])
-  await admin.query(`insert into membership (organisation_id, account_id, role) values ($1, $2, 'administrator')`, [organisation, account])
-  server = await startServer({ ground })
-  browser = await launchBrowser()
-  office = await visit(browser, server.baseURL, 'desk')
-  field = await visit(browser, server.baseURL, 'phone')
-  client = await visit(browser, server.baseURL, 'desk')
-}, 180_000)
+afterAll(() => files.remove())
 
-afterAll(async () => {
-  await browser?.close()
-  await server?.stop()
-  await admin?.end()
-  await ground?.remove()
-  files.remove()
-})
+describe.each(HANDS)('the main job, $name', (hands) => {
+  beforeAll(async () => {
+    broken = null
+    keep = (page, name) => keepPicture(page, `main-${hands.field}-${name}`)
+    ground = await layServerGround()
+    admin = new pg.Pool({ connectionString: ground.database.adminUrl, max: 2 })
+    admin.on('error', () => undefined)
+    const [organisation, account] = [randomUUID(), randomUUID()]
+    await admin.query(`insert into organisation (id, name, code, time_zone) values ($1, 'Penhallow Fencing', 'PF', 'America/Chicago')`, [organisation])
+    await admin.query('insert into account (id, email, name, password_hash) values ($1, $2, $3, $4)', [account, ADMINISTRATOR.email, ADMINISTRATOR.name, await hashPassword(PASSWORD)])
+    await admin.query(`insert into membership (organisation_id, account_id, role) values ($1, $2, 'administrator')`, [organisation, account])
+    server = await startServer({ ground })
+    browser = await launchBrowser()
+    office = await visit(browser, server.baseURL, hands.office)
+    field = await visit(browser, server.baseURL, hands.field)
+    client = await visit(browser, server.baseURL, hands.client)
+  }, 180_000)
 
-describe('the main job', () => {
+  afterAll(async () => {
+    await browser?.close()
+    await server?.stop()
+    await admin?.end()
+    await ground?.remove()
+  })
+
   step('the administrator signs in', async () => {
     const { page } = office
     await open(page, '/sign-in')
@@ -130,7 +140,7 @@ describe('the main job', () => {
     await page.getByLabel(say('account.password')).fill(PASSWORD)
     await press(page, 'account.signIn.button')
     await page.waitForURL('**/jobs')
-    await keepPicture(page, 'main-01-jobs-empty')
+    await keep(page, '01-jobs-empty')
   })
 
   step('invites an inspector, who takes part by the link in the mail', async () => {
@@ -141,14 +151,14 @@ describe('the main job', () => {
     await dialog.getByLabel(say('people.name')).fill(INSPECTOR.name)
     await dialog.getByLabel(say('account.email')).fill(INSPECTOR.email)
     await choose(dialog, say('people.does.inspector'))
-    await keepPicture(page, 'main-02-invite')
+    await keep(page, '02-invite')
     await press(dialog, 'people.send')
     await page.getByText(say('people.invited', { email: INSPECTOR.email })).waitFor()
 
     const mail = await ground.mailThat(one => one.envelope.to.includes(INSPECTOR.email))
     await open(field.page, `/link/${linkIn(mail.text)}`)
     await field.page.getByLabel(say('account.newPassword')).fill(PASSWORD)
-    await keepPicture(field.page, 'main-03-invitation-phone')
+    await keep(field.page, '03-invitation')
     await press(field.page, 'account.link.invitation.button')
     await field.page.waitForURL('**/w')
     await heading(field.page, say('walk.home.title'))
@@ -178,7 +188,7 @@ describe('the main job', () => {
     await dialog.getByLabel(say('site.timeZone')).selectOption('America/Chicago')
     await press(dialog, 'site.save')
     await page.getByRole('link', { name: SITE }).waitFor()
-    await keepPicture(page, 'main-04-sites')
+    await keep(page, '04-sites')
   })
 
   step('sets a number that the authority enforces', async () => {
@@ -189,10 +199,10 @@ describe('the main job', () => {
     const dialog = page.getByRole('dialog')
     await dialog.getByLabel(say('numbers.form.atMost')).fill('2 in')
     await dialog.getByLabel(say('numbers.form.citation')).fill('Ordinance 14, section 6')
-    await keepPicture(page, 'main-05-number')
+    await keep(page, '05-number')
     await press(dialog, 'numbers.form.save')
     await page.getByText('Ordinance 14, section 6').first().waitFor()
-    await keepPicture(page, 'main-06-numbers')
+    await keep(page, '06-numbers')
   })
 
   step('makes the job and types its line', async () => {
@@ -204,18 +214,18 @@ describe('the main job', () => {
     await choose(page.getByRole('group', { name: say('job.form.checklists') }), 'Playground')
     await choose(page.getByRole('group', { name: say('job.form.inspectors') }), INSPECTOR.name)
     await page.getByRole('group', { name: say('job.form.onsite') }).getByLabel(say('job.form.name')).fill('Bram Tolle')
-    await keepPicture(page, 'main-07-job-form')
+    await keep(page, '07-job-form')
     await press(page, 'job.form.save')
     await page.waitForURL('**/line')
     await page.getByLabel(say('line.quick.label')).fill(LINE)
     await page.getByLabel(say('line.quick.label')).blur()
     await page.getByRole('button', { name: /R1/ }).first().waitFor()
-    await keepPicture(page, 'main-08-line-typed')
+    await keep(page, '08-line-typed')
     await press(page, 'job.line.save')
     await page.waitForURL(/\/jobs\/[^/]+$/)
     await heading(page, SITE)
     await page.getByRole('link', { name: say('job.changeLine') }).waitFor()
-    await keepPicture(page, 'main-09-job')
+    await keep(page, '09-job')
   })
 
   step('the inspector takes it along and starts the walk', async () => {
@@ -224,10 +234,10 @@ describe('the main job', () => {
     await page.getByRole('button', { name: say('walk.home.take') }).click()
     await page.getByRole('link', { name: SITE }).click()
     await heading(page, SITE)
-    await keepPicture(page, 'main-10-walk-start-phone')
+    await keep(page, '10-walk-start')
     await press(page, 'walk.pass.start')
     await within(page, 'button', 'walk.pass.finding.tieEnd').waitFor()
-    await keepPicture(page, 'main-11-walk-pass-phone')
+    await keep(page, '11-walk-pass')
   })
 
   step('finds a tie end and photographs it', async () => {
@@ -238,10 +248,10 @@ describe('the main job', () => {
     if (await pick.isVisible()) await page.getByRole('main').getByRole('listitem').getByRole('button').first().click()
     await page.locator('input[type=file][capture]').first().setInputFiles(await photo(90))
     await page.getByRole('img', { name: say('walk.sync.photo.alt', { n: 1 }) }).waitFor({ timeout: 60_000 })
-    await keepPicture(page, 'main-12-finding-phone')
+    await keep(page, '12-finding')
     await press(page, 'walk.pass.writeFinding')
     await page.getByText(say('walk.pass.writeOnTape')).waitFor()
-    await keepPicture(page, 'main-13-tag-phone')
+    await keep(page, '13-tag')
     await press(page, 'walk.pass.onWithWalk')
     await within(page, 'button', 'walk.pass.finding.tieEnd').waitFor()
   })
@@ -252,7 +262,7 @@ describe('the main job', () => {
     await context.setOffline(true)
     await page.reload()
     await within(page, 'button', 'walk.pass.oneOn').click()
-    await keepPicture(page, 'main-14-offline-phone')
+    await keep(page, '14-offline')
     await press(page, 'walk.pass.endOf', { tag: 'R1' })
     await heading(page, say('walk.group.endOfRun', { tag: 'R1' }))
     // One of them was not looked at: it is unticked, and stays to be read.
@@ -260,24 +270,24 @@ describe('the main job', () => {
     const covered = await ticks.count()
     expect(covered).toBeGreaterThan(2)
     await page.getByRole('listitem').filter({ has: ticks }).last().click()
-    await keepPicture(page, 'main-15-group-phone')
+    await keep(page, '15-group')
     await press(page, 'walk.group.confirm', {}, covered - 1)
     await press(page, 'walk.pass.endOf', { tag: 'G1' })
     await page.getByRole('button', { name: groupKey }).click()
     await page.getByText(say('walk.pass.passDone', { n: 1 })).waitFor()
-    await keepPicture(page, 'main-16-pass-done-phone')
+    await keep(page, '16-pass-done')
   })
 
   step('reads the tape where the authority has a number, still without a signal', async () => {
     const { page } = field
     await page.getByRole('link', { name: say('walk.pass.seeLeft') }).click()
     await page.getByRole('link', { name: /R1/ }).click()
-    await keepPicture(page, 'main-17-checks-phone')
+    await keep(page, '17-checks')
     await page.getByRole('link').filter({ hasText: 'Marl Township' }).first().click()
     for (const digit of ['3']) await page.getByRole('button', { name: digit, exact: true }).click()
     await page.getByRole('button', { name: say('base.pad.fraction', { fraction: '1/4' }), exact: true }).click()
     await page.getByRole('status').filter({ hasText: say('base.verdict.doesNotConform') }).waitFor()
-    await keepPicture(page, 'main-18-tape-phone')
+    await keep(page, '18-tape')
     await page.getByRole('button', { name: say('base.pad.write', { figure: '3 1/4 in' }) }).click()
     await press(page, 'walk.pass.writeFinding')
     await page.getByText(say('walk.pass.writeOnTape')).waitFor()
@@ -306,7 +316,7 @@ describe('the main job', () => {
     // The photo came with it, in final form: upright, small enough, without what the camera wrote into it.
     const { rows: photos } = await admin.query('select digest from photo')
     expect(photos).toHaveLength(1)
-    await keepPicture(page, 'main-19-all-sent-phone')
+    await keep(page, '19-all-sent')
   })
 
   step('corrects both with a photo, and reads them again', async () => {
@@ -323,7 +333,7 @@ describe('the main job', () => {
       await page.locator('.tag-item input[type=file][capture]').first().setInputFiles(await photo(reading === 'clear' ? 60 : 160))
       const dialog = page.getByRole('dialog')
       await dialog.getByRole('img').first().waitFor({ timeout: 60_000 })
-      await keepPicture(page, `main-20-correct-${reading === 'clear' ? 'first' : 'second'}-phone`)
+      await keep(page, `20-correct-${reading === 'clear' ? 'first' : 'second'}`)
       await press(dialog, 'deficiency.correct.save', {}, 1)
       await page.getByRole('link', { name: new RegExp(`^${say('deficiency.readAgain', { tag: '' }).replace(/\s+/g, '.+')}`) }).first().click()
       const clear = within(page, 'button', 'walk.check.clear')
@@ -333,14 +343,14 @@ describe('the main job', () => {
         await page.getByRole('button', { name: '1', exact: true }).click()
         await page.getByRole('button', { name: say('base.pad.fraction', { fraction: '1/2' }), exact: true }).click()
         await page.getByRole('status').filter({ hasText: say('base.verdict.conforms') }).waitFor()
-        await keepPicture(page, 'main-21-read-again-phone')
+        await keep(page, '21-read-again')
         await page.getByRole('button', { name: say('base.pad.write', { figure: '1 1/2 in' }) }).click()
       }
       await page.getByRole('status').filter({ hasText: say('base.verdict.conforms') }).first().waitFor()
     }
     await toTags()
     await heading(page, say('deficiency.part.settled'))
-    await keepPicture(page, 'main-22-tags-settled-phone')
+    await keep(page, '22-tags-settled')
   })
 
   step('answers some of what is left one by one, and sets the rest aside with a reason', async () => {
@@ -361,7 +371,7 @@ describe('the main job', () => {
         if (!next) break
         tried.add(next)
         await open(page, next)
-        if (n === 0) await keepPicture(page, `main-23-one-check-${tag}-phone`)
+        if (n === 0) await keep(page, `23-one-check-${tag}`)
         if (await answer(page)) await page.waitForURL(url => url.pathname !== new URL(next, server.baseURL).pathname || url.search !== new URL(next, server.baseURL).search)
       }
       await open(page, element)
@@ -369,7 +379,7 @@ describe('the main job', () => {
       const dialog = page.getByRole('dialog')
       await choose(dialog, say('walk.aside.whys.outOfScope'))
       await dialog.getByLabel(say('walk.aside.words')).fill('Read by the township at its own visit.')
-      await keepPicture(page, `main-24-aside-${tag}-phone`)
+      await keep(page, `24-aside-${tag}`)
       await press(dialog, 'walk.aside.write')
       await page.getByText(say('walk.aside.written')).waitFor()
     }
@@ -381,22 +391,22 @@ describe('the main job', () => {
     const { page } = field
     await page.getByRole('link', { name: say('base.place.sign'), exact: true }).click()
     await choose(page, say('signature.scopeHint.final'))
-    await keepPicture(page, 'main-25-sign-phone')
+    await keep(page, '25-sign')
     await page.getByRole('link', { name: /^Look at \d+ picture/ }).click()
     for (let n = 0; n < 10 && await within(page, 'button', 'signature.pictures.nobody').waitFor({ timeout: 3000 }).then(() => true, () => false); n++) {
-      if (n === 0) await keepPicture(page, 'main-26-sign-pictures-phone')
+      if (n === 0) await keep(page, '26-sign-pictures')
       await press(page, 'signature.pictures.nobody')
     }
-    for (const [name, meaning, picture] of [[INSPECTOR.name, 'present', 'main-27-sign-inspector-phone'], [CONTACT.name, 'acceptsWork', 'main-28-sign-contact-phone']] as const) {
+    for (const [name, meaning, picture] of [[INSPECTOR.name, 'present', '27-sign-inspector'], [CONTACT.name, 'acceptsWork', '28-sign-contact']] as const) {
       await page.getByRole('link', { name: new RegExp(`^${name}`) }).click()
       await heading(page, say('signature.signs', { name }))
       await choose(page, say(`signature.meaning.${meaning}`))
       await draw(page, name)
-      await keepPicture(page, picture)
+      await keep(page, picture)
       await press(page, `signature.sign.${meaning}`)
       await page.getByText(say('signature.written', { name })).waitFor()
     }
-    await keepPicture(page, 'main-29-signed-phone')
+    await keep(page, '29-signed')
     await page.getByText(new RegExp(`^${say('base.tally.sent')}`)).first().waitFor({ timeout: 90_000 })
   })
 
@@ -406,15 +416,15 @@ describe('the main job', () => {
     await open(page, '/jobs')
     await page.getByRole('link', { name: new RegExp(SITE) }).first().click()
     await heading(page, SITE)
-    await keepPicture(page, 'main-30-job-signed')
+    await keep(page, '30-job-signed')
     await press(page, 'job.seal.title')
     const dialog = page.getByRole('dialog')
-    await keepPicture(page, 'main-31-seal')
+    await keep(page, '31-seal')
     await press(dialog, 'job.seal.button.final')
     await page.waitForURL('**/records/*')
-    await keepPicture(page, 'main-32-sealing')
+    await keep(page, '32-sealing')
     await within(page, 'button', 'record.send.open').waitFor({ timeout: 120_000 })
-    await keepPicture(page, 'main-33-record')
+    await keep(page, '33-record')
   })
 
   step('sends it, and the client reads the mail and opens its link', async () => {
@@ -423,26 +433,26 @@ describe('the main job', () => {
     const dialog = page.getByRole('dialog')
     await dialog.getByText(CONTACT.name).waitFor()
     await dialog.getByLabel(say('record.send.message')).fill('Thank you for the early start.')
-    await keepPicture(page, 'main-34-send')
+    await keep(page, '34-send')
     await press(dialog, 'record.send.button', {}, 1)
     const mail = await ground.mailThat(one => one.envelope.to.includes(CONTACT.email))
     expect(mail.subject).toContain(SITE)
     expect(mail.text).toContain('Thank you for the early start.')
     expect(mail.attachments.map(one => one.contentType)).toEqual(['application/pdf'])
     await page.getByText(say('record.delivery.handed')).first().waitFor({ timeout: 60_000 })
-    await keepPicture(page, 'main-35-delivery-log')
+    await keep(page, '35-delivery-log')
 
     const path = `/link/${linkIn(mail.text)}`
     const before = await admin.query('select redeemed_at from link where email = $1', [CONTACT.email])
     for (let n = 0; n < 2; n++) await open(client.page, path)
-    await keepPicture(client.page, 'main-36-client-link')
+    await keep(client.page, '36-client-link')
     expect((await admin.query('select redeemed_at from link where email = $1', [CONTACT.email])).rows).toEqual(before.rows)
     await press(client.page, 'account.link.contact.button')
     await client.page.waitForURL('**/records/*')
     await heading(client.page, say('record.scope.final', { n: 1 }))
-    await keepPicture(client.page, 'main-37-client-record')
+    await keep(client.page, '37-client-record')
     await open(client.page, '/site')
-    await keepPicture(client.page, 'main-38-client-site')
+    await keep(client.page, '38-client-site')
     await client.page.goBack()
   })
 
@@ -485,12 +495,12 @@ describe('the main job', () => {
     const stranger = await visit(browser, server.baseURL, 'desk')
     const { page } = stranger
     await open(page, '/check')
-    await keepPicture(page, 'main-39-check')
+    await keep(page, '39-check')
     const file = page.getByLabel(say('check.drop.choose'))
     await file.setInputFiles({ name: 'record.pdf', mimeType: 'application/pdf', buffer: pdf })
     await heading(page, new RegExp(`${say('check.head.genuine')} ${say('check.stands.current')}`))
     await page.getByText(say('check.did.bytes')).waitFor()
-    await keepPicture(page, 'main-40-check-genuine')
+    await keep(page, '40-check-genuine')
 
     const changed = Buffer.from(pdf)
     const at = changed.indexOf('stream') + 40
@@ -498,7 +508,7 @@ describe('the main job', () => {
     await file.setInputFiles({ name: 'changed.pdf', mimeType: 'application/pdf', buffer: changed })
     await press(page, 'check.look.button')
     await heading(page, new RegExp(`${say('check.head.altered')} ${say('check.headStrong.altered')}`))
-    await keepPicture(page, 'main-41-check-altered')
+    await keep(page, '41-check-altered')
     expect(stranger.faults).toEqual([])
     await stranger.context.close()
   })
