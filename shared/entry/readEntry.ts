@@ -1,10 +1,12 @@
-import type { ZodError } from 'zod'
+import type { ZodError, ZodType, ZodTypeDef } from 'zod'
 import { canonicalJson, CanonicalJsonError, parseCanonicalJson, sha256Hex } from '../record/canonicalJson'
 import type { AnyEntry, EntryKind, Envelope, UnknownEntry, WireEntry } from './entry'
 import { envelopeSchema, isKnownKind, PAYLOADS } from './entry'
 import type { EntryRefusal } from './entryRefused'
 import { entryRefusal } from './entryRefused'
 import { subjectRefusal } from './entryRules'
+import type { Sure } from './sure'
+import { sureOf, UNSURE } from './sure'
 
 /** What two texts come to: an entry, an entry of a kind that these rules do not know (keep it), or a refusal. */
 export type EntryRead = { state: 'known', entry: AnyEntry } | { state: 'unknown', entry: UnknownEntry } | { state: 'refused', refusal: EntryRefusal }
@@ -18,6 +20,9 @@ export interface ReadEntryOptions {
   sha256?: (text: string) => string
 }
 
+const sureEnvelope = sureOf(envelopeSchema)
+const surePayload = Object.fromEntries(Object.entries(PAYLOADS).map(([kind, schema]) => [kind, sureOf(schema)])) as Record<EntryKind, Sure>
+
 // \u0000 that is not the tail of an escaped backslash.
 const NUL = /(?:^|[^\\])(?:\\\\)*\\u0000/
 
@@ -27,11 +32,9 @@ const NUL = /(?:^|[^\\])(?:\\\\)*\\u0000/
  */
 export function readEntry(wire: WireEntry, { number = null, mayBeErased = false, sha256 = sha256Hex }: ReadEntryOptions = {}): EntryRead {
   const refused = (refusal: EntryRefusal): EntryRead => ({ state: 'refused', refusal })
-  const raw = readCanonical(wire.envelope, '/envelope')
+  const raw = readAs(wire.envelope, 'envelope', envelopeSchema, sureEnvelope)
   if (raw.refusal) return refused(raw.refusal)
-  const parsed = envelopeSchema.safeParse(raw.value)
-  if (!parsed.success) return refused(entryRefusal('envelope', pointerOf('/envelope', parsed.error), parsed.error.issues[0]?.message))
-  const envelope = parsed.data
+  const envelope = raw.value
   const digest = sha256(wire.envelope)
 
   if (mayBeErased && wire.payload === '') {
@@ -42,13 +45,10 @@ export function readEntry(wire: WireEntry, { number = null, mayBeErased = false,
   if (sha256(wire.payload) !== envelope.payload) return refused(entryRefusal('payloadDigest', '/envelope/payload'))
   if (!isKnownKind(envelope)) return readUnknown(wire, envelope, digest, number)
 
-  const body = readCanonical(wire.payload, '/payload')
+  const kind = envelope.kind as EntryKind
+  const body = readAs<unknown>(wire.payload, 'payload', PAYLOADS[kind], surePayload[kind])
   if (body.refusal) return refused(body.refusal)
-  const payload = PAYLOADS[envelope.kind as EntryKind].safeParse(body.value)
-  if (!payload.success) return refused(entryRefusal('payload', pointerOf('/payload', payload.error), payload.error.issues[0]?.message))
-  const changed = whereChanged(body.value, payload.data, '/payload')
-  if (changed !== null) return refused(entryRefusal('payload', changed, 'no white space at either end'))
-  const entry = { envelope, payload: payload.data, digest, number } as AnyEntry
+  const entry = { envelope, payload: body.value, digest, number } as AnyEntry
   const refusal = subjectRefusal(entry)
   return refusal ? refused(refusal) : { state: 'known', entry }
 }
@@ -66,44 +66,37 @@ function readUnknown(wire: WireEntry, envelope: Envelope, digest: string, number
   return { state: 'unknown', entry: { envelope, payloadText: wire.payload, digest, number } }
 }
 
-function readCanonical(text: string, pointer: string): { value: unknown, refusal: EntryRefusal | null } {
+/** Reads one of the two texts: JSON, canonical, as its schema has it, and nothing that a form's trimming would change. */
+function readAs<T>(text: string, part: 'envelope' | 'payload', schema: ZodType<T, ZodTypeDef, unknown>, sure: Sure): { value: T, refusal: null } | { value: null, refusal: EntryRefusal } {
+  const refused = (refusal: EntryRefusal) => ({ value: null, refusal })
+  const pointer = `/${part}`
   let value: unknown
   try {
     value = JSON.parse(text)
   }
   catch {
-    return { value: null, refusal: entryRefusal('notJson', pointer) }
+    return refused(entryRefusal('notJson', pointer))
   }
-  if (!isCanonical(text, value)) return { value: null, refusal: entryRefusal('notCanonical', pointer) }
-  return { value, refusal: text.includes('\\u0000') && NUL.test(text) ? entryRefusal('nulCharacter', pointer) : null }
+  // The way of nearly every entry.
+  if (!UNSURE.test(text) && sure(value, text, 0) === text.length) return { value: value as T, refusal: null }
+  if (!isCanonical(text, value)) return refused(entryRefusal('notCanonical', pointer))
+  if (NUL.test(text)) return refused(entryRefusal('nulCharacter', pointer))
+  const parsed = schema.safeParse(value)
+  if (!parsed.success) return refused(entryRefusal(part, pointerOf(pointer, parsed.error), parsed.error.issues[0]?.message))
+  const changed = whereChanged(value, parsed.data, pointer)
+  return changed === null ? { value: parsed.data, refusal: null } : refused(entryRefusal(part, changed, 'no white space at either end'))
 }
 
-/**
- * Whether a text is the RFC 8785 form of its value. JSON.stringify writes numbers and texts as RFC 8785 does and keeps the order of keys, so an equal
- * text with ordered keys is canonical; only what differs (keys like "1", halves of surrogate pairs, doubled keys) goes the slow way.
- */
 function isCanonical(text: string, value: unknown): boolean {
   try {
-    if (JSON.stringify(value) === text && keysAscend(value) && !text.includes('\\ud')) return true
     return canonicalJson(value) === text
   }
   catch (error) {
-    // Nesting so deep that the engine gives up is no entry of ours either.
-    if (error instanceof CanonicalJsonError || error instanceof RangeError) return false
+    // Of a number that is too large the schema says where it stands. Nesting so deep that the engine gives up is no entry of ours either.
+    if (error instanceof CanonicalJsonError) return error.code === 'numberTooLarge'
+    if (error instanceof RangeError) return false
     throw error
   }
-}
-
-function keysAscend(value: unknown): boolean {
-  if (typeof value !== 'object' || value === null) return true
-  if (Array.isArray(value)) return value.every(keysAscend)
-  let before: string | null = null
-  for (const key in value) {
-    if (before !== null && before >= key) return false
-    before = key
-    if (!keysAscend((value as Record<string, unknown>)[key])) return false
-  }
-  return true
 }
 
 /** Schemas trim words for the forms that share them; in a text that is signed over nothing may change. Returns where it did. */

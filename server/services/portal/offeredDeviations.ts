@@ -1,4 +1,3 @@
-import { createHash } from 'node:crypto'
 import type { OfferedDeviation } from '../../../shared/api/portal'
 import type { Entry } from '../../../shared/entry/entry'
 import { isKnown } from '../../../shared/entry/entry'
@@ -9,8 +8,7 @@ import { entriesNamed } from '../../database/queries/portal'
 import { newestRound } from '../../database/queries/round'
 import type { Tx } from '../../database/withSession'
 import { roundFold } from '../round/foldRound'
-
-const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
+import { sha256 } from '../entry/sha256'
 
 /** The deviations that the newest round of a job holds offered to the owner (or answered), with what was read and the very words of the offer. Asked as the organisation. */
 export async function offeredDeviations(tx: Tx, jobId: string): Promise<{ round: { id: string, state: 'open' | 'frozen' | 'sealed' }, offers: OfferedDeviation[] } | null> {
