@@ -5,14 +5,13 @@ import type { WalkSlots } from './walkSlots'
 
 /**
  * The outcome of each element in walking order, and the checks that are shown: what was found on a struck element or beside the list is shown for as long as it
- * is open, and on a standing element for good.
+ * is open, and on a standing element for good. The first `planned` checks are those that were asked for.
  */
-export function elementOutcomes(slots: WalkSlots, outcomes: readonly CheckOutcome[], deficiencies: readonly DeficiencyOutcome[]): { elements: ElementOutcome[], checks: CheckOutcome[] } {
+export function elementOutcomes(slots: WalkSlots, outcomes: readonly CheckOutcome[], deficiencies: readonly DeficiencyOutcome[]): { elements: ElementOutcome[], checks: CheckOutcome[], planned: number } {
   const openOf = new Map<string, DeficiencyOutcome[]>()
   for (const one of deficiencies) if (!isEnded(one)) openOf.set(one.element, [...openOf.get(one.element) ?? [], one])
 
   const walking = new Map(slots.elements.map((element, at) => [element.id, at]))
-  const turn = (element: string) => walking.get(element) ?? Infinity
   const planned: CheckOutcome[] = []
   const beside: CheckOutcome[] = []
   for (const [at, slot] of slots.all.entries()) {
@@ -20,7 +19,7 @@ export function elementOutcomes(slots: WalkSlots, outcomes: readonly CheckOutcom
     if (slot.planned) planned.push(outcome)
     else if (walking.has(slot.element) || openOf.get(slot.element)?.some(one => one.check === slot.check.id)) beside.push(outcome)
   }
-  beside.sort((a, b) => order(turn(a.element), turn(b.element)) || order(a.element, b.element) || order(a.check, b.check) || order(a.face ?? '', b.face ?? ''))
+  sortBeside(beside, walking)
   const checks = [...planned, ...beside]
 
   const checksOf = new Map<string, CheckOutcome[]>()
@@ -30,7 +29,13 @@ export function elementOutcomes(slots: WalkSlots, outcomes: readonly CheckOutcom
     else checksOf.set(check.element, [check])
   }
   const struck = [...checksOf.keys()].filter(id => !walking.has(id)).sort()
-  return { checks, elements: [...walking.keys(), ...struck].map(id => elementOutcome(id, checksOf.get(id) ?? [], openOf.get(id) ?? [], slots.unplanned.has(id))) }
+  return { checks, planned: planned.length, elements: [...walking.keys(), ...struck].map(id => elementOutcome(id, checksOf.get(id) ?? [], openOf.get(id) ?? [], slots.unplanned.has(id))) }
+}
+
+/** Sorts checks that nobody asked for; `walking`: the turn of each element of the line. */
+export function sortBeside(checks: CheckOutcome[], walking: ReadonlyMap<string, number>): void {
+  const turn = (element: string) => walking.get(element) ?? Infinity
+  checks.sort((a, b) => order(turn(a.element), turn(b.element)) || order(a.element, b.element) || order(a.check, b.check) || order(a.face ?? '', b.face ?? ''))
 }
 
 function elementOutcome(element: string, checks: readonly CheckOutcome[], open: readonly DeficiencyOutcome[], unplanned: boolean): ElementOutcome {

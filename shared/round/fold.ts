@@ -1,4 +1,4 @@
-import type { AnyEntry, KeptEntry, PayloadOf } from '../entry/entry'
+import type { AnyEntry, EntryKind, KeptEntry, PayloadOf } from '../entry/entry'
 import type { RoundBasis } from './basis'
 import { basisInForce } from './basisInForce'
 import type { CarriedOver } from './carryOver'
@@ -8,6 +8,7 @@ import { elementOutcomes } from './elementOutcomes'
 import { findDeficiencies } from './findDeficiencies'
 import type { ReadingJudgement } from './judgeReading'
 import { judgeReading } from './judgeReading'
+import type { LineAsBuilt } from './lineAsBuilt'
 import { lineAsBuilt, neighboursOf } from './lineAsBuilt'
 import type { EntryLinks } from './linkEntries'
 import { linkEntries } from './linkEntries'
@@ -27,6 +28,22 @@ export interface FoldOptions {
   tasksFor?: TasksFor
 }
 
+/** What is one for the whole round: the basis in force, the line as built, and what stands beside what on it. Only entries of {@link GROUND_KINDS} decide it. */
+export interface Ground { force: ReturnType<typeof basisInForce>, built: LineAsBuilt, neighbours: ReadonlyMap<string, readonly string[]> }
+export const GROUND_KINDS: readonly EntryKind[] = ['walkOpened', 'basisChanged', 'lineEdit']
+
+/** A fold with what it takes to go on from it ({@link foldOn}). */
+export interface Folded {
+  entries: readonly KeptEntry[]
+  outcome: RoundOutcome
+  ground: Ground
+  /** How many of the outcome's checks were asked for; those found beside the list come after them. */
+  planned: number
+  /** How many bases were known, and what it was made with. */
+  bases: number
+  options: Pick<FoldOptions, 'basis' | 'startsFrom'>
+}
+
 /**
  * What the entries of one round come to, over the basis in force (contracts.md 2). A pure value: the same entries in any order, in any copies, from any devices give
  * the same one; no clock and no order of ids decides anything. An entry of a kind that these rules do not know changes nothing but `unknown`.
@@ -36,16 +53,20 @@ export interface FoldOptions {
  * @throws {RoundError} noBasis, unknownBasis
  */
 export function fold(entries: readonly KeptEntry[], bases: ReadonlyMap<string, RoundBasis>, options: FoldOptions = {}): RoundOutcome {
+  return foldWhole(entries, bases, options).outcome
+}
+
+/** As {@link fold}, to be gone on with. `part`: only these elements, on the ground of an earlier fold; what is one for the round is not told again. */
+export function foldWhole(entries: readonly KeptEntry[], bases: ReadonlyMap<string, RoundBasis>, options: FoldOptions = {}, part?: { ground: Ground, elements: ReadonlySet<string> }): Folded {
   const carried = carryOver(options.startsFrom, entries)
   const links = linkEntries(carried.entries.length === 0 ? entries : [...entries, ...carried.entries], carried.settledIds)
   const kinds = byKind(links)
-  const force = basisInForce(links, kinds, bases, options.basis ?? options.startsFrom?.basis)
-  const built = lineAsBuilt(force.basis, bases, links, kinds.lineEdit)
-  const slots = new WalkSlots(force.basis, bases, built, options.tasksFor)
-  links.ignored.push(...built.ignored)
+  const ground = part?.ground ?? groundOf(links, kinds, bases, options)
+  const { force, built, neighbours } = ground
+  const slots = new WalkSlots(force.basis, bases, built, options.tasksFor, part?.elements)
+  if (!part) links.ignored.push(...built.ignored)
 
   const { slotOf, judged, erased } = placeReadings(links, slots, kinds.reading, carried)
-  const neighbours = neighboursOf(built.line)
   const checkOf = (entry: AnyEntry) => force.basis.checks.find(one => one.id === entry.envelope.check) ?? bases.get(entry.envelope.basis ?? '')?.checks.find(one => one.id === entry.envelope.check)
   /** A correction may change its own check, and what that check disturbs, on its element and beside it. */
   const touches = (correction: AnyEntry, slot: Slot): boolean => {
@@ -77,6 +98,23 @@ export function fold(entries: readonly KeptEntry[], bases: ReadonlyMap<string, R
   }
   const checks = checkOutcomes({ links, threads, slots, slotOf, judged, overruled, corrections, disturbed, asides: kinds.setAside, carried, deficiencies: all })
   const found = elementOutcomes(slots, checks, all)
+  return {
+    entries, ground, planned: found.planned, bases: bases.size, options,
+    outcome: roundOutcome(ground, {
+      elements: found.elements, checks: found.checks, deficiencies: all, waiting: links.waiting, unknown: links.unknown,
+      ignored: links.ignored, refusedLinks: links.refusedLinks, erased: erased.map(at => links.entries[at]!.envelope.id),
+    }),
+  }
+}
+
+function groundOf(links: EntryLinks, kinds: ByKind, bases: ReadonlyMap<string, RoundBasis>, options: FoldOptions): Ground {
+  const force = basisInForce(links, kinds, bases, options.basis ?? options.startsFrom?.basis)
+  const built = lineAsBuilt(force.basis, bases, links, kinds.lineEdit)
+  return { force, built, neighbours: neighboursOf(built.line) }
+}
+
+/** What was found, put in order and counted. */
+export function roundOutcome({ force, built }: Ground, found: Pick<RoundOutcome, 'elements' | 'checks' | 'deficiencies' | 'waiting' | 'unknown' | 'ignored' | 'refusedLinks' | 'erased'>): RoundOutcome {
   const tally = Object.fromEntries(VERDICTS.map(verdict => [verdict, 0])) as Record<Verdict, number>
   for (const check of found.checks) tally[check.verdict]++
   return {
@@ -84,12 +122,12 @@ export function fold(entries: readonly KeptEntry[], bases: ReadonlyMap<string, R
     basis: force.digest,
     elements: found.elements,
     checks: found.checks,
-    deficiencies: inWalkingOrder(all, found.checks),
-    waiting: links.waiting,
-    unknown: links.unknown,
-    ignored: links.ignored.sort((a, b) => compare(a.entry, b.entry) || compare(a.why, b.why)),
-    refusedLinks: links.refusedLinks.sort((a, b) => compare(a.entry, b.entry) || compare(a.target, b.target) || compare(a.why, b.why)),
-    erased: erased.map(at => links.entries[at]!.envelope.id).sort(),
+    deficiencies: inWalkingOrder(found.deficiencies, found.checks),
+    waiting: found.waiting,
+    unknown: found.unknown,
+    ignored: found.ignored.sort((a, b) => compare(a.entry, b.entry) || compare(a.why, b.why)),
+    refusedLinks: found.refusedLinks.sort((a, b) => compare(a.entry, b.entry) || compare(a.target, b.target) || compare(a.why, b.why)),
+    erased: found.erased.sort(),
     conflicts: [...force.conflicts, ...built.conflicts],
     line: built.line,
     tally,

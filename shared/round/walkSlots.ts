@@ -26,7 +26,22 @@ export interface Slot {
 /** Gives the tasks of an element that an edit of the line brought; the conditions of the checklist decide, so the caller knows how. */
 export type TasksFor = (element: LineElement, basis: RoundBasis) => WalkTask[]
 
-/** The slots of a round in walking order, and the way from an entry to its slot. */
+const tasksKnown = new WeakMap<RoundBasis, Map<string, WalkTask[]>>()
+/** The tasks of each element; a basis never changes, so they are sorted out once. */
+function tasksByElement(basis: RoundBasis): ReadonlyMap<string, readonly WalkTask[]> {
+  const known = tasksKnown.get(basis)
+  if (known) return known
+  const tasksOf = new Map<string, WalkTask[]>()
+  for (const task of basis.tasks) {
+    const tasks = tasksOf.get(task.element)
+    if (tasks) tasks.push(task)
+    else tasksOf.set(task.element, [task])
+  }
+  tasksKnown.set(basis, tasksOf)
+  return tasksOf
+}
+
+/** The slots of a round, or of some of its elements, in walking order, and the way from an entry to its slot. */
 export class WalkSlots {
   readonly all: Slot[] = []
   /** Elements that an edit brought and for which nobody could say what is to be checked. */
@@ -36,25 +51,23 @@ export class WalkSlots {
   private readonly elementById: ReadonlyMap<string, LineElement>
   private readonly checkById: ReadonlyMap<string, Check>
 
-  constructor(private readonly basis: RoundBasis, private readonly bases: ReadonlyMap<string, RoundBasis>, built: LineAsBuilt, tasksFor: TasksFor | undefined) {
-    this.elements = elementsOf(built.line)
+  constructor(private readonly basis: RoundBasis, private readonly bases: ReadonlyMap<string, RoundBasis>, built: LineAsBuilt, tasksFor: TasksFor | undefined, only?: ReadonlySet<string>) {
+    const whole = elementsOf(built.line)
+    this.elements = only ? whole.filter(element => only.has(element.id)) : whole
     this.elementById = new Map(this.elements.map(element => [element.id, element]))
     this.checkById = new Map(basis.checks.map(check => [check.id, check]))
-    const tasksOf = new Map<string, WalkTask[]>()
-    for (const task of basis.tasks) {
-      const tasks = tasksOf.get(task.element)
-      if (tasks) tasks.push(task)
-      else tasksOf.set(task.element, [task])
-    }
+    const asked = tasksByElement(basis)
+    const brought = new Map<string, readonly WalkTask[]>()
+    const tasksOf = (element: string) => asked.get(element) ?? brought.get(element)
     for (const { element, from } of built.brought) {
-      if (tasksOf.has(element.id)) continue
-      const whole = from === null ? undefined : tasksOf.get(from)
-      if (tasksFor) tasksOf.set(element.id, tasksFor(element, basis))
-      else if (whole) tasksOf.set(element.id, whole.map(task => ({ ...task, element: element.id })))
-      else this.unplanned.add(element.id)
+      if (asked.has(element.id)) continue
+      const whole = from === null ? undefined : tasksOf(from)
+      if (!tasksFor && !whole) this.unplanned.add(element.id)
+      // Asking is dear: only for what is looked at here.
+      else if (!tasksFor || !only || only.has(element.id)) brought.set(element.id, tasksFor ? tasksFor(element, basis) : whole!.map(task => ({ ...task, element: element.id })))
     }
     for (const element of this.elements) {
-      for (const task of tasksOf.get(element.id) ?? []) {
+      for (const task of tasksOf(element.id) ?? []) {
         const check = this.checkById.get(task.check)
         if (check) this.add(element.id, element, check, task.face, task.limits, basis.limits, true)
       }
