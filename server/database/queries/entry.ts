@@ -1,5 +1,6 @@
 import type { KeptEntry, WireEntry } from '../../../shared/entry/entry'
 import type { Target } from '../../../shared/entry/entryRules'
+import { binaryTexts } from '../binaryTexts'
 import type { Tx } from '../withSession'
 
 export interface LockedRound { id: string, jobId: string, number: number, state: 'open' | 'frozen' | 'sealed', accepted: number, basis: string }
@@ -43,7 +44,7 @@ export async function insertEntries(tx: Tx, accepted: { entry: KeptEntry, wire: 
          as e(id, number, job, kind, author, element, check_id, digest, envelope, payload)
      returning id`,
     [accepted[0]!.entry.envelope.round, column(one => one.entry.envelope.id), column(one => one.entry.number), column(one => one.entry.envelope.job), column(one => one.entry.envelope.kind),
-      column(one => one.entry.envelope.author), column(one => one.entry.envelope.element), column(one => one.entry.envelope.check), column(one => one.entry.digest), column(one => one.wire.envelope), column(one => one.wire.payload)])
+      column(one => one.entry.envelope.author), column(one => one.entry.envelope.element), column(one => one.entry.envelope.check), column(one => one.entry.digest), binaryTexts(column(one => one.wire.envelope)), binaryTexts(column(one => one.wire.payload))])
   if (rowCount !== accepted.length) throw new Error(`${accepted.length} entries were to be stored, ${rowCount} can be read back`)
 }
 

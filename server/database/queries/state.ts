@@ -1,5 +1,6 @@
 import type { CheckOutcome, DeficiencyOutcome, RoundOutcome } from '../../../shared/round/outcome'
 import type { JobSummary } from '../../services/job/jobSummary'
+import { binaryTexts } from '../binaryTexts'
 import type { Tx } from '../withSession'
 
 const CHECKS = `(select coalesce(json_agg(c.outcome order by c.at), '[]') from check_state c where c.organisation_id = s.organisation_id and c.round_id = s.round_id) as checks`
@@ -21,14 +22,6 @@ export async function outcomeBefore(tx: Tx, jobId: string, number: number): Prom
   return whole(rows[0])
 }
 
-export async function writeOutcome(tx: Tx, roundId: string, accepted: number, { checks: _, ...outcome }: RoundOutcome): Promise<void> {
-  await tx.client.query(
-    `insert into round_state (organisation_id, round_id, accepted, outcome) values (app_organisation(), $1, $2, $3)
-     on conflict (organisation_id, round_id) do update set accepted = excluded.accepted, outcome = excluded.outcome`, [roundId, accepted, JSON.stringify(outcome)])
-}
-
-const keyOf = (check: CheckOutcome) => `${check.element} ${check.check} ${check.face ?? ''}`
-
 /** Whether two values are the same as JSON, whatever the order of their keys. */
 function same(one: unknown, other: unknown): boolean {
   if (one === other) return true
@@ -37,52 +30,66 @@ function same(one: unknown, other: unknown): boolean {
   return keys.length === Object.keys(other).length && keys.every(key => same((one as Record<string, unknown>)[key], (other as Record<string, unknown>)[key]))
 }
 
-export async function writeChecks(tx: Tx, roundId: string, before: CheckOutcome[], now: CheckOutcome[]): Promise<void> {
-  const stood = new Map(before.map((check, at) => [keyOf(check), { check, at }]))
-  const stands = new Set(now.map(keyOf))
-  const changed = now.map((check, at) => ({ check, at })).filter(({ check, at }) => {
-    const one = stood.get(keyOf(check))
-    return one?.at !== at || !same(one.check, check)
-  })
-  const gone = before.filter(check => !stands.has(keyOf(check)))
-  if (gone.length > 0) {
-    await tx.client.query(
-      `delete from check_state c using unnest($2::uuid[], $3::text[], $4::text[]) as g(element, check_id, face)
-        where c.organisation_id = app_organisation() and c.round_id = $1 and c.element_id = g.element and c.check_id = g.check_id and c.face = g.face`,
-      [roundId, gone.map(one => one.element), gone.map(one => one.check), gone.map(one => one.face ?? '')])
-  }
-  if (changed.length > 0) {
-    await tx.client.query(
-      `insert into check_state (organisation_id, round_id, element_id, check_id, face, verdict, settled, read_again, at, outcome)
-       select app_organisation(), $1, * from unnest($2::uuid[], $3::text[], $4::text[], $5::text[], $6::bool[], $7::bool[], $8::int[], $9::jsonb[])
-       on conflict (organisation_id, round_id, element_id, check_id, face) do update set verdict = excluded.verdict, settled = excluded.settled, read_again = excluded.read_again, at = excluded.at, outcome = excluded.outcome`,
-      [roundId, changed.map(one => one.check.element), changed.map(one => one.check.check), changed.map(one => one.check.face ?? ''), changed.map(one => one.check.verdict), changed.map(one => one.check.settled), changed.map(one => one.check.readAgain),
-        changed.map(one => one.at), changed.map(one => JSON.stringify(one.check))])
-  }
+const keyOf = (check: CheckOutcome) => `${check.element} ${check.check} ${check.face ?? ''}`
+
+/** Checks that stand otherwise than before, with their places, and those that are gone. Nearly always each stands where it stood, and most are the very same objects. */
+function checkChanges(before: readonly CheckOutcome[], now: readonly CheckOutcome[]): { changed: { one: CheckOutcome, at: number }[], gone: CheckOutcome[] } {
+  const moved = before.filter((one, at) => one !== now[at] && (!now[at] || keyOf(one) !== keyOf(now[at])))
+  const stands = new Set(moved.length > 0 ? now.map(keyOf) : [])
+  return { changed: now.map((one, at) => ({ one, at })).filter(({ one, at }) => !same(before[at], one)), gone: moved.filter(one => !stands.has(keyOf(one))) }
 }
 
-export async function writeDeficiencies(tx: Tx, roundId: string, jobId: string, before: DeficiencyOutcome[], now: DeficiencyOutcome[]): Promise<void> {
-  const stood = new Map(before.map(one => [one.id, one]))
-  const stands = new Set(now.map(one => one.id))
-  const gone = before.filter(one => !stands.has(one.id)).map(one => one.id)
-  const changed = now.filter(one => !same(stood.get(one.id), one))
-  if (gone.length > 0) await tx.client.query('delete from deficiency_state where organisation_id = app_organisation() and id = any($1::uuid[])', [gone])
-  if (changed.length > 0) {
-    await tx.client.query(
-      `insert into deficiency_state (organisation_id, round_id, job_id, id, tag, element_id, check_id, class, state, assigned_to, due, outcome)
-       select app_organisation(), $1, $2, * from unnest($3::uuid[], $4::text[], $5::uuid[], $6::text[], $7::text[], $8::text[], $9::uuid[], $10::timestamptz[], $11::jsonb[])
-       on conflict (organisation_id, id) do update set round_id = excluded.round_id, tag = excluded.tag, class = excluded.class, state = excluded.state, assigned_to = excluded.assigned_to, due = excluded.due, outcome = excluded.outcome`,
-      [roundId, jobId, changed.map(one => one.id), changed.map(one => one.tag), changed.map(one => one.element), changed.map(one => one.check), changed.map(one => one.class), changed.map(one => one.state),
-        changed.map(one => one.assignedTo), changed.map(one => one.due), changed.map(one => JSON.stringify(one))])
-  }
-}
+/**
+ * Makes ready what lists show of a round: the fold without its checks, the checks and deficiencies that changed, and what the list of jobs shows. All is written by one
+ * statement when the answer is called, so that it can be made ready while the database still stores the entries.
+ */
+export function stateWriting(round: { id: string, jobId: string, accepted: number }, before: RoundOutcome | null, now: RoundOutcome, summary: JobSummary): (tx: Tx) => Promise<void> {
+  const values: unknown[] = []
+  const the = (value: unknown) => `$${values.push(value)}`
+  const [roundId, jobId] = [`${the(round.id)}::uuid`, `${the(round.jobId)}::uuid`]
+  const { checks: _, ...outcome } = now
+  const parts = [`outcome as (
+    insert into round_state (organisation_id, round_id, accepted, outcome) values (app_organisation(), ${roundId}, ${the(round.accepted)}, ${the(JSON.stringify(outcome))})
+    on conflict (organisation_id, round_id) do update set accepted = excluded.accepted, outcome = excluded.outcome)`]
 
-export async function writeJobSummary(tx: Tx, jobId: string, summary: JobSummary): Promise<void> {
-  await tx.client.query(
-    `update job set state = $2, move_by = $3, move = $4, move_count = $5, open_tags = $6, held_out = $7, strip = $8,
-            move_since = case when move = $4 and move_by = $3 then move_since else now() end
-      where organisation_id = app_organisation() and id = $1 and state <> 'closed'`,
-    [jobId, summary.state, summary.moveBy, summary.move, summary.moveCount, summary.openTags, summary.heldOut, JSON.stringify(summary.strip)])
+  const checks = checkChanges(before?.checks ?? [], now.checks)
+  const ofGone = <T>(pick: (check: CheckOutcome) => T) => the(checks.gone.map(pick))
+  if (checks.gone.length > 0) {
+    parts.push(`checks_gone as (
+      delete from check_state c using unnest(${ofGone(one => one.element)}::uuid[], ${ofGone(one => one.check)}::text[], ${ofGone(one => one.face ?? '')}::text[]) as g(element, check_id, face)
+       where c.organisation_id = app_organisation() and c.round_id = ${roundId} and c.element_id = g.element and c.check_id = g.check_id and c.face = g.face)`)
+  }
+  const ofCheck = <T>(pick: (check: CheckOutcome, at: number) => T) => the(checks.changed.map(({ one, at }) => pick(one, at)))
+  if (checks.changed.length > 0) {
+    parts.push(`checks as (
+      insert into check_state (organisation_id, round_id, element_id, check_id, face, verdict, settled, read_again, at, outcome)
+      select app_organisation(), ${roundId}, c.element, c.check_id, c.face, c.verdict, c.settled, c.read_again, c.at, c.outcome::jsonb
+        from unnest(${ofCheck(one => one.element)}::uuid[], ${ofCheck(one => one.check)}::text[], ${ofCheck(one => one.face ?? '')}::text[], ${ofCheck(one => one.verdict)}::text[], ${ofCheck(one => one.settled)}::bool[],
+          ${ofCheck(one => one.readAgain)}::bool[], ${ofCheck((_, at) => at)}::int[], ${the(binaryTexts(checks.changed.map(({ one }) => JSON.stringify(one))))}::text[]) as c(element, check_id, face, verdict, settled, read_again, at, outcome)
+      on conflict (organisation_id, round_id, element_id, check_id, face) do update set verdict = excluded.verdict, settled = excluded.settled, read_again = excluded.read_again, at = excluded.at, outcome = excluded.outcome)`)
+  }
+
+  const stood = new Map(before?.deficiencies.map(one => [one.id, one]))
+  const stands = new Set(now.deficiencies.map(one => one.id))
+  const gone = [...stood.keys()].filter(id => !stands.has(id))
+  const found = now.deficiencies.filter(one => !same(stood.get(one.id), one))
+  const ofFound = <T>(pick: (one: DeficiencyOutcome) => T) => the(found.map(pick))
+  if (gone.length > 0) parts.push(`deficiencies_gone as (delete from deficiency_state where organisation_id = app_organisation() and id = any(${the(gone)}::uuid[]))`)
+  if (found.length > 0) {
+    parts.push(`deficiencies as (
+      insert into deficiency_state (organisation_id, round_id, job_id, id, tag, element_id, check_id, class, state, assigned_to, due, outcome)
+      select app_organisation(), ${roundId}, ${jobId}, d.id, d.tag, d.element, d.check_id, d.class, d.state, d.assigned_to, d.due, d.outcome::jsonb
+        from unnest(${ofFound(one => one.id)}::uuid[], ${ofFound(one => one.tag)}::text[], ${ofFound(one => one.element)}::uuid[], ${ofFound(one => one.check)}::text[], ${ofFound(one => one.class)}::text[], ${ofFound(one => one.state)}::text[],
+          ${ofFound(one => one.assignedTo)}::uuid[], ${ofFound(one => one.due)}::timestamptz[], ${the(binaryTexts(found.map(one => JSON.stringify(one))))}::text[]) as d(id, tag, element, check_id, class, state, assigned_to, due, outcome)
+      on conflict (organisation_id, id) do update set round_id = excluded.round_id, tag = excluded.tag, class = excluded.class, state = excluded.state, assigned_to = excluded.assigned_to, due = excluded.due, outcome = excluded.outcome)`)
+  }
+
+  const [by, move] = [`${the(summary.moveBy)}::text`, `${the(summary.move)}::text`]
+  const text = `with ${parts.join(', ')}
+    update job set state = ${the(summary.state)}, move_by = ${by}, move = ${move}, move_count = ${the(summary.moveCount)}, open_tags = ${the(summary.openTags)}, held_out = ${the(summary.heldOut)}, strip = ${the(JSON.stringify(summary.strip))},
+           move_since = case when move = ${move} and move_by = ${by} then move_since else now() end
+     where organisation_id = app_organisation() and id = ${jobId} and state <> 'closed'`
+  return async (tx) => { await tx.client.query(text, values) }
 }
 
 /** Throws away what is kept of a round, to be folded anew. */

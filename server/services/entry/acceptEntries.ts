@@ -1,4 +1,3 @@
-import { createHash } from 'node:crypto'
 import type { KeptEntry, WireEntry } from '../../../shared/entry/entry'
 import { isKnown, wireEntrySchema } from '../../../shared/entry/entry'
 import type { EntryRefusal } from '../../../shared/entry/entryRefused'
@@ -13,8 +12,7 @@ import * as entries from '../../database/queries/entry'
 import { notFound } from '../failure'
 import { rememberRound } from '../round/foldRound'
 import { keepState } from '../round/keepState'
-
-const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
+import { sha256 } from './sha256'
 
 /** One entry of a push on its way: its texts, what was read, and what becomes of it. */
 interface Offered { wire: WireEntry, entry: KeptEntry | null, result: PushResult }
@@ -30,20 +28,20 @@ interface Candidate { wire: WireEntry, entry: KeptEntry, offered: Offered | null
 export async function acceptEntries(who: Session, roundId: string, wires: WireEntry[]): Promise<{ accepted: number, results: PushResult[] }> {
   const offered = wires.map(wire => read(wire, who, roundId))
   const twins = pairTwins(offered)
-  const { accepted, held } = await withSession(who, async (tx) => {
+  const { accepted, folded } = await withSession(who, async (tx) => {
     const round = await entries.lockRound(tx, roundId)
     if (!round) throw notFound('round')
     const good = await accept(tx, round, await sort(tx, round.jobId, offered.filter(one => one.result.state === 'accepted' && !twins.has(one))))
-    if (good.length === 0) return { accepted: round.accepted, held: null }
-    const held = await keepState(tx, round, good.map(one => one.entry), async () => {
+    if (good.length === 0) return { accepted: round.accepted, folded: null }
+    const folded = await keepState(tx, round, good.map(one => one.entry), async () => {
       await entries.insertEntries(tx, good)
       // Held by an earlier push, sent again or not.
       await entries.dropAside(tx, good.map(one => one.entry))
       await entries.setAccepted(tx, roundId, round.accepted)
     })
-    return { accepted: round.accepted, held }
+    return { accepted: round.accepted, folded }
   })
-  if (held) rememberRound(roundId, accepted, held)
+  if (folded) rememberRound(roundId, accepted, folded)
   for (const [one, first] of twins) one.result = first.result.state === 'accepted' ? { ...first.result, state: 'resent' } : first.result
   return { accepted, results: offered.map(one => one.result) }
 }

@@ -1,22 +1,20 @@
-import { createHash } from 'node:crypto'
 import type { KeptEntry } from '../../../shared/entry/entry'
 import { readEntry } from '../../../shared/entry/readEntry'
 import type { RoundBasis } from '../../../shared/round/basis'
-import type { FoldOptions } from '../../../shared/round/fold'
+import type { Folded, FoldOptions } from '../../../shared/round/fold'
 import { tasksFor } from '../../../shared/round/makeBasis'
-import type { RoundOutcome } from '../../../shared/round/outcome'
 import type { LockedRound } from '../../database/queries/entry'
 import { entriesAfter } from '../../database/queries/entry'
 import { basesOf, basisDigestsOf } from '../../database/queries/round'
 import { outcomeBefore } from '../../database/queries/state'
 import type { Tx } from '../../database/withSession'
+import { sha256 } from '../entry/sha256'
 
-const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
-
-/** What a round's entries come to: parsed, with the fold that is kept of them. */
-export interface RoundHeld { entries: KeptEntry[], outcome: RoundOutcome }
-/** The rounds in hand, so that a push does not read thousands of texts and the kept fold again. Only a cache: checked against the round's own number. */
-const parsed = new Map<string, RoundHeld & { accepted: number }>()
+/**
+ * The rounds in hand as they were last accepted by this process, so that a push does not read thousands of texts and fold them again. Only a cache: whoever uses it holds
+ * the round's row lock and compares the number, since another process may have accepted meanwhile. Entries never change under a number.
+ */
+const inHand = new Map<string, { accepted: number, folded: Folded }>()
 const ROUNDS_KEPT = 24
 const bases = new Map<string, RoundBasis>()
 
@@ -33,8 +31,7 @@ export function readBasis(digest: string, text: string): RoundBasis {
 /** All entries of a round up to its accepted number, parsed. `fresh` are those that this transaction has just stored. */
 export async function entriesOf(tx: Tx, round: { id: string, accepted: number }, fresh: KeptEntry[] = []): Promise<KeptEntry[]> {
   const before = round.accepted - fresh.length
-  const kept = parsed.get(round.id)
-  const entries = kept && kept.accepted === before ? kept.entries : await readAll(tx, round.id, before)
+  const entries = heldFold(round.id, before)?.entries ?? await readAll(tx, round.id, before)
   return [...entries, ...fresh]
 }
 
@@ -48,16 +45,16 @@ async function readAll(tx: Tx, roundId: string, upTo: number): Promise<KeptEntry
 }
 
 /** Remembers what a committed transaction left behind; after a rollback nothing is remembered and the next one reads again. */
-export function rememberRound(roundId: string, accepted: number, held: RoundHeld): void {
-  parsed.delete(roundId)
-  parsed.set(roundId, { accepted, ...held })
-  if (parsed.size > ROUNDS_KEPT) parsed.delete(parsed.keys().next().value!)
+export function rememberRound(roundId: string, accepted: number, folded: Folded): void {
+  inHand.delete(roundId)
+  inHand.set(roundId, { accepted, folded })
+  if (inHand.size > ROUNDS_KEPT) inHand.delete(inHand.keys().next().value!)
 }
 
-/** The fold that was kept at that number, where this process has it in hand. */
-export function heldOutcome(roundId: string, accepted: number): RoundOutcome | null {
-  const held = parsed.get(roundId)
-  return held?.accepted === accepted ? held.outcome : null
+/** The fold of a round's entries up to that number, where this process has it in hand. */
+export function heldFold(roundId: string, accepted: number): Folded | null {
+  const held = inHand.get(roundId)
+  return held?.accepted === accepted ? held.folded : null
 }
 
 /** The bases of a job. Their texts are long and never change: only those that this process has not read yet are fetched. */
