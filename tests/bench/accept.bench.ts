@@ -70,7 +70,7 @@ export default async function bench(): Promise<Figure[]> {
         // As autovacuum would have by then; the last turn that is not measured.
         if (turn === WARM_UPS) await admin.query('analyze')
       },
-    }, { rounds: ROUNDS, warmUps: WARM_UPS })]
+    }, { rounds: ROUNDS, warmUps: WARM_UPS, alone: false })]
     const { rows } = await admin.query('select count(*)::int as n from entry')
     if (rows[0].n !== 2 * turns * ENTRIES) throw new Error(`${rows[0].n} entries are there`)
     const kept = await admin.query(`select count(*)::int as n from check_state where round_id = $1 and verdict <> 'notRead'`, [ours[0]!.round.round])

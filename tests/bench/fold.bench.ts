@@ -1,9 +1,10 @@
-import { createHash } from 'node:crypto'
 import type { AnyEntry, ReadingValue } from '#shared/entry/entry'
 import { makeEntry } from '#shared/entry/makeEntry'
 import { readEntry } from '#shared/entry/readEntry'
 import { elementsOf } from '#shared/line/line'
-import { fold } from '#shared/round/fold'
+import { sha256 } from '#server/services/entry/sha256'
+import { fold, foldWhole } from '#shared/round/fold'
+import { foldOn } from '#shared/round/foldOn'
 import { digestOf } from '#shared/record/canonicalJson'
 import { basisOf, bay, element, JOB, ORGANISATION, PEOPLE, ROUND, uuid, WALK } from '../helpers/roundStory'
 import { INCH } from '#shared/measure/length'
@@ -60,11 +61,13 @@ export default async function bench(): Promise<Figure[]> {
 
   const parse = (wires: typeof texts) => wires.map(wire => [JSON.parse(wire.envelope), JSON.parse(wire.payload)])
   const some = texts.slice(0, 5000)
-  const native = (text: string) => createHash('sha256').update(text).digest('hex')
+  const earlier = foldWhole(entries.slice(0, -100), bases, { basis: digest })
   return [
     await compare('folding 10,000 readings, against JSON.parse of the same entries', 1, { ours: () => fold(entries, bases, { basis: digest }), base: () => parse(texts) }),
+    // What a device or the accepting service does with each new batch.
+    await compare('going on with 100 entries from the fold of all before, against JSON.parse of those 100', null, { ours: () => foldOn(earlier, entries.slice(-100), bases, { basis: digest }), base: () => parse(texts.slice(-100)) }),
     // The accepting service reads each entry so: schema, canonical form and two digests come on top of the parsing.
     await compare('reading 5,000 entries strictly, against JSON.parse of them', 12, { ours: () => some.map(wire => readEntry(wire)), base: () => parse(some) }),
-    await compare('the same with the server\'s own SHA-256', 7, { ours: () => some.map(wire => readEntry(wire, { sha256: native })), base: () => parse(some) }),
+    await compare('the same with the server\'s own SHA-256', 4, { ours: () => some.map(wire => readEntry(wire, { sha256 })), base: () => parse(some) }),
   ]
 }
