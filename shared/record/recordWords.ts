@@ -4,7 +4,9 @@ import { elementsOf } from '../line/line'
 import type { LineMarks } from '../line/lineMark'
 import { placeAlong, tapeOf } from '../line/lineMark'
 import type { Verdict } from '../round/outcome'
+import { notLoosenedAmong } from '../provision/limitsTogether'
 import { elementsSeen } from './recordSentence'
+import { settledQuestions } from './record'
 import type { RecordCheck, RecordDeficiency, RecordDocument, RecordPhoto, RecordReading, RecordStep } from './record'
 import { Speech } from './speech'
 import { fill, listed, sentence, WORDING } from './wording'
@@ -95,10 +97,19 @@ export function heldOf(telling: Telling): { element: string, tag: string, words:
   })
 }
 
-/** What was asked and has no answer yet. */
+/** What was asked and has no answer yet, what was not put to anybody, and what was answered, by whom, when and where it stands. */
 export function askedOf({ record, say }: Telling): string[] {
-  if (record.questions.length === 0) return [say.w.phrases.nothingAsked]
-  return record.questions.map(({ words, askedOf: to, on }) => fill(say.w.phrases.putTo, { words: closed(words), to, on: say.day(on) }))
+  const { phrases } = say.w
+  const { answers, notPut } = settledQuestions(record)
+  return [
+    ...(record.questions.length + notPut.length === 0 ? [phrases.nothingAsked] : []),
+    ...record.questions.map(({ words, askedOf: to, on }) => fill(phrases.putTo, { words: closed(words), to, on: say.day(on) })),
+    ...notPut.map(words => fill(phrases.notPut, { words: closed(words) })),
+    ...answers.map(({ words, askedOf: to, askedOn: on, answer }) => [
+      to && on ? fill(phrases.putTo, { words: closed(words), to, on: say.day(on) }) : closed(words),
+      fill(phrases.answered, { name: answer.name, role: answer.role, on: say.day(answer.on), document: answer.document, words: closed(answer.words) }),
+    ].join(' ')),
+  ]
 }
 
 /** What nobody saw: set aside with a reason, not read in full, ground that is still to come, and what no walk ever sees. */
@@ -164,7 +175,25 @@ export function isPlainLook(check: RecordCheck): boolean {
 }
 
 /** What the answer was held against, where that is no limit with a figure. */
-export function conditionsOf(check: RecordCheck, { say }: Telling): string[] {
+export function conditionsOf(check: RecordCheck, telling: Telling): string[] {
+  return [...howItConforms(check, telling), ...whyTheseLimits(check, telling)]
+}
+
+/** Which of several limits governs, what was set aside and for which, and what could not take the place of another. */
+function whyTheseLimits(check: RecordCheck, { record, say }: Telling): string[] {
+  const { phrases, setAsideWhys } = say.w
+  const limits = check.limits.flatMap(key => record.limits[key] ?? [])
+  const governs = limits.length > 1 && check.readings[0]?.limit ? record.limits[check.readings[0].limit] : undefined
+  const nameOf = (id: string) => limits.find(limit => limit.id === id)!.basis.name
+  return [
+    ...(governs ? [fill(phrases.governs, { limit: say.limit(governs), whose: governs.basis.name })] : []),
+    ...record.limitsSetAside.filter(one => check.limits.includes(one.by) && one.limit.measurand === check.measurand)
+      .map(({ limit, why }) => fill(phrases.limitSetAside, { limit: say.limit(limit), basis: say.basis(limit.basis), why: setAsideWhys[why] })),
+    ...notLoosenedAmong(limits, record.provisions).map(({ provision, limit }) => fill(phrases.notLoosened, { whose: nameOf(provision), other: nameOf(limit) })),
+  ]
+}
+
+function howItConforms(check: RecordCheck, { say }: Telling): string[] {
   const { phrases } = say.w
   if (check.method === 'trial') return [listed(check.tries.map(each => fill(phrases.triesFrom, { times: each.times, label: each.label })), say.w.and)]
   if (check.method === 'template' && check.conformsWhen) return [check.conformsWhen === 'passes' ? phrases.passesConforms : phrases.stopsConforms]
