@@ -1,7 +1,7 @@
 import { worse } from './checkOutcomes'
 import type { CheckOutcome, DeficiencyOutcome, ElementOutcome, Verdict } from './outcome'
 import { isEnded } from './outcome'
-import type { WalkSlots } from './walkSlots'
+import type { Slot, WalkSlots } from './walkSlots'
 
 /**
  * The outcome of each element in walking order, and the checks that are shown: what was found on a struck element or beside the list is shown for as long as it
@@ -15,8 +15,10 @@ export function elementOutcomes(slots: WalkSlots, outcomes: readonly CheckOutcom
   const turn = (element: string) => walking.get(element) ?? Infinity
   const planned: CheckOutcome[] = []
   const beside: CheckOutcome[] = []
+  const { shown, holds } = onceForTheLine(slots, outcomes)
   for (const [at, slot] of slots.all.entries()) {
     const outcome = outcomes[at]!
+    if (slot.line && !shown.has(slot)) continue
     if (slot.planned) planned.push(outcome)
     else if (walking.has(slot.element) || openOf.get(slot.element)?.some(one => one.check === slot.check.id)) beside.push(outcome)
   }
@@ -30,17 +32,40 @@ export function elementOutcomes(slots: WalkSlots, outcomes: readonly CheckOutcom
     else checksOf.set(check.element, [check])
   }
   const struck = [...checksOf.keys()].filter(id => !walking.has(id)).sort()
-  return { checks, elements: [...walking.keys(), ...struck].map(id => elementOutcome(id, checksOf.get(id) ?? [], openOf.get(id) ?? [], slots.unplanned.has(id))) }
+  return { checks, elements: [...walking.keys(), ...struck].map(id => elementOutcome(id, checksOf.get(id) ?? [], openOf.get(id) ?? [], slots.unplanned.has(id), holds.has(id))) }
 }
 
-function elementOutcome(element: string, checks: readonly CheckOutcome[], open: readonly DeficiencyOutcome[], unplanned: boolean): ElementOutcome {
+/**
+ * What is answered once for the line is shown where somebody spoke of it (also in the round before), else on the first element that calls for it (the first that was not set aside
+ * whole). While it has no answer, it holds every element that calls for it.
+ */
+function onceForTheLine(slots: WalkSlots, outcomes: readonly CheckOutcome[]): { shown: Set<Slot>, holds: Set<string> } {
+  const byCheck = new Map<string, { slot: Slot, outcome: CheckOutcome }[]>()
+  for (const [at, slot] of slots.all.entries()) {
+    if (!slot.line) continue
+    const asked = byCheck.get(slot.check.id)
+    if (asked) asked.push({ slot, outcome: outcomes[at]! })
+    else byCheck.set(slot.check.id, [{ slot, outcome: outcomes[at]! }])
+  }
+  const shown = new Set<Slot>()
+  const holds = new Set<string>()
+  for (const asked of byCheck.values()) {
+    const spoken = asked.filter(({ slot, outcome }) => slot.spoken || (outcome.setAside !== null && slot.asides.length === 0) || outcome.heads.length > 0 || outcome.earlier.length > 0 || outcome.readAgain || outcome.settled || outcome.verdict === 'doesNotConform')
+    const standing = spoken.length > 0 ? spoken : [asked.find(({ outcome }) => outcome.setAside === null) ?? asked[0]!]
+    for (const { slot } of standing) shown.add(slot)
+    if (!standing.every(({ outcome }) => isAnswered(outcome))) for (const { slot } of asked) holds.add(slot.element)
+  }
+  return { shown, holds }
+}
+
+function elementOutcome(element: string, checks: readonly CheckOutcome[], open: readonly DeficiencyOutcome[], unplanned: boolean, held: boolean): ElementOutcome {
   const outOfUse = open.some(one => one.class === 'outOfUse')
   const looked = checks.length === 0 || checks.some(check => check.verdict !== 'notInspected' || check.setAside?.why === 'outOfScope')
   return {
     element,
     verdict: elementVerdict(checks, unplanned),
     settled: open.length === 0 && checks.some(check => check.settled),
-    released: !unplanned && looked && open.every(one => one.class === 'ownerMayAccept') && checks.every(isAnswered),
+    released: !unplanned && !held && looked && open.every(one => one.class === 'ownerMayAccept') && checks.every(isAnswered),
     outOfUse,
     tasks: checks.length,
     answered: checks.filter(check => check.verdict !== 'notRead' && !check.readAgain).length,
