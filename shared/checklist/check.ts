@@ -69,6 +69,8 @@ const fields = z.object({
   conformsWhen: z.enum(['passes', 'stops']).optional(),
   /** For a template: which gauge to bring, in words. */
   gauge: bothSchema.optional(),
+  /** `guarded`: judged with a guard band of the instrument's expanded uncertainty (shared/limit/judge.ts); simple acceptance where it is not said. */
+  acceptance: z.literal('guarded').optional(),
   /** Which dimension may have been taken, where texts differ (side, diagonal, width). */
   dimensions: z.array(z.enum(['side', 'diagonal', 'width'])).optional(),
   limits: z.array(checkLimitSchema),
@@ -105,6 +107,7 @@ export const checkSchema = fields.superRefine((check, context) => {
   if ((check.asked === 'line' || check.unset === 'line') && (check.answeredFor === 'bay' || check.answeredFor === 'face'))
     refuse('asked', 'What is answered once for the line is answered once, or where it is worst, not by bay or face.')
   if (check.asked === 'line' && check.group) refuse('asked', 'Looks of a group are confirmed at the end of each element, not once for the line.')
+  if (check.acceptance !== undefined && check.method !== 'measure') refuse('acceptance', 'Only a measure has an instrument with an uncertainty.')
   if (check.unset !== undefined && !numeric) refuse('unset', 'Only a measure or a count waits for a number.')
   if (check.unset === 'leave' && NEVER_LEFT.includes(check.concern)) refuse('unset', `A check for ${check.concern} is asked whether or not a number is set.`)
   if (numeric && !(check.measurand && check.datum && check.unit)) refuse('measurand', 'A measure or count names its measurand, datum and unit.')

@@ -22,6 +22,8 @@ export const PERMISSIONS = {
   'site.write': office,
   'numbers.read': staff,
   'numbers.write': office,
+  'instrument.read': field,
+  'instrument.write': staff,
   'checklist.read': field,
   'job.read': field,
   'job.write': office,

@@ -43,13 +43,13 @@ export function walkChecks(basis: RoundBasis, outcome: RoundOutcome, element: Li
 const faceOf = (place: Place | null, face: Face | null) => face === null || !place?.face || place.face === face
 
 /** Repeats of a reading within measuring error: three are read, all are kept, the worst counts (arithmetic.md 2). */
-const REPEATS = 3
+export const REPEATS = 3
 
-/** Whether there is something to do here: not read, not yet inspected, disturbed or corrected and to be read again, or to be repeated within measuring error. */
+/** Whether there is something to do here: not read, not yet inspected, disturbed or corrected and to be read again, or within measuring error and to be settled. */
 export function isLeft({ outcome, open }: WalkCheck): boolean {
-  const { verdict, readAgain, setAside, heads } = outcome
+  const { verdict, readAgain, setAside } = outcome
   return verdict === 'notRead' || readAgain || (verdict === 'notInspected' && setAside?.why === 'notYet')
-    || (verdict === 'withinError' && heads.length < REPEATS) || open.some(one => one.state === 'corrected')
+    || verdict === 'withinError' || open.some(one => one.state === 'corrected')
 }
 
 /**
