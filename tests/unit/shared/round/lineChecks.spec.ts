@@ -1,7 +1,10 @@
+import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { fold } from '#shared/round/fold'
+import { isEnded } from '#shared/round/outcome'
 import { readyToSign } from '#shared/round/readyToSign'
 import { basisOf, bay, CHECKS, gap, GATE, RoundStory, RUN, RUN2 } from '../../../helpers/roundStory'
+import { deeds, written } from '../../../helpers/storyDeeds'
 
 const whole = { face: null, bay: null, from: null, height: null }
 /** R1 and R2 each owe the gap, but one answer stands for the line; the ties are asked of each element. */
@@ -70,4 +73,28 @@ describe('a check that is answered once for the line', () => {
     read.reading({ element: RUN2, check: 'gap-below', place: bay(3) }, gap(1))
     expect(gaps(outcomeOf(new RoundStory(basis(), 9), outcomeOf(read)))).toEqual([[RUN2, 'conforms']])
   })
+})
+
+describe('laws of what is answered once for the line', () => {
+  const story = (list: Parameters<typeof written>[0]) => written(list, new RoundStory(basis()))
+
+  it('hold whatever people do: it is asked somewhere, each open finding stands on its element, and nothing that was read is lost', () => {
+    fc.assert(fc.property(deeds, (list) => {
+      const round = story(list)
+      const outcome = outcomeOf(round)
+      const shown = outcome.checks.filter(one => one.check === 'gap-below')
+      expect(shown.length).toBeGreaterThan(0)
+      for (const one of outcome.deficiencies.filter(one => one.check === 'gap-below' && !isEnded(one))) expect(shown.find(check => check.element === one.element)?.verdict).toBe('doesNotConform')
+      const standing = new Set(outcome.elements.map(one => one.element))
+      const told = new Set([...shown.flatMap(one => [...one.heads.map(head => head.entry), ...one.earlier]), ...outcome.waiting, ...outcome.ignored.map(one => one.entry)])
+      const read = round.entries.filter(({ envelope }) => envelope.kind === 'reading' && envelope.check === 'gap-below' && standing.has(envelope.element!))
+      expect(read.map(({ envelope }) => envelope.id).filter(id => !told.has(id))).toEqual([])
+    }), { numRuns: 200 })
+  }, 60_000)
+  it('come to the same in any order', () => {
+    fc.assert(fc.property(deeds, (list) => {
+      const round = story(list)
+      expect(fold([...round.entries].reverse(), round.bases, { basis: round.basis })).toEqual(outcomeOf(round))
+    }), { numRuns: 100 })
+  }, 60_000)
 })
