@@ -134,7 +134,7 @@ function whyNot(doing: TagDoing, { of, reading }: TagRow, { accountId, may }: { 
 
 /** Where the walk opens a tag for its re-reading. */
 export function readAgainAt(jobId: string, { of, face }: Pick<TagRow, 'of' | 'face'>) {
-  return { path: `/w/${jobId}/check/${of.element}/${of.check}`, query: { ...(face && { face }), ...(of.place?.bay && { bay: of.place.bay }), again: of.id } }
+  return { path: `/w/${jobId}/check/${of.element}/${of.check}`, query: { ...(face && { face }), ...(of.place?.bay && { bay: of.place.bay }), again: of.id, from: 'tags' } }
 }
 
 /** An hour as people on site say it: `3 pm`, `3:30 pm`; in Spanish `15:00`. What stands after the minutes (a zone) is left out. */

@@ -1,5 +1,5 @@
 import { elementsOf, type Face } from '#shared/line/line'
-import { isLeft, walkChecks, type WalkCheck } from '#shared/round/walkPlan'
+import { isLeft, unread, walkChecks, type WalkCheck } from '#shared/round/walkPlan'
 import type { AsideOf } from '#shared/round/readingLinks'
 import type { FieldJob } from '~/composables/useFieldJob'
 
@@ -7,7 +7,8 @@ import type { FieldJob } from '~/composables/useFieldJob'
 export function useWalkChecks(job: FieldJob, elementId: MaybeRefOrGetter<string | null>) {
   const element = computed(() => job.line.value ? elementsOf(job.line.value).find(one => one.id === toValue(elementId)) ?? null : null)
   const checks = computed<WalkCheck[]>(() => element.value && job.basis.value && job.outcome.value ? walkChecks(job.basis.value, job.outcome.value, element.value) : [])
-  const left = computed(() => checks.value.filter(isLeft))
+  /** Of the element itself; what is answered once for the line belongs to none. */
+  const left = computed(() => checks.value.filter(one => !one.line && isLeft(one)))
   const asideOf: AsideOf = (id) => {
     const found = job.entries.value.find(entry => entry.envelope.id === id)
     return found ? found.envelope.check === null ? 'element' : 'check' : null
@@ -18,7 +19,7 @@ export function useWalkChecks(job: FieldJob, elementId: MaybeRefOrGetter<string 
     if (own) return own
     const check = job.basis.value?.checks.find(one => one.id === checkId)
     return check && element.value
-      ? { check, limits: [], open: [], outcome: { element: element.value.id, check: check.id, face, verdict: 'notRead', settled: false, readAgain: false, heads: [], governs: null, earlier: [], setAside: null, disturbedBy: [], baysMissing: 0 } }
+      ? { check, limits: [], open: [], line: false, outcome: unread(element.value.id, check.id, face) }
       : null
   }
   return { element, checks, left, asideOf, find }

@@ -78,6 +78,7 @@ export class DemoWalker {
     const checks = new Map(this.pinned.checks.map(check => [check.id, check]))
     const ids = new Map<string, string>()
     const groups = new Map<string, string>()
+    const once = new Set<string>()
     const tasks = this.pinned.tasks.slice(0, Math.ceil(this.pinned.tasks.length * share))
     for (const task of tasks) {
       const check = checks.get(task.check)!
@@ -85,9 +86,12 @@ export class DemoWalker {
       const place: Place = { face: task.face, bay: null, from: null, height: null }
       const found = findings.find(one => one.element === task.element && one.check === task.check && (task.face === null || one.place?.face === task.face))
       if (found) {
+        if (task.line) once.add(task.check)
         ids.set(found.tag, this.write('reading', { value: found.value, tag: found.tag, photos: found.photos, ...(found.note ? { note: found.note } : {}), ...(found.class ? { class: found.class } : {}) }, { element: task.element, check: task.check, place: found.place ?? place }))
         continue
       }
+      if (task.line && once.has(task.check)) continue
+      if (task.line) once.add(task.check)
       const value = goodValue(check, task, this.pinned, element)
       if (!value) this.write('setAside', { as: 'notApplicable', why: 'notHere', photos: [] }, { element: task.element, check: task.check, place })
       else {

@@ -17,6 +17,7 @@ import { saveLine } from '../services/job/saveLine'
 import { storePhoto } from '../services/photo/storePhoto'
 import { requestSealing } from '../services/record/requestSealing'
 import { sealRecord } from '../services/record/sealRecord'
+import { keepInstrument } from '../services/instrument/keepInstruments'
 import { putProvision } from '../services/provision/keepProvisions'
 import { readBasis, roundFold } from '../services/round/foldRound'
 import { listAuthorities, listSites, putAuthority, putClient, putContact, putSite } from '../services/site/keepSites'
@@ -36,6 +37,7 @@ interface Person { id: string, name: string, session: Session & { accountId: str
 /** Loads the demo through the services that people use, as if they had done it; nothing is written beside them. */
 export async function loadDemo(): Promise<void> {
   const people = await makePeople()
+  for (const staff of people.values()) await bringInstruments(staff.get('manager')!.session)
   for (const client of CLIENTS) {
     const staff = people.get(client.organisation)!
     const manager = staff.get('manager')!
@@ -53,6 +55,16 @@ export async function loadDemo(): Promise<void> {
   const signIns = [...ORGANISATIONS.flatMap(organisation => organisation.people.map(({ name, email, role }) => ({ name, email, role, organisation: organisation.name, password: DEMO_PASSWORD }))),
     { name: CONTACTS.ruth.name, email: CONTACTS.ruth.email, role: 'client', organisation: 'Wrenfold School District', password: DEMO_PASSWORD }]
   writeFileSync(`${useSettings().dataFolder}/demo-sign-ins.json`, JSON.stringify(signIns, null, 2))
+}
+
+/** What an invented contractor has in the bag; the errors are invented like the rest. */
+async function bringInstruments(session: Session & { accountId: string }): Promise<void> {
+  const bag = [
+    { name: '25 ft tape, no. 3', unit: 'length' as const, uncertainty: INCH / 16, text: '1/16 in', source: 'class on the tape' },
+    { name: '16 ft tape, no. 1', unit: 'length' as const, uncertainty: INCH / 32, text: '1/32 in', source: 'certificate 26-118' },
+    { name: 'digital level', unit: 'angle' as const, uncertainty: 200, text: '0.2°', source: 'maker\'s sheet' },
+  ]
+  for (const one of bag) await keepInstrument(session, { id: randomUUID(), ...one, checkedOn: daysFromNow(-60).toISOString().slice(0, 10) })
 }
 
 async function makePeople(): Promise<Map<string, Map<string, Person>>> {

@@ -9,6 +9,12 @@ export type Method = (typeof METHODS)[number]
 /** What one answer stands for. `worst`: the worst place that was found on the element. */
 export const ANSWERED_FOR = ['once', 'bay', 'face', 'worst'] as const
 
+/** Whether each element is asked, or the line as a whole: then it is read once, where it is worst. */
+export const ASKED = ['each', 'line'] as const
+
+/** What becomes of a measure on elements where nobody set a limit: read once for the line, or left out until somebody sets one. */
+export const UNSET = ['line', 'leave'] as const
+
 /** What becomes of an element while a finding is open, gravest first. */
 export const DEFICIENCY_CLASSES = ['outOfUse', 'correctFirst', 'ownerMayAccept'] as const
 export type DeficiencyClass = (typeof DEFICIENCY_CLASSES)[number]
@@ -33,6 +39,9 @@ export const checkLimitSchema = limitSchema.extend({ when: z.string().max(400).o
 /** Concerns whose checks are never below `correctFirst`, whoever writes the checklist. */
 export const FLOORED_CONCERNS: readonly (typeof CONCERNS)[number][] = ['law', 'drowning', 'entrapment', 'exit', 'accessibility']
 
+/** Concerns whose measures are taken even where nobody set a number. */
+const NEVER_LEFT: readonly (typeof CONCERNS)[number][] = ['drowning', 'entrapment', 'exit']
+
 const fields = z.object({
   /** Stable for ever; a published check keeps its id over versions. */
   id: z.string().regex(/^[a-z0-9-]{3,60}$/),
@@ -42,6 +51,9 @@ const fields = z.object({
   task: bothSchema,
   method: z.enum(METHODS),
   answeredFor: z.enum(ANSWERED_FOR),
+  /** `each` where it is not said. */
+  asked: z.enum(ASKED).optional(),
+  unset: z.enum(UNSET).optional(),
   elements: z.array(z.enum(ELEMENT_KINDS)).min(1),
   /** Settings of the face that call for it; empty means every face. */
   settings: z.array(z.enum(SETTINGS)),
@@ -57,6 +69,8 @@ const fields = z.object({
   conformsWhen: z.enum(['passes', 'stops']).optional(),
   /** For a template: which gauge to bring, in words. */
   gauge: bothSchema.optional(),
+  /** `guarded`: judged with a guard band of the instrument's expanded uncertainty (shared/limit/judge.ts); simple acceptance where it is not said. */
+  acceptance: z.literal('guarded').optional(),
   /** Which dimension may have been taken, where texts differ (side, diagonal, width). */
   dimensions: z.array(z.enum(['side', 'diagonal', 'width'])).optional(),
   limits: z.array(checkLimitSchema),
@@ -90,6 +104,12 @@ export const checkSchema = fields.superRefine((check, context) => {
   if (check.group && check.method !== 'look') refuse('group', 'Only looks may be confirmed as a group.')
   if (check.sampled && (check.concern === 'entrapment' || ['tieEnd', 'sharpEdge', 'boltProud', 'opening', 'gapBelow'].includes(check.finding)))
     refuse('sampled', 'Edges, ends, protrusions and entrapment are done in full, never sampled.')
+  if ((check.asked === 'line' || check.unset === 'line') && (check.answeredFor === 'bay' || check.answeredFor === 'face'))
+    refuse('asked', 'What is answered once for the line is answered once, or where it is worst, not by bay or face.')
+  if (check.asked === 'line' && check.group) refuse('asked', 'Looks of a group are confirmed at the end of each element, not once for the line.')
+  if (check.acceptance !== undefined && check.method !== 'measure') refuse('acceptance', 'Only a measure has an instrument with an uncertainty.')
+  if (check.unset !== undefined && !numeric) refuse('unset', 'Only a measure or a count waits for a number.')
+  if (check.unset === 'leave' && NEVER_LEFT.includes(check.concern)) refuse('unset', `A check for ${check.concern} is asked whether or not a number is set.`)
   if (numeric && !(check.measurand && check.datum && check.unit)) refuse('measurand', 'A measure or count names its measurand, datum and unit.')
   if (check.method === 'count' && check.unit !== 'count') refuse('unit', 'A count is in ones.')
   // A limit that hangs on a condition leaves places without one: there the reason must be readable.

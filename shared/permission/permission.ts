@@ -24,6 +24,8 @@ export const PERMISSIONS = {
   'numbers.write': office,
   'question.read': staff,
   'question.write': office,
+  'instrument.read': field,
+  'instrument.write': staff,
   'checklist.read': field,
   'job.read': field,
   'job.write': office,

@@ -16,6 +16,8 @@ export interface WalkTask {
   face: Face | null
   /** Keys into {@link RoundBasis.limits}; none means "recorded, no limit set" where the method measures. */
   limits: string[]
+  /** One answer stands for the whole line: it is read where it is worst, on any of the elements that have this task. */
+  line?: true
 }
 
 /** What a walk is held against, pinned by digest: a change at the desk is a new basis, never an edit. Serialised by RFC 8785, named by its SHA-256. */

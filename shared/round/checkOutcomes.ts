@@ -41,11 +41,18 @@ export function checkOutcomes(sources: CheckSources): CheckOutcome[] {
   for (const at of asides) {
     if (links.counts[at] === 0 || threads.replaced[at] === 1) continue
     const { element, check, place } = links.entries[at]!.envelope
-    for (const slot of slots.of(element!, check)) if (slot.face === null || !place?.face || place.face === slot.face) slot.asides.push(at)
+    for (const slot of slots.of(element!, check)) {
+      if (slot.face !== null && place?.face && place.face !== slot.face) continue
+      slot.asides.push(at)
+      slot.spoken ||= check !== null
+    }
   }
   const disturbedBy = new Map<Slot, number[]>()
   for (const at of corrections) {
-    for (const slot of disturbed(links.entries[at]!)) disturbedBy.set(slot, [...disturbedBy.get(slot) ?? [], at])
+    for (const slot of disturbed(links.entries[at]!)) {
+      disturbedBy.set(slot, [...disturbedBy.get(slot) ?? [], at])
+      slot.spoken ||= links.entries[at]!.envelope.element === slot.element
+    }
   }
   const found = new Map<Slot, DeficiencyOutcome[]>()
   for (const one of deficiencies) {

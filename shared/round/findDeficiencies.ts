@@ -18,13 +18,13 @@ export interface DeficiencySources {
 }
 
 /** Which later words take a word off the table, so that the next move is no longer the one that it asked for. */
-const ANSWERED_BY: Partial<Record<EntryKind, readonly EntryKind[]>> = {
+export const ANSWERED_BY: Partial<Record<EntryKind, readonly EntryKind[]>> = {
   assignment: ['assignment'],
   correction: ['reading', 'cannot', 'assignment', 'deviationOffered'],
   cannot: ['reading', 'correction', 'cannot', 'assignment', 'deviationOffered', 'referred'],
   dangerNow: ['dangerNow'],
   deviationOffered: ['deviationAccepted', 'deviationOffered'],
-  disputed: ['reading', 'correction', 'cannot', 'assignment', 'deviationOffered', 'deviationAccepted', 'decided', 'referred', 'settled'],
+  disputed: ['reading', 'correction', 'assignment', 'deviationOffered', 'decided', 'referred', 'settled'],
 }
 /** Whose move it is, most pressing word first. */
 const STATES: readonly [EntryKind, DeficiencyState][] = [['disputed', 'disputed'], ['deviationOffered', 'offered'], ['correction', 'corrected'], ['cannot', 'cannot'], ['assignment', 'assigned']]

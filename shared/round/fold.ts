@@ -4,6 +4,7 @@ import { basisInForce } from './basisInForce'
 import type { CarriedOver } from './carryOver'
 import { carryOver } from './carryOver'
 import { checkOutcomes } from './checkOutcomes'
+import type { OnceForTheLine } from './elementOutcomes'
 import { elementOutcomes } from './elementOutcomes'
 import { findDeficiencies } from './findDeficiencies'
 import type { ReadingJudgement } from './judgeReading'
@@ -39,6 +40,7 @@ export interface Folded {
   ground: Ground
   /** How many of the outcome's checks were asked for; those found beside the list come after them. */
   planned: number
+  once: OnceForTheLine
   /** How many bases were known, and what it was made with. */
   bases: number
   options: Pick<FoldOptions, 'basis' | 'startsFrom'>
@@ -57,7 +59,7 @@ export function fold(entries: readonly KeptEntry[], bases: ReadonlyMap<string, R
 }
 
 /** As {@link fold}, to be gone on with. `part`: only these elements, on the ground of an earlier fold; what is one for the round is not told again. */
-export function foldWhole(entries: readonly KeptEntry[], bases: ReadonlyMap<string, RoundBasis>, options: FoldOptions = {}, part?: { ground: Ground, elements: ReadonlySet<string> }): Folded {
+export function foldWhole(entries: readonly KeptEntry[], bases: ReadonlyMap<string, RoundBasis>, options: FoldOptions = {}, part?: { ground: Ground, elements: ReadonlySet<string>, once: OnceForTheLine }): Folded {
   const carried = carryOver(options.startsFrom, entries)
   const links = linkEntries(carried.entries.length === 0 ? entries : [...entries, ...carried.entries], carried.settledIds)
   const kinds = byKind(links)
@@ -97,9 +99,9 @@ export function foldWhole(entries: readonly KeptEntry[], bases: ReadonlyMap<stri
     return (checkOf(correction)?.disturbs ?? []).flatMap(check => [element!, ...neighbours.get(element!) ?? []].flatMap(one => slots.of(one, check)))
   }
   const checks = checkOutcomes({ links, threads, slots, slotOf, judged, overruled, corrections, disturbed, asides: kinds.setAside, carried, deficiencies: all })
-  const found = elementOutcomes(slots, checks, all)
+  const found = elementOutcomes(slots, checks, all, part?.once)
   return {
-    entries, ground, planned: found.planned, bases: bases.size, options,
+    entries, ground, planned: found.planned, once: found.once, bases: bases.size, options,
     outcome: roundOutcome(ground, {
       elements: found.elements, checks: found.checks, deficiencies: all, waiting: links.waiting, unknown: links.unknown,
       ignored: links.ignored, refusedLinks: links.refusedLinks, erased: erased.map(at => links.entries[at]!.envelope.id),

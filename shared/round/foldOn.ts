@@ -15,7 +15,8 @@ const elementOf = (entry: KeptEntry) => entry.envelope.element ?? NO_ELEMENT
  *
  * Why a part is enough: on one ground, what an element comes to hangs on the entries about it, on those about its neighbours (a correction there may disturb it), and on
  * whatever these name or are named by, link after link. So the new entries can change the elements that they are linked with and the neighbours of those; and to fold
- * these, it takes again their neighbours and all that is linked. Where the ground itself may move, or an entry stands more than once or waits, all is folded.
+ * these, it takes again their neighbours and all that is linked. Where the ground itself may move, or an entry stands more than once or waits, all is folded; so it is
+ * where a new entry may speak of what is answered once for the line, which hangs on every element.
  *
  * @param before - the fold to go on from; null where there is none
  */
@@ -24,9 +25,9 @@ export function foldOn(before: Folded | null, fresh: readonly KeptEntry[], bases
   const reach = before && goesOn(before, bases, options) ? reachOf(before, fresh, entries) : null
   if (!before || !reach) return foldWhole(entries, bases, options)
 
-  const { ground } = before
+  const { ground, once } = before
   const { changes, needs } = reach
-  const { outcome: part, planned } = foldWhole(entries.filter(entry => needs.has(elementOf(entry))), bases, options, { ground, elements: needs })
+  const { outcome: part, planned } = foldWhole(entries.filter(entry => needs.has(elementOf(entry))), bases, options, { ground, elements: needs, once })
   const stays = <T extends { element: string }>(one: T) => !changes.has(one.element)
   const comes = <T extends { element: string }>(one: T) => changes.has(one.element)
   /** In a list whose members and order did not change, those that did. */
@@ -44,7 +45,7 @@ export function foldOn(before: Folded | null, fresh: readonly KeptEntry[], bases
   const told = new Set(entries.filter(entry => changes.has(elementOf(entry)) && entry.envelope.kind !== 'lineEdit').map(entry => entry.envelope.id))
   const retold = <T>(list: readonly T[], parts: readonly T[], idOf: (one: T) => string) => [...list.filter(one => !told.has(idOf(one))), ...parts.filter(one => told.has(idOf(one)))]
   return {
-    entries, ground, planned: before.planned, bases: bases.size, options,
+    entries, ground, once, planned: before.planned, bases: bases.size, options,
     outcome: roundOutcome(ground, {
       elements: [...inPlace(elements.slice(0, walking.size), part.elements.filter(one => walking.has(one.element))), ...struck],
       checks: [...inPlace(checks.slice(0, before.planned), part.checks.slice(0, planned)), ...beside],
@@ -64,14 +65,23 @@ function goesOn(before: Folded, bases: ReadonlyMap<string, RoundBasis>, { basis,
 }
 
 /** The elements whose outcome new entries may change, and those whose entries it takes to tell; null where all must be folded. */
-function reachOf({ ground, entries: earlier }: Folded, fresh: readonly KeptEntry[], entries: readonly KeptEntry[]): { changes: Set<string>, needs: Set<string> } | null {
+function reachOf({ ground, once, entries: earlier }: Folded, fresh: readonly KeptEntry[], entries: readonly KeptEntry[]): { changes: Set<string>, needs: Set<string> } | null {
   const ids = new Set(fresh.map(entry => entry.envelope.id))
   if (ids.size !== fresh.length || fresh.some(entry => !isKnown(entry) || GROUND_KINDS.includes(entry.envelope.kind)) || earlier.some(entry => ids.has(entry.envelope.id))) return null
+  if (once.checks.size > 0 && speaksOfTheLine(once.checks, fresh, entries)) return null
   const linked = linkedElements(entries)
   if (!linked) return null
   const beside = (elements: ReadonlySet<string>) => new Set([...elements, ...[...elements].flatMap(element => ground.neighbours.get(element) ?? [])])
   const changes = beside(closed(new Set(fresh.map(elementOf)), linked))
   return { changes, needs: closed(beside(changes), linked) }
+}
+
+/** Whether new entries may touch a check that is answered once for the line: by their own check, for all checks of an element, by what they name, or by disturbing it. */
+function speaksOfTheLine(checks: ReadonlySet<string>, fresh: readonly KeptEntry[], entries: readonly KeptEntry[]): boolean {
+  const speaks = ({ envelope }: KeptEntry) => envelope.check === null || checks.has(envelope.check) || envelope.kind === 'correction'
+  if (fresh.some(speaks)) return true
+  const named = new Set(fresh.flatMap(({ envelope }) => [...envelope.answers, ...envelope.replaces]))
+  return named.size > 0 && entries.some(entry => named.has(entry.envelope.id) && speaks(entry))
 }
 
 /** Which elements' entries name those of others, both ways; null where an entry names one that is not here. */

@@ -55,6 +55,9 @@ const valueAt = (facts: Facts, path: readonly string[]): unknown => path.reduce<
  * A check is asked of an element where its kind fits and at least one face has one of the settings (none named: any) and meets the condition. Answered
  * for the `face` it is one task for each such face; otherwise one task, held against the limits of all such faces together, so that the strictest governs.
  *
+ * A measure on which nobody set a limit is left out, or asked of the line as a whole, where its check says so. What is asked of the line as a whole is a task
+ * of each element that calls for it, marked `line`: the fold makes one answer of them (elementOutcomes.ts).
+ *
  * Elements that no condition can tell apart are worked out once. Throws {@link LimitsDiffer}; a condition that cannot be compiled throws ConditionError.
  */
 export function walkList(elements: readonly LineElement[], checks: readonly Check[], provisions: readonly Provision[], system: System): WalkList {
@@ -72,10 +75,13 @@ export function walkList(elements: readonly LineElement[], checks: readonly Chec
     const places: { face: Face | null, of: Facts[] }[] = check.answeredFor === 'face'
       ? asking.map(facts => ({ face: facts.face.name as Face, of: [facts] }))
       : [{ face: null, of: asking }]
-    return places.map(({ face, of }) => {
+    return places.flatMap(({ face, of }) => {
       const force = limitsAt(check, of, provisionsOn.get(check.measurand ?? '') ?? [])
       for (const one of force.setAside) setAside.set(`${one.limit.id} ${one.by}`, one)
-      return { check: check.id, face, limits: force.limits.map(keep) }
+      const unset = force.limits.length === 0 ? check.unset : undefined
+      if (unset === 'leave') return []
+      const line = check.asked === 'line' || unset === 'line'
+      return { check: check.id, face, limits: force.limits.map(keep), ...(line && { line }) }
     })
   })
 
@@ -86,7 +92,7 @@ export function walkList(elements: readonly LineElement[], checks: readonly Chec
     const key = FACES.map(face => paths.map(path => String(valueAt(faces[face], path))).join('|')).join('/')
     const plans = planned.get(key) ?? plan(FACES.map(face => faces[face]), element.kind)
     planned.set(key, plans)
-    for (const { check, face, limits: keys } of plans) tasks.push({ element: element.id, check, face, limits: keys })
+    for (const one of plans) tasks.push({ element: element.id, ...one })
   }
   return { tasks, limits, setAside: [...setAside.entries()].sort(([one], [other]) => one < other ? -1 : 1).map(([, value]) => value) }
 }

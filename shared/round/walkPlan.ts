@@ -15,32 +15,52 @@ export interface WalkCheck {
   limits: readonly string[]
   /** Deficiencies of this check here that have not ended. */
   open: readonly DeficiencyOutcome[]
+  /** One answer stands for the line; it may be read on this element. */
+  line: boolean
 }
 
-/** All checks of an element in the order of the walk list; those that were read beside the list come last. */
+/** A check of which nothing was said on an element (and face). */
+export function unread(element: string, check: string, face: Face | null): CheckOutcome {
+  return { element, check, face, verdict: 'notRead', settled: false, readAgain: false, heads: [], governs: null, earlier: [], setAside: null, disturbedBy: [], baysMissing: 0 }
+}
+
+/** All checks of an element in the order of the walk list; then those that are answered once for the line and were read elsewhere, or nowhere yet; last those beside the list. */
 export function walkChecks(basis: RoundBasis, outcome: RoundOutcome, element: LineElement): WalkCheck[] {
   const checks = new Map(basis.checks.map(check => [check.id, check]))
   const own = basis.tasks.filter(task => task.element === element.id)
   // An element that was added in the field is not in the pinned list: the conditions of the checklist decide.
   const tasks = own.length > 0 ? own : tasksFor(basis, element).tasks
-  return outcome.checks.filter(one => one.element === element.id).flatMap((one) => {
+  const here = outcome.checks.filter(one => one.element === element.id)
+  const elsewhere = tasks.filter(task => task.line && here.every(one => one.check !== task.check)).map(task => unread(element.id, task.check, task.face))
+  return [...here, ...elsewhere].flatMap((one) => {
     const check = checks.get(one.check)
     if (!check) return []
-    const limits = (tasks.find(task => task.check === one.check && task.face === one.face) ?? tasks.find(task => task.check === one.check))?.limits ?? []
-    return [{ check, outcome: one, limits, open: outcome.deficiencies.filter(each => each.element === element.id && each.check === check.id && faceOf(each.place, one.face) && !isEnded(each)) }]
+    const task = tasks.find(task => task.check === one.check && task.face === one.face) ?? tasks.find(task => task.check === one.check)
+    return [{ check, outcome: one, limits: task?.limits ?? [], line: task?.line ?? false, open: outcome.deficiencies.filter(each => each.element === element.id && each.check === check.id && faceOf(each.place, one.face) && !isEnded(each)) }]
   })
 }
 
 const faceOf = (place: Place | null, face: Face | null) => face === null || !place?.face || place.face === face
 
 /** Repeats of a reading within measuring error: three are read, all are kept, the worst counts (arithmetic.md 2). */
-const REPEATS = 3
+export const REPEATS = 3
 
-/** Whether there is something to do here: not read, not yet inspected, disturbed or corrected and to be read again, or to be repeated within measuring error. */
+/** Whether there is something to do here: not read, not yet inspected, disturbed or corrected and to be read again, or within measuring error and to be settled. */
 export function isLeft({ outcome, open }: WalkCheck): boolean {
-  const { verdict, readAgain, setAside, heads } = outcome
+  const { verdict, readAgain, setAside } = outcome
   return verdict === 'notRead' || readAgain || (verdict === 'notInspected' && setAside?.why === 'notYet')
-    || (verdict === 'withinError' && heads.length < REPEATS) || open.some(one => one.state === 'corrected')
+    || verdict === 'withinError' || open.some(one => one.state === 'corrected')
+}
+
+/**
+ * What is answered once for the line, in the order of the checks: each where it was read or is to be read, as {@link walkChecks} gives it there. A check that was
+ * read at several places stands once for each.
+ */
+export function lineChecks(basis: RoundBasis, outcome: RoundOutcome): WalkCheck[] {
+  const order = new Map(basis.checks.map((check, at) => [check.id, at]))
+  const said = new Set(outcome.checks.map(one => `${one.element} ${one.check}`))
+  return elementsOf(outcome.line).flatMap(element => walkChecks(basis, outcome, element).filter(one => one.line && said.has(`${element.id} ${one.check.id}`)))
+    .sort((a, b) => order.get(a.check.id)! - order.get(b.check.id)!)
 }
 
 /** Whether a look may be confirmed with the others at the end of a pass along this face. */
@@ -60,9 +80,32 @@ export function passCovers(checks: readonly WalkCheck[], face: Face): WalkCheck[
   })
 }
 
-/** What is answered one by one on an element: everything left but the looks that the end of the pass asks about. */
+/** What is in the hand while a check is answered, in the order in which one takes it up: with eyes and hands first, then the tape, what else there is in the bag last. */
+export const TOOLS = ['look', 'hand', 'tape', 'gauge', 'instrument', 'count'] as const
+export type Tool = (typeof TOOLS)[number]
+const TOOL_OF: Record<Check['method'], Tool> = { look: 'look', trial: 'hand', measure: 'tape', template: 'gauge', count: 'count' }
+
+/** What a check is answered with; `instrument` reads an angle, a time or a force. */
+export function toolOf({ method, unit }: Pick<Check, 'method' | 'unit'>): Tool {
+  return method === 'measure' && unit !== 'length' ? 'instrument' : TOOL_OF[method]
+}
+
+/** Checks by what is in the hand; within a tool in the order given. */
+export function byTool(checks: readonly WalkCheck[]): WalkCheck[] {
+  return TOOLS.flatMap(tool => checks.filter(one => toolOf(one.check) === tool))
+}
+
+/** The next check that is left after one, by what is in the hand and round to the first; null when none is. */
+export function nextLeft(checks: readonly WalkCheck[], after: { check: string, face: Face | null }): WalkCheck | null {
+  const order = byTool(checks)
+  const at = order.findIndex(one => one.check.id === after.check && one.outcome.face === after.face)
+  const left = (one: WalkCheck) => isLeft(one) && one.open.every(each => each.state !== 'corrected')
+  return [...order.slice(at + 1), ...order.slice(0, Math.max(at, 0))].find(left) ?? null
+}
+
+/** What is answered one by one on an element, by what is in the hand: all that is left but the looks that the end of the pass asks about, and what is answered once for the line. */
 export function oneByOne(checks: readonly WalkCheck[]): WalkCheck[] {
-  return checks.filter(one => isLeft(one) && (!one.check.group || one.open.some(each => each.state === 'corrected')))
+  return byTool(checks).filter(one => isLeft(one) && !one.line && (!one.check.group || one.open.some(each => each.state === 'corrected')))
 }
 
 /**

@@ -18,6 +18,10 @@ export interface Slot {
   bays: number
   /** False where nobody asked for it: a finding beside the list, or on an element that was struck. */
   planned: boolean
+  /** One answer stands for the line (WalkTask.line). */
+  line: boolean
+  /** For a slot of the line: something was said of it on this very element, or a correction there disturbed it. */
+  spoken: boolean
   /** Positions of the readings and set-asides that count here. */
   readings: number[]
   asides: number[]
@@ -69,13 +73,13 @@ export class WalkSlots {
     for (const element of this.elements) {
       for (const task of tasksOf(element.id) ?? []) {
         const check = this.checkById.get(task.check)
-        if (check) this.add(element.id, element, check, task.face, task.limits, basis.limits, true)
+        if (check) this.add(element.id, element, check, task.face, task.limits, basis.limits, true, task.line ?? false)
       }
     }
   }
 
-  private add(id: string, element: LineElement | undefined, check: Check, face: Face | null, keys: readonly string[], limits: Readonly<Record<string, Limit>>, planned: boolean): Slot {
-    const slot: Slot = { element: id, check, face, keys, limits, length: element?.length ?? 0, bays: element?.bays ?? 1, planned, readings: [], asides: [] }
+  private add(id: string, element: LineElement | undefined, check: Check, face: Face | null, keys: readonly string[], limits: Readonly<Record<string, Limit>>, planned: boolean, line = false): Slot {
+    const slot: Slot = { element: id, check, face, keys, limits, length: element?.length ?? 0, bays: element?.bays ?? 1, planned, line, spoken: false, readings: [], asides: [] }
     this.all.push(slot)
     let checks = this.byElement.get(id)
     if (!checks) this.byElement.set(id, checks = new Map())

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import type { EntryRefusal } from '../entry/entryRefused'
+import type { Instrument } from '../api/instrument'
 import type { Role } from '../permission/permission'
 import type { RoundOutcome } from '../round/outcome'
 
@@ -59,6 +60,8 @@ export interface FieldBundle {
   letter: string
   /** Bases of the round by digest, canonical text each; the device checks the digest. */
   bases: { digest: string, text: string }[]
+  /** What can be measured with; missing from a bundle that an older server gave. */
+  instruments?: Instrument[]
   people: { accountId: string, name: string, role: Role }[]
   contacts: { id: string, accountId: string | null, name: string, title: string, phone: string, accepts: boolean }[]
   /** Devices that have the round along, this one too. */

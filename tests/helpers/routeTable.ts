@@ -183,6 +183,16 @@ export const ROUTES: RouteRow[] = [
     },
   },
   {
+    file: 'api/instruments/[id].delete.ts', permission: 'instrument.write', again: 404,
+    async call(side, { admin }) {
+      const id = randomUUID()
+      await admin.query(`insert into instrument (organisation_id, id, name, unit, uncertainty, text, source, written_by) values ($1, $2, $3, 'length', 508000, '1/16 in', 'class on the tape', $4)`, [side.id, id, `tape ${id}`, side.accounts.manager])
+      return { method: 'DELETE', path: `/api/instruments/${id}` }
+    },
+  },
+  { file: 'api/instruments/index.get.ts', permission: 'instrument.read', call: () => get('/api/instruments'), foreign: null, rows: { ids: idsOf, staff: 'select id from instrument where organisation_id = $1 and ended_at is null', crew: 'select id from instrument where organisation_id = $1 and ended_at is null' } },
+  { file: 'api/instruments/index.put.ts', permission: 'instrument.write', call: () => ({ method: 'PUT', path: '/api/instruments', body: { id: randomUUID(), name: `tape ${randomUUID()}`, unit: 'length', uncertainty: 508_000, text: '1/16 in', source: 'class on the tape', checkedOn: null } }), foreign: null },
+  {
     file: 'api/numbers/[id].delete.ts', permission: 'numbers.write', again: 404,
     async call(side, { admin }) {
       const { authorityId, provision: one } = provision(side, 'pool')

@@ -51,6 +51,12 @@ describe('each built-in check', () => {
   it('does edges, ends, protrusions and entrapment in full', () => {
     expect(all.filter(check => check.sampled).map(check => check.finding).filter(kind => !['loosePart', 'other'].includes(kind))).toEqual([])
   })
+  it('is read once for the line only beside a check of its kind that every element is asked for, where edges, ends, protrusions or entrapment are at stake', () => {
+    const once = all.filter(check => (check.asked === 'line' || check.unset === 'line') && (check.concern === 'entrapment' || ['tieEnd', 'sharpEdge', 'boltProud', 'opening', 'gapBelow'].includes(check.finding)))
+    expect(once.length).toBeGreaterThan(6)
+    const each = all.filter(check => check.asked !== 'line' && check.unset === undefined && check.settings.length === 0)
+    expect(once.flatMap(check => check.elements.filter(kind => !each.some(one => one.finding === check.finding && one.elements.includes(kind))).map(kind => `${check.id} on a ${kind}`))).toEqual([])
+  })
   it('is never below correct first where law, drowning, entrapment, exits or accessibility is at stake', () => {
     expect(all.filter(check => ['law', 'drowning', 'entrapment', 'exit', 'accessibility'].includes(check.concern) && check.class === 'ownerMayAccept').map(check => check.id)).toEqual([])
   })

@@ -26,10 +26,6 @@ export async function freezeRound(tx: Tx, roundId: string): Promise<void> {
   await tx.client.query(`update round set state = 'frozen' where organisation_id = app_organisation() and id = $1`, [roundId])
 }
 
-export async function thawRound(tx: Tx, roundId: string): Promise<void> {
-  await tx.client.query(`update round set state = 'open' where organisation_id = app_organisation() and id = $1 and state = 'frozen'`, [roundId])
-}
-
 export async function insertRecord(tx: Tx, record: { id: string, jobId: string, roundId: string, number: number, scope: string, code: string, border: number, overDevices: string | null, requestedBy: string }): Promise<void> {
   await tx.client.query('insert into record (organisation_id, id, job_id, round_id, number, scope, code, border, over_devices, requested_by) values (app_organisation(), $1, $2, $3, $4, $5, $6, $7, $8, $9)',
     [record.id, record.jobId, record.roundId, record.number, record.scope, record.code, record.border, record.overDevices, record.requestedBy])

@@ -1,4 +1,5 @@
 export * from './account'
+export * from './instrument'
 export * from './job'
 export * from './limiter'
 export * from './question'

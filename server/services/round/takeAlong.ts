@@ -2,6 +2,7 @@ import type { FieldBundle } from '../../../shared/sync/sync'
 import { SYNC_VERSION } from '../../../shared/sync/sync'
 import { jobCode } from '../../../shared/api/job'
 import { entrance } from '../../database/entrance'
+import { instrumentsInUse } from '../../database/queries/instrument'
 import * as rounds from '../../database/queries/round'
 import { outcomeBefore } from '../../database/queries/state'
 import type { Session } from '../../database/withSession'
@@ -41,6 +42,7 @@ export async function takeAlong(who: Session & { accountId: string, name: string
       startsFrom: await outcomeBefore(tx, jobId, round.number) ?? null,
       letter: devices.find(one => one.device === device.device)!.letter,
       bases: await rounds.basesOf(tx, jobId),
+      instruments: await instrumentsInUse(tx),
       people: await rounds.peopleOf(tx),
       contacts: who.standing === 'staff' ? await rounds.contactsOf(tx, head.client.id) : [],
       devices,

@@ -25,7 +25,7 @@ const limit = (id: string, datum: string, low: number | null, high: number | nul
   low: low === null ? null : { imperial: low * INCH, inclusive: true }, high: high === null ? null : { imperial: high * INCH, inclusive: true },
 })
 const standing = (id: string, limits: string[] = []): WalkCheck => ({
-  check: checks.find(check => check.id === id)!, limits, open: [],
+  check: checks.find(check => check.id === id)!, limits, line: false, open: [],
   outcome: { element: gate.id, check: id, face: null, verdict: 'notRead', settled: false, readAgain: false, heads: [], governs: null, earlier: [], setAside: null, disturbedBy: [], baysMissing: 0 },
 })
 const LIMITS = { pool: limit('pool', 'bottom-of-leaf', 54, null), reach: limit('reach', 'ground', null, 54) }

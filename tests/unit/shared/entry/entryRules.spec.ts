@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { ANSWERED_BY } from '#shared/round/findDeficiencies'
 import type { AnyEntry, EntryKind } from '#shared/entry/entry'
 import { ENTRY_KINDS } from '#shared/entry/entry'
 import type { Target } from '#shared/entry/entryRules'
@@ -107,5 +108,12 @@ describe('checking targets', () => {
     expect(last(it)).toBe('ok')
     it.reading({ ...GAP, replaces: [whole] }, gap(1))
     expect(last(it)).toBe('target /envelope/replaces/0')
+  })
+
+  it('let no word take another off the table that it may not name', () => {
+    // contracts.md 2: an entry answers only kinds that its own kind allows; a dispute does not end by a word that cannot look at it
+    const pairs = Object.entries(ANSWERED_BY).flatMap(([kind, by]) => by.map(other => [other, kind] as const))
+    expect(pairs.length).toBeGreaterThan(15)
+    expect(pairs.filter(([other, kind]) => !(ENTRY_RULES[other].answers as readonly string[]).includes(kind) && !(ENTRY_RULES[other].replaces as readonly string[]).includes(kind))).toEqual([])
   })
 })

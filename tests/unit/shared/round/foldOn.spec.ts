@@ -10,25 +10,27 @@ import { deeds, written } from '../../../helpers/storyDeeds'
 vi.setConfig({ testTimeout: 120_000 })
 const RUNS = { numRuns: Number(process.env.LAW_RUNS ?? 150) }
 
-/** A story on a line in which so many elements, on which nothing happens but now and then a look, stand between those of the deeds. */
-function onLongLine(between: readonly number[]): RoundStory {
+/** A story on a line in which so many elements, on which nothing happens but now and then a look, stand between those of the deeds; one check may be answered once for the line. */
+function onLongLine(between: readonly number[], ofTheLine: string | null = null): RoundStory {
   const shape = basisOf()
   const [run, gate, run2] = shape.line.sides[0]!.elements
   let count = 0
   const plain = (many: number) => Array.from({ length: many }, () => element(uuid(7, 100 + count++), `P${count}`, { bays: 2 }))
   const elements = [...plain(between[0]!), run!, ...plain(between[1]!), gate!, ...plain(between[2]!), run2!, ...plain(between[3]!)]
   const tasks = elements.flatMap(one => shape.tasks.some(task => task.element === one.id) ? shape.tasks.filter(task => task.element === one.id) : [{ element: one.id, check: 'tie-ends', face: null, limits: [] }])
+    .map(task => task.check === ofTheLine ? { ...task, line: true as const } : task)
   return new RoundStory({ ...shape, line: { ...shape.line, sides: [{ ...shape.line.sides[0]!, elements }] }, tasks })
 }
 
+const ofTheLines = fc.constantFrom(null, 'gap-below', 'tie-ends')
 const betweens = fc.array(fc.nat(5), { minLength: 4, maxLength: 4 })
 /** Notes and looks that are strewn in: about what, naming which, and not before which turn. */
 const strewn = fc.array(fc.record({ at: fc.nat(40), element: fc.nat(3), names: fc.array(fc.nat(40), { maxLength: 2 }), look: fc.boolean() }), { maxLength: 4 })
 
 it('comes to what folding all comes to, in whatever pieces and whatever order the entries come', () => {
   let kept = 0
-  fc.assert(fc.property(deeds, betweens, strewn, fc.array(fc.integer({ min: 1, max: 6 }), { minLength: 1, maxLength: 12 }), fc.option(fc.array(fc.nat(7), { minLength: 3, maxLength: 20 })), (list, between, extra, pieces, late) => {
-    const story = written(list, onLongLine(between))
+  fc.assert(fc.property(deeds, betweens, ofTheLines, strewn, fc.array(fc.integer({ min: 1, max: 6 }), { minLength: 1, maxLength: 12 }), fc.option(fc.array(fc.nat(7), { minLength: 3, maxLength: 20 })), (list, between, ofTheLine, extra, pieces, late) => {
+    const story = written(list, onLongLine(between, ofTheLine))
     const turns = new Map(story.entries.map((entry, at) => [entry.envelope.id, at]))
     for (const one of extra) {
       const named = one.names.map(at => story.entries[at % story.entries.length]!).filter(entry => entry.envelope.kind !== 'walkOpened').map(entry => entry.envelope.id)
@@ -53,6 +55,16 @@ it('comes to what folding all comes to, in whatever pieces and whatever order th
   }), RUNS)
   // That it was not folded whole each time: what did not change is the same object.
   expect(kept).toBeGreaterThan(2 * RUNS.numRuns)
+})
+
+it('goes on where one check is answered once for the line and nothing new speaks of it', () => {
+  const story = onLongLine([0, 3, 3, 0], 'gap-below')
+  story.open()
+  const before = foldOn(null, story.entries, story.bases)
+  story.reading({ element: RUN2, check: 'tie-ends' }, look('clear'))
+  const after = foldOn(before, story.entries.slice(-1), story.bases)
+  expect(after.outcome).toEqual(fold(story.entries, story.bases))
+  expect(after.outcome.checks.filter((check, at) => check === before.outcome.checks[at]).length).toBeGreaterThan(3)
 })
 
 it('folds only what new entries can touch', () => {

@@ -1,6 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import type { Check, Checklist } from '#shared/checklist/check'
+import { checkSchema, type Check, type Checklist } from '#shared/checklist/check'
 import { compileCondition } from '#shared/checklist/condition'
 import { factsOf } from '#shared/checklist/facts'
 import { ELEMENT_KINDS, elementSchema, FACES, GATE_FORMS, SETTINGS, WORKS } from '#shared/line/line'
@@ -38,8 +38,8 @@ describe('makeBasis', () => {
   it('tries nothing by hand on an automatic gate, and refers it', () => {
     const { tasks, checks } = makeBasis(lineOf(aGate({ automatic: true, form: 'slide' }, { outer: ['school'] })), lists, [])
     const method = new Map(checks.map(check => [check.id, check.method]))
-    // What is left to try there is the post, its bolts and caps: nothing that moves the leaf
-    expect(tasks.filter(task => method.get(task.check) === 'trial').map(task => task.check).sort()).toEqual(['bolts-tight', 'caps-tight', 'post-firm'])
+    // What is left to try there are bolts: nothing that moves the leaf
+    expect(tasks.filter(task => method.get(task.check) === 'trial').map(task => task.check).sort()).toEqual(['bolts-tight'])
     expect(tasks.map(task => task.check)).toContain('automatic-referred')
   })
   it('asks nothing of workmanship where the fence is others\' work', () => {
@@ -125,6 +125,8 @@ describe('walkList', () => {
         && (check.when === undefined || compileCondition(check.when).holds(facts[face])))
       const asked = check.answeredFor === 'face' ? faces : faces.length > 0 ? [null] : []
       return asked.map(face => ({ element: element.id, check: check.id, face, limits: limitsInForce(check, element, face, [city]).limits.map(limit => limit.id) }))
+        .filter(task => task.limits.length > 0 || check.unset !== 'leave')
+        .map(task => check.asked === 'line' || (task.limits.length === 0 && check.unset === 'line') ? { ...task, line: true } : task)
     })
   }
 
@@ -133,6 +135,28 @@ describe('walkList', () => {
       expect(walkList(elements, checks, [city], 'imperial').tasks).toEqual(elements.flatMap(plainly))
     }), { numRuns: 40 })
   }, 30_000)
+})
+
+describe('a measure that hangs on a number', () => {
+  const measure = (more: Partial<Check>): Check => ({ ...checks.find(check => check.id === 'gap-below')!, id: 'held-gap', limits: [], noLimit: { en: 'Ask.', es: 'Pregunte.' }, ...more })
+  const { checks } = makeBasis(lineOf(aRun()), lists, [])
+  const [pool, street] = [aRun({ inner: ['pool'] }, 1), aRun({ outer: ['walkway'] }, 2)]
+  const tasksOf = (check: Check, provisions: Provision[]) => walkList([pool, street], [check], provisions, 'imperial').tasks
+
+  it('is left out until somebody sets one, and then asked where it holds', () => {
+    expect(tasksOf(measure({ unset: 'leave', concern: 'law' }), [])).toEqual([])
+    expect(tasksOf(measure({ unset: 'leave', concern: 'law' }), [city])).toEqual([{ element: pool.id, check: 'held-gap', face: null, limits: ['city-gap'] }])
+  })
+  it('or is read once for the line where nobody did', () => {
+    expect(tasksOf(measure({ unset: 'line' }), [city])).toEqual([{ element: pool.id, check: 'held-gap', face: null, limits: ['city-gap'] }, { element: street.id, check: 'held-gap', face: null, limits: [], line: true }])
+  })
+  it('is never left out where drowning, entrapment or an exit is at stake, nor read by bay and once for the line', () => {
+    for (const concern of ['drowning', 'entrapment', 'exit'] as const) expect(checkSchema.safeParse(measure({ unset: 'leave', concern, class: 'correctFirst' })).success).toBe(false)
+    expect(checkSchema.safeParse(measure({ unset: 'line', answeredFor: 'bay' })).success).toBe(false)
+    expect(checkSchema.safeParse(measure({ asked: 'line', answeredFor: 'face' })).success).toBe(false)
+    expect(checkSchema.safeParse({ ...checks.find(check => check.group && check.answeredFor === 'once')!, asked: 'line' }).success).toBe(false)
+    expect(checkSchema.safeParse({ ...checks.find(check => check.method === 'look' && !check.group)!, unset: 'line' }).success).toBe(false)
+  })
 })
 
 describe('tasksFor', () => {

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { elementsOf } from '#shared/line/line'
 import { fold } from '#shared/round/fold'
 import { continuedFinding, correctionAnswers, groupLinks, readingLinks, relationAt, usualPlace } from '#shared/round/readingLinks'
-import { dangerChecks, entryOf, facesAsked, findingChecks, nextElement, oneByOne, passCovers, passOrder, stepBack, stepOn, walkChecks } from '#shared/round/walkPlan'
+import { dangerChecks, entryOf, facesAsked, findingChecks, lineChecks, nextElement, nextLeft, oneByOne, passCovers, passOrder, stepBack, stepOn, walkChecks } from '#shared/round/walkPlan'
 import { basisOf, bay, CHECKS, element, gap, GATE, look, RoundStory, RUN, RUN2 } from '../../../helpers/roundStory'
 
 const whole = { face: null, bay: null, from: null, height: null }
@@ -17,7 +17,8 @@ describe('what a pass covers', () => {
   it('offers looks that may be confirmed as a group, and no measure, trial or look by itself', () => {
     const round = new RoundStory()
     expect(names(passCovers(checksOf(round), 'outer'))).toEqual(['tie-ends'])
-    expect(names(oneByOne(checksOf(round)))).toEqual(['gap-below', 'post-spacing'])
+    // A look before the tape is taken up
+    expect(names(oneByOne(checksOf(round)))).toEqual(['post-spacing', 'gap-below'])
   })
 
   it('leaves the other face to its own pass', () => {
@@ -174,7 +175,7 @@ describe('the way along the line', () => {
   })
 })
 
-it('counts three readings within measuring error, then leaves it', () => {
+it('keeps three readings within measuring error, and leaves them to be settled', () => {
   const round = new RoundStory()
   // 2 in at most, read with an error of 1/4 in: 2 in is within it.
   const within = { ...gap(2), uncertainty: 8_128_000 / 4 } as never
@@ -184,5 +185,41 @@ it('counts three readings within measuring error, then leaves it', () => {
     round.reading({ element: RUN, check: 'gap-below', place: bay(1), ...readingLinks(one, bay(1), of(round, RUN), { asideOf: nobody }) }, within)
   }
   expect(checkOf(round, 'gap-below').outcome).toMatchObject({ verdict: 'withinError' })
+  // A better instrument takes their place, or they are treated as not conforming: until then nobody signs that all was read
+  expect(oneByOne(checksOf(round)).map(one => one.check.id)).toContain('gap-below')
+  round.reading({ element: RUN, check: 'gap-below', place: bay(1), replaces: checkOf(round, 'gap-below').outcome.heads.map(head => head.entry) }, gap(1.9))
   expect(oneByOne(checksOf(round)).map(one => one.check.id)).not.toContain('gap-below')
+})
+
+describe('what is answered once for the line', () => {
+  const basis = () => basisOf({ tasks: basisOf().tasks.map(task => task.check === 'gap-below' ? { ...task, line: true as const } : task) })
+  const lineOf = (round: RoundStory) => lineChecks([...round.bases.values()][0]!, outcomeOf(round)).map(one => [one.check.id, one.outcome.element, one.outcome.verdict])
+
+  it('is a list of its own, in no element\'s list, and may be answered on any of them', () => {
+    const round = new RoundStory(basis())
+    expect(lineOf(round)).toEqual([['gap-below', RUN, 'notRead']])
+    expect(names(oneByOne(checksOf(round)))).toEqual(['post-spacing'])
+    // The second run carries it as well, with its limit, so that the worst place can be read there
+    expect(checkOf(round, 'gap-below', RUN2)).toMatchObject({ line: true, limits: ['gap'], outcome: { verdict: 'notRead' } })
+    expect(names(checksOf(round, GATE))).not.toContain('gap-below')
+    round.reading({ element: RUN2, check: 'gap-below', place: bay(2) }, gap(1))
+    expect(lineOf(round)).toEqual([['gap-below', RUN2, 'conforms']])
+    expect(checkOf(round, 'gap-below', RUN)).toMatchObject({ line: true, outcome: { verdict: 'notRead' } })
+  })
+  it('is found by its key on an element where it was not read yet', () => {
+    const round = new RoundStory(basis())
+    expect(names(findingChecks([...round.bases.values()][0]!, checksOf(round, RUN2), 'outer', 'gapBelow'))).toEqual(['gap-below'])
+  })
+})
+
+describe('the way from one check to the next', () => {
+  it('stays with what is in the hand, goes round to what was passed over, and ends when nothing is left', () => {
+    const round = new RoundStory()
+    const next = (check: string) => nextLeft(checksOf(round).filter(one => !one.check.group), { check, face: null })?.check.id
+    expect(next('post-spacing')).toBe('gap-below')
+    expect(next('gap-below')).toBe('post-spacing')
+    round.reading({ element: RUN, check: 'gap-below', place: bay(1) }, gap(1))
+    round.reading({ element: RUN, check: 'post-spacing', place: whole }, look('clear'))
+    expect(next('gap-below')).toBeUndefined()
+  })
 })
