@@ -16,6 +16,7 @@ let scene: Scene
 let one: StoryAt
 let two: StoryAt
 const ids: Record<string, string> = {}
+const SECOND = randomUUID()
 const manager = { ...senderOf(PEOPLE.manager), accountId: PEOPLE.manager, organisationId: ORGANISATION }
 
 /** Sends what a story holds, each entry by its author. */
@@ -144,6 +145,24 @@ describe('giving tags from the desk', () => {
     // Whoever is no crew sees every job of the organisation already.
     await assignTags(manager, { tags: wanted('B1'), to: { account: PEOPLE.bo, name: 'bo' }, due: null })
     expect((await scene.admin.query('select account_id from job_given where job_id = $1', [two.job])).rows).toEqual([{ account_id: PEOPLE.crew }])
+  })
+
+  it('in the field lets them see its job too, also where the crew\'s own push lets the assignment in', async () => {
+    const seen = () => withSession(senderOf(PEOPLE.crew), async tx => (await tx.client.query('select from job where id = $1', [two.job])).rowCount === 1)
+    await scene.admin.query('delete from job_given where job_id = $1', [two.job])
+    two.assign([ids.B1!], { author: PEOPLE.ana })
+    await send(two, two.entries.length - 1)
+    expect(await seen()).toBe(true)
+    await scene.admin.query('delete from job_given where job_id = $1 and account_id <> $2', [two.job, PEOPLE.crew])
+    // Bo's assignment names a word of the crew that is still on its way; it is held, and let in by whoever brings that word.
+    const cannot = two.write('cannot', { waitsFor: 'a tie' }, { author: PEOPLE.crew, ...two.about([ids.B1!]) })
+    await scene.admin.query(`insert into account (id, email, name) values ($1, 'second@story.example', 'second')`, [SECOND])
+    await scene.admin.query(`insert into membership (organisation_id, account_id, role) values ($1, $2, 'crew')`, [ORGANISATION, SECOND])
+    two.write('assignment', { to: { account: SECOND, name: 'second' }, due: null }, { author: PEOPLE.bo, ...two.about([ids.B1!]), answers: [ids.B1!, cannot] })
+    const [word, assignment] = two.wires(two.entries.length - 2)
+    expect((await acceptEntries(senderOf(PEOPLE.bo), two.round, [assignment!])).results[0]!.state).toBe('held')
+    expect((await acceptEntries(senderOf(PEOPLE.crew), two.round, [word!])).results[0]!.state).toBe('accepted')
+    expect((await scene.admin.query('select account_id from job_given where job_id = $1 order by 1', [two.job])).rows.map(row => row.account_id as string)).toEqual([PEOPLE.crew, SECOND].sort())
   })
 
   it('gives no tag of another organisation', async () => {

@@ -92,10 +92,10 @@ export async function tagsToAnswer(tx: Tx, ids: string[]): Promise<TagToAnswer[]
   return rows
 }
 
-/** Crew see the jobs that were given to them: who gets a tag gets its job too. Others see it anyway. */
-export async function giveJobs(tx: Tx, jobIds: string[], accountId: string): Promise<void> {
+/** Crew see the jobs that were given to them; others see them anyway, and nothing is written for those. */
+export async function giveJob(tx: Tx, jobId: string, accounts: string[]): Promise<void> {
   await tx.client.query(
     `insert into job_given (organisation_id, job_id, account_id, given_as)
-     select m.organisation_id, x, m.account_id, 'crew' from unnest($1::uuid[]) x, membership m
-      where m.organisation_id = app_organisation() and m.account_id = $2 and m.role = 'crew' and m.ended_at is null on conflict do nothing`, [[...new Set(jobIds)], accountId])
+     select m.organisation_id, $1, m.account_id, 'crew' from membership m
+      where m.organisation_id = app_organisation() and m.account_id = any($2::uuid[]) and m.role = 'crew' and m.ended_at is null on conflict do nothing`, [jobId, accounts])
 }

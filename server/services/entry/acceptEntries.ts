@@ -13,6 +13,7 @@ import * as entries from '../../database/queries/entry'
 import { notFound } from '../failure'
 import { rememberRound } from '../round/foldRound'
 import { keepState } from '../round/keepState'
+import { giveAssigned } from './giveAssigned'
 
 const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
 
@@ -40,6 +41,7 @@ export async function acceptEntries(who: Session, roundId: string, wires: WireEn
       // Held by an earlier push, sent again or not.
       await entries.dropAside(tx, good.map(one => one.entry))
       await entries.setAccepted(tx, roundId, round.accepted)
+      await giveAssigned(tx, who, round.jobId, good.map(one => one.entry))
     })
     return { accepted: round.accepted, held }
   })
