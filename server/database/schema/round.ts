@@ -99,8 +99,8 @@ export const checkState = pgTable('check_state', {
   verdict: text('verdict', { enum: VERDICTS }).notNull(),
   settled: boolean('settled').notNull(),
   readAgain: boolean('read_again').notNull(),
-  at: integer('at').notNull().default(0),
-  outcome: jsonb('outcome').notNull().default({}),
+  at: integer('at').notNull(),
+  outcome: jsonb('outcome').notNull(),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.roundId, table.elementId, table.checkId, table.face] }),
   foreignKey({ columns: [table.organisationId, table.roundId], foreignColumns: [round.organisationId, round.id] }),
@@ -126,7 +126,7 @@ export const deficiencyState = pgTable('deficiency_state', {
   index('deficiency_state_assigned').on(table.organisationId, table.assignedTo, table.state),
 ])
 
-/** A photo's final bytes stand in the store under their digest. */
+/** That a job has a photo. Its final bytes stand once in the store under their digest, whichever jobs have it. */
 export const photo = pgTable('photo', {
   organisationId: organisationId(),
   digest: text('digest').notNull(),
@@ -138,6 +138,6 @@ export const photo = pgTable('photo', {
   storedAt: createdAt('stored_at'),
   erasedAt: instant('erased_at'),
 }, table => [
-  primaryKey({ columns: [table.organisationId, table.digest] }),
+  primaryKey({ columns: [table.organisationId, table.digest, table.jobId] }),
   foreignKey({ columns: [table.organisationId, table.jobId], foreignColumns: [job.organisationId, job.id] }),
 ])
