@@ -14,6 +14,7 @@ import { notFound } from '../failure'
 import { rememberRound } from '../round/foldRound'
 import { keepState } from '../round/keepState'
 import { giveAssigned } from './giveAssigned'
+import { signatureRefusal } from './signatureRefusal'
 
 const sha256 = (text: string) => createHash('sha256').update(text).digest('hex')
 
@@ -79,7 +80,7 @@ function read(wire: WireEntry, who: Session, roundId: string): Offered {
     : envelope.organisation !== who.organisationId ? '/envelope/organisation'
       : who.accountId !== null && envelope.author !== who.accountId ? '/envelope/author'
         : who.role !== null && isKnown(entry) && !may(who.role, ENTRY_RULES[entry.envelope.kind].permission) ? '/envelope/kind' : null
-  const refusal = wrong ? entryRefusal('notYours', wrong) : null
+  const refusal = wrong ? entryRefusal('notYours', wrong) : signatureRefusal(entry)
   return { wire, entry, result: { id: envelope.id, state: refusal ? 'refused' : 'accepted', number: null, refusal } }
 }
 
