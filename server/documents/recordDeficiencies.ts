@@ -38,7 +38,7 @@ function paintDeficiency(frame: Frame, one: RecordDeficiency, images: Images): v
   const title = sheet.lay([{ text: `${tagOf(frame, one.element)}: ${check?.title ?? one.check}`, weight: 500 }], PAPER.right - x, { size: 10.5, lead: 14 })
   const state = fill(states[one.state], { who: one.assignedTo ?? '', for: one.waitsFor ?? '' })
   const stands = sheet.lay([{ text: sentence(state), weight: 500 }, { text: ` \u00b7 ${classes[one.class]}${place ? ` \u00b7 ${place}` : ''}`, role: 'soft' }], PAPER.right - x, { size: 8.8, lead: 12.4 })
-  const steps = one.steps.map((step, at) => ({ words: sheet.lay(stepWords(frame, step, at), PAPER.right - x - WHO - 10, { size: 8.8, lead: 12.2 }), who: sheet.lay(fill(say.w.phrases.writtenBy, { by: step.by, at: say.at(step.at) }), WHO, { size: 8.25, lead: 12.2, role: 'soft' }) }))
+  const steps = one.steps.map((step, at) => ({ words: sheet.lay(stepWords(frame, step, at, check?.unit ?? null), PAPER.right - x - WHO - 10, { size: 8.8, lead: 12.2 }), who: sheet.lay(fill(say.w.phrases.writtenBy, { by: step.by, at: say.at(step.at) }), WHO, { size: 8.25, lead: 12.2, role: 'soft' }) }))
   const first = steps[0]!
   sheet.room(22 + title.height + stands.height + Math.max(first.words.height, first.who.height) + (photos.length > 0 && steps.length < 4 ? PHOTO.height + 40 : 0))
   sheet.rule(sheet.y, { width: 0.75, role: 'line' })

@@ -3,6 +3,7 @@ import type { Both, DeficiencyClass } from '../checklist/check'
 import { DEFICIENCY_CLASSES } from '../checklist/check'
 import type { KeptEntry, Place } from '../entry/entry'
 import { PAYLOADS } from '../entry/entry'
+import type { Unit } from '../limit/limit'
 import type { System } from '../measure/length'
 import type { DeficiencyOutcome, DeficiencyState } from '../round/outcome'
 
@@ -36,7 +37,9 @@ export interface TagListRow {
   /** Empty where the element was struck from the line. */
   elementTag: string
   checkId: string
+  /** Null where no checklist here has the check. */
   title: Both | null
+  unit: Unit | null
   /** Who is to correct it, also somebody without an account. */
   givenTo: string | null
   due: string | null

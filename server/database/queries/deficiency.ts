@@ -36,7 +36,7 @@ const COLUMNS = `d.id, d.tag, d.class, d.state, d.check_id as "checkId", d.due, 
   (select a.payload->'to'->>'name' from entry a where a.organisation_id = d.organisation_id and a.kind = 'assignment'
      and a.id in (select x::uuid from jsonb_array_elements_text(d.outcome->'history') x) order by a.accepted_at desc, a.number desc limit 1) as "givenTo"`
 
-export type TagRowOfStore = Omit<TagListRow, 'jobCode' | 'title'> & { number: number, organisationCode: string, key?: string }
+export type TagRowOfStore = Omit<TagListRow, 'jobCode' | 'title' | 'unit'> & { number: number, organisationCode: string, key?: string }
 
 export async function listTags(tx: Tx, query: TagListQuery): Promise<TagRowOfStore[]> {
   const { key, type } = SORTS[query.sort]
