@@ -8,7 +8,7 @@ import { heading } from './recordFrame'
 import { captionOf, photosOfDeficiency, stepWords, tagOf } from '../../shared/record/recordWords'
 import { fill, sentence } from '../../shared/record/wording'
 
-/** The image of each photo, by digest. */
+/** The image of each photo, by digest; none for one that was erased. */
 export type Images = Map<string, PDFRef>
 const GAP = 16
 /** Histories hang beside their tags; photos stand under them in the same column. */
@@ -83,6 +83,12 @@ export function paintOtherPhotos(frame: Frame, images: Images): void {
   })
 }
 
+/** Where a photo stood that was erased: its place stays, between two lines. */
+function paintGap({ sheet, say }: Frame, x: number, top: number, width: number, height: number): void {
+  for (const y of [top, top + height]) sheet.rule(y, { x1: x, x2: x + width, width: 0.75, role: 'soft' })
+  sheet.place(sheet.lay(say.w.phrases.photoErased, width, { size: 8.25, lead: 11, role: 'soft' }), x, top + 6)
+}
+
 /** Photos in rows of three, each with its number and who took it when. */
 function paintPhotos(frame: Frame, shown: { photo: RecordPhoto, what: string }[], images: Images, left: number = PAPER.left): void {
   const { sheet, say, photoNumbers } = frame
@@ -99,7 +105,9 @@ function paintPhotos(frame: Frame, shown: { photo: RecordPhoto, what: string }[]
     const top = sheet.y + 5
     row.forEach(({ photo, what, caption, width, height }, at) => {
       const x = left + at * (wide + GAP)
-      sheet.photo(images.get(photo.digest)!, x, top, width, height, fill(phrases.photoAlt, { n: photoNumbers.get(photo.digest)!, what }))
+      const image = images.get(photo.digest)
+      if (image) sheet.photo(image, x, top, width, height, fill(phrases.photoAlt, { n: photoNumbers.get(photo.digest)!, what }))
+      else paintGap(frame, x, top, width, height)
       sheet.place(caption, x, top + tallest + 3, 'Caption')
     })
     sheet.y = top + tallest + 5 + Math.max(...row.map(one => one.caption.height))

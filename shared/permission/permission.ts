@@ -38,6 +38,7 @@ export const PERMISSIONS = {
   'record.seal': office,
   'record.read': [...staff, 'client'],
   'record.standing': office,
+  'erasure.write': office,
   'transmittal.send': office,
   'acceptance.write': ['client'],
   'portal.read': ['client'],

@@ -12,3 +12,8 @@ export async function insertPhoto(tx: Tx, photo: { digest: string, jobId: string
 export async function photoIsTheirs(tx: Tx, digest: string): Promise<boolean> {
   return (await tx.client.query('select from photo where organisation_id = app_organisation() and digest = $1 and erased_at is null limit 1', [digest])).rowCount === 1
 }
+
+/** Whether that picture was erased in this organisation, in whichever job. */
+export async function photoIsErased(tx: Tx, digest: string): Promise<boolean> {
+  return (await tx.client.query('select from photo where organisation_id = app_organisation() and digest = $1 and erased_at is not null limit 1', [digest])).rowCount === 1
+}

@@ -1,12 +1,13 @@
 import { createHash } from 'node:crypto'
 import type { KeptEntry } from '../../../shared/entry/entry'
+import { isKnown } from '../../../shared/entry/entry'
 import { readEntry } from '../../../shared/entry/readEntry'
 import type { RoundBasis } from '../../../shared/round/basis'
 import type { FoldOptions } from '../../../shared/round/fold'
 import { tasksFor } from '../../../shared/round/makeBasis'
 import type { RoundOutcome } from '../../../shared/round/outcome'
 import type { LockedRound } from '../../database/queries/entry'
-import { entriesAfter } from '../../database/queries/entry'
+import { entriesAfter, erasedCount } from '../../database/queries/entry'
 import { basesOf, basisDigestsOf } from '../../database/queries/round'
 import { outcomeBefore } from '../../database/queries/state'
 import type { Tx } from '../../database/withSession'
@@ -34,9 +35,13 @@ export function readBasis(digest: string, text: string): RoundBasis {
 export async function entriesOf(tx: Tx, round: { id: string, accepted: number }, fresh: KeptEntry[] = []): Promise<KeptEntry[]> {
   const before = round.accepted - fresh.length
   const kept = parsed.get(round.id)
-  const entries = kept && kept.accepted === before ? kept.entries : await readAll(tx, round.id, before)
+  // What was erased since, perhaps by another process, moves no number.
+  const holds = kept && kept.accepted === before && kept.entries.filter(isErased).length === await erasedCount(tx, round.id)
+  const entries = holds ? kept.entries : await readAll(tx, round.id, before)
   return [...entries, ...fresh]
 }
+
+const isErased = (entry: KeptEntry) => isKnown(entry) ? entry.payload === null : entry.payloadText === ''
 
 async function readAll(tx: Tx, roundId: string, upTo: number): Promise<KeptEntry[]> {
   const rows = upTo > 0 ? await entriesAfter(tx, roundId, 0, upTo) : []
