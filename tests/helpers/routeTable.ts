@@ -85,6 +85,14 @@ const SENT = `select p.record_id::text as id from recipient p join contact c on 
   join record r on r.organisation_id = p.organisation_id and r.id = p.record_id where c.account_id = $2 and r.sealing = 'sealed'`
 const idsOf = (json: { id: string }[]) => json.map(one => one.id)
 
+/** An entry of some job that another person of the office asked to be erased. */
+async function askedErasure(side: Side, admin: DemoGround['admin'], actor: DemoActor): Promise<string> {
+  const id = randomUUID()
+  await admin.query(`insert into erasure (organisation_id, id, job_id, entry_id, reason, asked_by) select organisation_id, $2, job_id, id, 'The parents asked.', $3 from entry where organisation_id = $1 and kind = 'walkOpened' limit 1`,
+    [side.id, id, side.accounts[actor === 'manager' ? 'administrator' : 'manager']])
+  return id
+}
+
 export const ROUTES: RouteRow[] = [
   { file: 'api/account/act-for.post.ts', permission: 'account.own', call: (side, _, actor) => ({ method: 'POST', path: '/api/account/act-for', body: actor === 'client' ? { standing: 'client', organisationId: null } : { standing: actor === 'crew' ? 'crew' : 'staff', organisationId: side.id } }), foreign: { client: 200, else: 403 }, ownSession: true },
   { file: 'api/account/links/[token].get.ts', permission: 'public', call: () => get(`/api/account/links/${'a'.repeat(43)}`), ok: 404, foreign: null },
@@ -98,6 +106,14 @@ export const ROUTES: RouteRow[] = [
   { file: 'api/authorities/index.put.ts', permission: 'numbers.write', call: () => ({ method: 'PUT', path: '/api/authorities', body: { id: randomUUID(), name: `Town of ${randomUUID()}` } }), foreign: null },
   { file: 'api/check/[key].get.ts', permission: 'public', call: () => get(`/api/check/${'0'.repeat(64)}`), foreign: null },
   { file: 'api/check/index.post.ts', permission: 'public', call: () => ({ method: 'POST', path: '/api/check', body: Buffer.from('no PDF at all'), headers: { 'content-type': 'application/pdf' } }), foreign: null },
+  {
+    file: 'api/erasures/[erasureId]/done.post.ts', permission: 'erasure.write',
+    call: async (side, { admin }, actor) => ({ method: 'POST', path: `/api/erasures/${await askedErasure(side, admin, actor)}/done`, body: {} }),
+  },
+  { file: 'api/erasures/[erasureId]/index.delete.ts', permission: 'erasure.write', call: async (side, { admin }, actor) => ({ method: 'DELETE', path: `/api/erasures/${await askedErasure(side, admin, actor)}` }), again: 404 },
+  { file: 'api/jobs/[jobId]/erasures/index.get.ts', permission: 'erasure.write', call: side => get(`/api/jobs/${side.jobId}/erasures`) },
+  { file: 'api/jobs/[jobId]/erasures/index.post.ts', permission: 'erasure.write', ok: 201, call: side => ({ method: 'POST', path: `/api/jobs/${side.jobId}/erasures`, body: { id: randomUUID(), entryId: null, photo: side.photo, reason: 'The parents asked.' } }), foreign: 404 },
+  { file: 'api/jobs/[jobId]/hold.put.ts', permission: 'erasure.write', call: side => ({ method: 'PUT', path: `/api/jobs/${side.jobId}/hold`, body: { reason: null } }) },
   { file: 'api/checklists.get.ts', permission: 'checklist.read', call: () => get('/api/checklists'), foreign: null },
   { file: 'api/clients/index.get.ts', permission: 'client.read', call: () => get('/api/clients'), foreign: null, rows: { ids: (json: { id: string, contacts: { id: string }[] }[]) => json.flatMap(one => [one.id, ...idsOf(one.contacts)]), staff: 'select id from client where organisation_id = $1 union all select id from contact where organisation_id = $1 and ended_at is null' } },
   { file: 'api/clients/index.put.ts', permission: 'client.write', call: () => ({ method: 'PUT', path: '/api/clients', body: { id: randomUUID(), name: `Parks of ${randomUUID()}`, address: '' } }), foreign: null },
