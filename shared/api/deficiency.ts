@@ -14,7 +14,7 @@ export const TAG_SORTS = ['due', 'job', 'tag', 'class', 'state'] as const
 export type TagSort = (typeof TAG_SORTS)[number]
 
 const line = (max: number) => z.string().trim().max(max)
-/** Query of GET /api/deficiencies and /api/deficiencies.csv. `after` is the `next` of the page before. */
+/** Query of GET /api/deficiencies and /api/tables/tags/:as. `after` is the `next` of the page before. */
 export const tagListSchema = z.object({
   find: line(100).default(''),
   filter: z.enum(TAG_FILTERS).default('open'),

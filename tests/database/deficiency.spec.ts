@@ -1,10 +1,12 @@
 import { randomUUID } from 'node:crypto'
+import { Workbook } from 'exceljs'
 import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest'
 import { withSession } from '../../server/database/withSession'
 import { tagListSchema, type TagListQuery } from '#shared/api/deficiency'
 import { assignTags } from '../../server/services/deficiency/assignTags'
-import { exportTags } from '../../server/services/deficiency/exportTags'
 import { listTags } from '../../server/services/deficiency/listTags'
+import { tagTable } from '../../server/services/table/listTables'
+import { writeTable } from '../../server/services/table/writeTable'
 import { readTag } from '../../server/services/deficiency/readTag'
 import { acceptEntries } from '../../server/services/entry/acceptEntries'
 import { makeRound, makeStoryOrganisation, senderOf, type StoryAt } from '../helpers/roundAt'
@@ -104,10 +106,19 @@ describe('the list of tags', () => {
 
   it('goes out as a table, with nothing that a table program would run', async () => {
     await scene.admin.query(`update job set title = '=cmd()' where id = $1`, [two.job])
-    const lines = (await exportTags(manager, query({ sort: 'tag' }))).split('\r\n')
+    const table = await tagTable(manager, query({ sort: 'tag' }))
+    const lines = (await writeTable(table, 'csv')).toString('utf8').split('\r\n')
     expect(lines).toHaveLength(5)
     expect(lines[0]).toBe('tag,check,job,title,site,element,bay,class,state,with,due,waits for,held,until')
     expect(lines[4]).toContain(`,'=cmd(),`)
+    // A workbook is a zip of XML (ISO/IEC 29500).
+    const bytes = await writeTable(table, 'xlsx')
+    const book = new Workbook()
+    await book.xlsx.load(bytes as unknown as ArrayBuffer)
+    const sheet = book.getWorksheet('tags')!
+    expect(sheet.rowCount).toBe(5)
+    expect(sheet.getRow(5).values).toContain(`'=cmd()`)
+    expect(sheet.getRow(5).getCell(7).value).toBe(1)
   })
 })
 

@@ -83,6 +83,8 @@ const provision = (side: Side, setting: 'school' | 'pool' = 'school') => ({
 const GIVEN = 'exists (select 1 from job_given g where g.organisation_id = j.organisation_id and g.job_id = j.id and g.account_id = $2)'
 const SENT = `select p.record_id::text as id from recipient p join contact c on c.organisation_id = p.organisation_id and c.id = p.contact_id
   join record r on r.organisation_id = p.organisation_id and r.id = p.record_id where c.account_id = $2 and r.sealing = 'sealed'`
+const CODES = `select o.code || '-' || lpad(j.number::text, 4, '0') as id from job j join organisation o on o.id = j.organisation_id`
+const firstCells = (_: unknown, text: string) => text.split('\r\n').slice(1).map(row => row.split(',')[0]!)
 const idsOf = (json: { id: string }[]) => json.map(one => one.id)
 
 /** An entry of some job that another person of the office asked to be erased. */
@@ -126,7 +128,6 @@ export const ROUTES: RouteRow[] = [
       return { method: 'DELETE', path: `/api/clients/${side.clientId}/contacts/${id}` }
     },
   },
-  { file: 'api/deficiencies.csv.get.ts', permission: 'deficiency.assign', call: () => get('/api/deficiencies.csv'), foreign: null, rows: { ids: (_, text) => text.split('\r\n').slice(1).map(row => row.split(',')[0]!), staff: `select tag as id from deficiency_state where organisation_id = $1 and state not like 'ended%'` } },
   { file: 'api/deficiencies/index.get.ts', permission: 'deficiency.assign', call: () => get('/api/deficiencies?most=200'), foreign: null, rows: { ids: (json: { rows: { id: string }[] }) => idsOf(json.rows), staff: `select id from deficiency_state where organisation_id = $1 and state not like 'ended%'` } },
   { file: 'api/deficiencies/[deficiencyId].get.ts', permission: 'deficiency.assign', call: side => get(`/api/deficiencies/${side.deficiencyId}`) },
   {
@@ -140,7 +141,6 @@ export const ROUTES: RouteRow[] = [
     rows: { ids: (json: { entries: { envelope: string }[] }) => json.entries.map(one => (JSON.parse(one.envelope) as { id: string }).id), staff: `select e.id from entry e join job j on j.organisation_id = e.organisation_id and j.id = e.job_id join round r on r.id = e.round_id where e.organisation_id = $1 and j.title in ('Upper lawn', 'Bus loop')` },
   },
   { file: 'api/field/v1/rounds/[roundId]/entries.post.ts', permission: 'entry.send', maxBytes: 25_000_000, call: (side, _, actor) => ({ method: 'POST', path: `/api/field/v1/rounds/${side.roundId}/entries`, body: { device: uuidv7(), entries: [noteWire(side, side.accounts[actor])], empty: false } }), sameBody: false },
-  { file: 'api/jobs.csv.get.ts', permission: 'job.read', call: () => get('/api/jobs.csv'), foreign: null, rows: { ids: (_, text) => text.split('\r\n').slice(1).map(row => row.split(',')[0]!), staff: `select o.code || '-' || lpad(j.number::text, 4, '0') as id from job j join organisation o on o.id = j.organisation_id where o.id = $1`, crew: `select o.code || '-' || lpad(j.number::text, 4, '0') as id from job j join organisation o on o.id = j.organisation_id where o.id = $1 and ${GIVEN}` } },
   { file: 'api/jobs/index.get.ts', permission: 'job.read', call: () => get('/api/jobs?most=200'), foreign: null, rows: { ids: (json: { rows: { id: string }[] }) => idsOf(json.rows), staff: 'select id from job where organisation_id = $1', crew: `select j.id from job j where j.organisation_id = $1 and ${GIVEN}` } },
   { file: 'api/jobs/index.post.ts', permission: 'job.write', call: side => ({ method: 'POST', path: '/api/jobs', body: { id: randomUUID(), siteId: side.siteId, ...jobBody(side) } }), ok: 201, foreign: 422 },
   { file: 'api/jobs/[jobId]/index.get.ts', permission: 'job.read', call: side => get(`/api/jobs/${side.jobId}`), rows: { ids: (json: { job: { id: string } }) => [json.job.id], staff: `select id from job where organisation_id = $1 and title in ('Upper lawn', 'Bus loop')` } },
@@ -203,6 +203,12 @@ export const ROUTES: RouteRow[] = [
   },
   { file: 'api/sites/index.get.ts', permission: 'site.read', call: () => get('/api/sites'), foreign: null, rows: { ids: idsOf, staff: 'select id from site where organisation_id = $1', crew: `select distinct j.site_id as id from job j where j.organisation_id = $1 and ${GIVEN}` } },
   { file: 'api/sites/index.put.ts', permission: 'site.write', call: side => ({ method: 'PUT', path: '/api/sites', body: { id: randomUUID(), clientId: side.clientId, name: `Yard ${randomUUID()}`, address: '', timeZone: 'America/New_York', authorityId: null } }), foreign: 422 },
+  { file: 'api/tables/jobs/[as].get.ts', permission: 'job.read', call: () => get('/api/tables/jobs/csv'), foreign: null, rows: { ids: firstCells, staff: `${CODES} where o.id = $1`, crew: `${CODES} where o.id = $1 and ${GIVEN}` } },
+  { file: 'api/tables/tags/[as].get.ts', permission: 'deficiency.assign', call: () => get('/api/tables/tags/csv'), foreign: null, rows: { ids: firstCells, staff: `select tag as id from deficiency_state where organisation_id = $1 and state not like 'ended%'` } },
+  { file: 'api/tables/sites/[as].get.ts', permission: 'site.read', call: () => get('/api/tables/sites/csv'), foreign: null, rows: { ids: firstCells, staff: 'select name as id from site where organisation_id = $1', crew: `select distinct s.name as id from site s join job j on j.organisation_id = s.organisation_id and j.site_id = s.id where s.organisation_id = $1 and ${GIVEN}` } },
+  { file: 'api/tables/records/[as].get.ts', permission: 'record.read', call: () => get('/api/tables/records/csv'), foreign: null, rows: { ids: firstCells, staff: 'select code as id from record where organisation_id = $1', client: `select r.code as id from record r join (${SENT}) s on s.id = r.id::text where $1::text is not null` } },
+  { file: 'api/tables/people/[as].get.ts', permission: 'people.read', call: () => get('/api/tables/people/csv'), foreign: null, rows: { ids: firstCells, staff: 'select a.name as id from membership m join account a on a.id = m.account_id where m.organisation_id = $1' } },
+  { file: 'api/tables/numbers/[as].get.ts', permission: 'numbers.read', call: side => get(`/api/tables/numbers/csv?authorityId=${side.authorityId}`), foreign: 200 },
   { file: 'routes/acceptances/[acceptanceFile].get.ts', permission: 'record.read', call: () => get(`/acceptances/${RECEIPT}.pdf`) },
   { file: 'routes/health/live.get.ts', permission: 'public', call: () => get('/health/live'), foreign: null },
   { file: 'routes/health/ready.get.ts', permission: 'public', call: () => get('/health/ready'), foreign: null, sameBody: false },
