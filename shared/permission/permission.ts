@@ -44,6 +44,7 @@ export const PERMISSIONS = {
   'portal.read': ['client'],
   'people.read': staff,
   'people.write': ['administrator'],
+  'log.epoch': ['administrator'],
 } as const satisfies Record<string, readonly Actor[]>
 export type Permission = keyof typeof PERMISSIONS
 

@@ -209,6 +209,8 @@ export const ROUTES: RouteRow[] = [
   { file: 'api/tables/records/[as].get.ts', permission: 'record.read', call: () => get('/api/tables/records/csv'), foreign: null, rows: { ids: firstCells, staff: 'select code as id from record where organisation_id = $1', client: `select r.code as id from record r join (${SENT}) s on s.id = r.id::text where $1::text is not null` } },
   { file: 'api/tables/people/[as].get.ts', permission: 'people.read', call: () => get('/api/tables/people/csv'), foreign: null, rows: { ids: firstCells, staff: 'select a.name as id from membership m join account a on a.id = m.account_id where m.organisation_id = $1' } },
   { file: 'api/tables/numbers/[as].get.ts', permission: 'numbers.read', call: side => get(`/api/tables/numbers/csv?authorityId=${side.authorityId}`), foreign: 200 },
+  { file: 'api/log/index.get.ts', permission: 'log.epoch', call: () => get('/api/log'), foreign: null },
+  { file: 'api/log/epochs.post.ts', permission: 'log.epoch', call: () => ({ method: 'POST', path: '/api/log/epochs', body: { reason: 'To be tidy.' } }), ok: 409, foreign: null },
   { file: 'routes/acceptances/[acceptanceFile].get.ts', permission: 'record.read', call: () => get(`/acceptances/${RECEIPT}.pdf`) },
   { file: 'routes/health/live.get.ts', permission: 'public', call: () => get('/health/live'), foreign: null },
   { file: 'routes/health/ready.get.ts', permission: 'public', call: () => get('/health/ready'), foreign: null, sameBody: false },
