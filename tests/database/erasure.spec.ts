@@ -137,7 +137,7 @@ describe('erasing', { timeout: 120_000 }, () => {
     const text = run('pdftotext', folder.put('record.pdf', bytes), '-').replace(/\s+/g, ' ')
     expect(text).toContain('This photo was erased')
     expect(text).toContain('the words of 1 of these entries')
-    await expect(readRecordPhoto(as('manager'), record, shown.digest)).rejects.toMatchObject({ code: 'notFound' })
+    await expect(readRecordPhoto(as('manager'), record, shown.digest)).rejects.toMatchObject({ code: 'erased' })
     expect((await readErasable(as('manager'), scene.one.jobId)).shownIn[shown.digest]).toHaveLength(1)
   })
 })
