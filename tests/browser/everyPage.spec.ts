@@ -160,6 +160,7 @@ describe('every page', () => {
       if (axe) found.push(...(await faultsOfAxe(page)).map(fault => `${where}: ${fault}`))
       if (axe && size === 'desk') {
         await page.evaluate(() => { document.documentElement.dataset.theme = 'dusk' })
+        await keepPicture(page, `page-${file.replace(/\.vue$/, '').replace(/[^\w-]+/g, '_')}-${size}-${language}-dusk`, true)
         found.push(...(await faultsOfAxe(page, true)).map(fault => `${where} dusk: ${fault}`))
       }
       found.push(...faults.filter(fault => !unknown || !fault.includes('404')).map(fault => `${where}: ${fault}`))
