@@ -3,7 +3,7 @@ import { fileURLToPath } from 'node:url'
 
 /** The rooms that have a message file of their own under i18n/locales/<language>/. */
 const messageFiles = (language: string) =>
-  ['base', 'account', 'job', 'line', 'site', 'numbers', 'limits', 'instrument', 'walk', 'deficiency', 'signature', 'record', 'portal', 'check', 'people']
+  ['base', 'account', 'job', 'line', 'site', 'numbers', 'limits', 'instrument', 'walk', 'deficiency', 'signature', 'record', 'portal', 'check', 'people', 'erasure']
     .map(word => `${language}/${word}.json`)
 
 export default defineNuxtConfig({
@@ -72,7 +72,7 @@ export default defineNuxtConfig({
   security: {
     rateLimiter: false, // ours counts in PostgreSQL, per address and account
     xssValidator: false, // Vue escapes; the validator would refuse honest quotes and feet marks
-    requestSizeLimiter: { maxRequestSizeInBytes: 30_000_000, maxUploadFileRequestInBytes: 30_000_000 },
+    requestSizeLimiter: false, // each route holds its own limit (readBytes), and says how much it takes
     headers: {
       crossOriginEmbedderPolicy: false,
       contentSecurityPolicy: { 'img-src': ['\'self\'', 'data:', 'blob:'], 'upgrade-insecure-requests': false },

@@ -50,3 +50,12 @@ export async function withSession<T>(session: Session, work: (tx: Tx) => Promise
 
 /** The program acting for an organisation: worker steps, and what follows from a client's act. */
 export const forOrganisation = (organisationId: string): Session => ({ accountId: null, standing: 'staff', organisationId, role: null })
+
+/** What the program does for the organisation inside a person's transaction, with the rows of the staff: what follows from an entry, whoever's push let it in. */
+export async function asProgram<T>(tx: Tx, who: Session, work: () => Promise<T>): Promise<T> {
+  if (who.standing === 'staff') return await work()
+  await tx.client.query('set local role smoothside_staff')
+  const result = await work()
+  await tx.client.query(`set local role smoothside_${who.standing}`)
+  return result
+}

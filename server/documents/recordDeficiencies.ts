@@ -8,7 +8,7 @@ import { heading } from './recordFrame'
 import { captionOf, photosOfDeficiency, stepWords, tagOf } from '../../shared/record/recordWords'
 import { fill, sentence } from '../../shared/record/wording'
 
-/** The image of each photo, by digest. */
+/** The image of each photo, by digest; none for one that was erased. */
 export type Images = Map<string, PDFRef>
 const GAP = 16
 /** Histories hang beside their tags; photos stand under them in the same column. */
@@ -38,7 +38,7 @@ function paintDeficiency(frame: Frame, one: RecordDeficiency, images: Images): v
   const title = sheet.lay([{ text: `${tagOf(frame, one.element)}: ${check?.title ?? one.check}`, weight: 500 }], PAPER.right - x, { size: 10.5, lead: 14 })
   const state = fill(states[one.state], { who: one.assignedTo ?? '', for: one.waitsFor ?? '' })
   const stands = sheet.lay([{ text: sentence(state), weight: 500 }, { text: ` \u00b7 ${classes[one.class]}${place ? ` \u00b7 ${place}` : ''}`, role: 'soft' }], PAPER.right - x, { size: 8.8, lead: 12.4 })
-  const steps = one.steps.map((step, at) => ({ words: sheet.lay(stepWords(frame, step, at), PAPER.right - x - WHO - 10, { size: 8.8, lead: 12.2 }), who: sheet.lay(fill(say.w.phrases.writtenBy, { by: step.by, at: say.at(step.at) }), WHO, { size: 8.25, lead: 12.2, role: 'soft' }) }))
+  const steps = one.steps.map((step, at) => ({ words: sheet.lay(stepWords(frame, step, at, check?.unit ?? null), PAPER.right - x - WHO - 10, { size: 8.8, lead: 12.2 }), who: sheet.lay(fill(say.w.phrases.writtenBy, { by: step.by, at: say.at(step.at) }), WHO, { size: 8.25, lead: 12.2, role: 'soft' }) }))
   const first = steps[0]!
   sheet.room(22 + title.height + stands.height + Math.max(first.words.height, first.who.height) + (photos.length > 0 && steps.length < 4 ? PHOTO.height + 40 : 0))
   sheet.rule(sheet.y, { width: 0.75, role: 'line' })
@@ -83,6 +83,12 @@ export function paintOtherPhotos(frame: Frame, images: Images): void {
   })
 }
 
+/** Where a photo stood that was erased: its place stays, between two lines. */
+function paintGap({ sheet, say }: Frame, x: number, top: number, width: number, height: number): void {
+  for (const y of [top, top + height]) sheet.rule(y, { x1: x, x2: x + width, width: 0.75, role: 'soft' })
+  sheet.place(sheet.lay(say.w.phrases.photoErased, width, { size: 8.25, lead: 11, role: 'soft' }), x, top + 6)
+}
+
 /** Photos in rows of three, each with its number and who took it when. */
 function paintPhotos(frame: Frame, shown: { photo: RecordPhoto, what: string }[], images: Images, left: number = PAPER.left): void {
   const { sheet, say, photoNumbers } = frame
@@ -99,7 +105,9 @@ function paintPhotos(frame: Frame, shown: { photo: RecordPhoto, what: string }[]
     const top = sheet.y + 5
     row.forEach(({ photo, what, caption, width, height }, at) => {
       const x = left + at * (wide + GAP)
-      sheet.photo(images.get(photo.digest)!, x, top, width, height, fill(phrases.photoAlt, { n: photoNumbers.get(photo.digest)!, what }))
+      const image = images.get(photo.digest)
+      if (image) sheet.photo(image, x, top, width, height, fill(phrases.photoAlt, { n: photoNumbers.get(photo.digest)!, what }))
+      else paintGap(frame, x, top, width, height)
       sheet.place(caption, x, top + tallest + 3, 'Caption')
     })
     sheet.y = top + tallest + 5 + Math.max(...row.map(one => one.caption.height))

@@ -17,7 +17,8 @@ import { fill } from '../../shared/record/wording'
 
 export interface PhotoSource {
   /** The final bytes of a photo (upright, sRGB JPEG, no metadata) by the SHA-256 that the record names. */
-  photoBytes: (digest: string) => Promise<Uint8Array>
+  /** Null for one that was erased, with a reason and by two people: the page shows the gap. */
+  photoBytes: (digest: string) => Promise<Uint8Array | null>
 }
 
 /**
@@ -70,6 +71,7 @@ async function embedPhotos(doc: PDFDocument, digests: string[], photoBytes: Phot
     const bytes = await photoBytes(digest).catch((cause: unknown) => {
       throw Object.assign(new DocumentError('photoMissing', `The photo ${digest} cannot be read from the store; restore it before sealing.`), { cause })
     })
+    if (bytes === null) continue
     if (createHash('sha256').update(bytes).digest('hex') !== digest) throw new DocumentError('photoChanged', `The photo stored as ${digest} has other bytes; restore it before sealing.`)
     // A photo of four colours or none of ours would print wrongly in years: photos are made plain before their entry.
     const jpeg = readJpeg(bytes)

@@ -22,5 +22,5 @@ export function composeMail(language: 'en' | 'es', kind: MailKind, values: Recor
 
 /** A word of the catalogue that stands inside other sentences. */
 export const wordOf = (language: 'en' | 'es', word: 'attached' | 'tooLarge') => catalogues[language].words[word]
-/** "interim record 2", "completion record 1". */
+/** "interim record 2", "final record 1". */
 export const recordName = (language: 'en' | 'es', scope: 'interim' | 'final', number: number) => fill(catalogues[language].words[scope], { number: String(number) })

@@ -1,7 +1,7 @@
 /** Why a service refuses, each with its status on the wire. Codes are stable: clients branch on them, screens word them (i18n base.problem.*). */
 export const FAILURES = {
   invalid: 422, notFound: 404, notAllowed: 403, signInNeeded: 401, wrongSignIn: 401, stale: 409, conflict: 409, sealed: 409, frozen: 409, differs: 409,
-  taken: 409, notReady: 409, tooLarge: 413, wrongType: 415, tooOften: 429, linkSpent: 410, unreadable: 400, foreignOrigin: 403, mailDown: 503, unavailable: 503,
+  taken: 409, notReady: 409, tooLarge: 413, wrongType: 415, tooOften: 429, linkSpent: 410, erased: 410, unreadable: 400, foreignOrigin: 403, mailDown: 503, unavailable: 503,
 } as const
 export type FailureCode = keyof typeof FAILURES
 

@@ -3,6 +3,7 @@ import type { Both, DeficiencyClass } from '../checklist/check'
 import { DEFICIENCY_CLASSES } from '../checklist/check'
 import type { KeptEntry, Place } from '../entry/entry'
 import { PAYLOADS } from '../entry/entry'
+import type { Unit } from '../limit/limit'
 import type { System } from '../measure/length'
 import type { DeficiencyOutcome, DeficiencyState } from '../round/outcome'
 
@@ -13,7 +14,7 @@ export const TAG_SORTS = ['due', 'job', 'tag', 'class', 'state'] as const
 export type TagSort = (typeof TAG_SORTS)[number]
 
 const line = (max: number) => z.string().trim().max(max)
-/** Query of GET /api/deficiencies and /api/deficiencies.csv. `after` is the `next` of the page before. */
+/** Query of GET /api/deficiencies and /api/tables/tags/:as. `after` is the `next` of the page before. */
 export const tagListSchema = z.object({
   find: line(100).default(''),
   filter: z.enum(TAG_FILTERS).default('open'),
@@ -36,7 +37,9 @@ export interface TagListRow {
   /** Empty where the element was struck from the line. */
   elementTag: string
   checkId: string
+  /** Null where no checklist here has the check. */
   title: Both | null
+  unit: Unit | null
   /** Who is to correct it, also somebody without an account. */
   givenTo: string | null
   due: string | null

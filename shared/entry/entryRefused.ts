@@ -7,6 +7,7 @@ export const ENTRY_REFUSALS = {
   payload: 'The payload is not as its kind and version have it; look at the pointer.',
   payloadDigest: 'The payload is not the one that the envelope names by its digest; send both as the device made them.',
   subject: 'The element, check, place or basis does not fit the kind of entry; look at the pointer.',
+  sheet: 'What this signature stands under is no sign sheet of this round, or not the one of its digest; sign again on the page of the signatures.',
   target: 'An entry of this kind cannot name that entry; look at the pointer.',
   notYours: 'It belongs to another round, organisation, job or person, or your role may not write this kind; send it signed in as its author.',
   ownReading: 'A reading is entered in error only by a second person: let another account write this.',

@@ -42,11 +42,13 @@ export const PERMISSIONS = {
   'record.seal': office,
   'record.read': [...staff, 'client'],
   'record.standing': office,
+  'erasure.write': office,
   'transmittal.send': office,
   'acceptance.write': ['client'],
   'portal.read': ['client'],
   'people.read': staff,
   'people.write': ['administrator'],
+  'log.epoch': ['administrator'],
 } as const satisfies Record<string, readonly Actor[]>
 export type Permission = keyof typeof PERMISSIONS
 

@@ -93,7 +93,7 @@ export function buildRecord({ particulars, basis, basisDigest, entries: given, o
     entries: entries.map(entry => ({ id: entry.envelope.id, digest: entry.digest, number: numberOf(entry), kind: entry.envelope.kind, madeAt: entry.envelope.madeAt })),
     ignored: outcome.ignored,
     refusedLinks: outcome.refusedLinks,
-    erased: outcome.erased,
+    erased: entries.filter(entry => entry.payload === null).map(entry => entry.envelope.id),
     conflicts: outcome.conflicts,
   })
 }

@@ -255,7 +255,7 @@ export const recordSchema = recordParticularsSchema.extend({
   ignored: z.array(z.object({ entry: uuid, why: z.string() }).strict()),
   /** Links between entries that the rules do not follow. */
   refusedLinks: z.array(z.object({ entry: uuid, target: uuid, why: z.string() }).strict()),
-  /** Readings whose payload was erased under a reason and by two people. */
+  /** Entries whose payload was erased under a reason and by two people. */
   erased: z.array(uuid),
   /** Changes of the basis or the line that stand side by side and that nobody has settled. */
   conflicts: z.array(z.object({ of: z.enum(['basis', 'line']), entries: z.array(uuid) }).strict()),

@@ -1,6 +1,7 @@
 import type { DiamondState } from '../drawing/displayList'
 import type { LineElement } from '../line/line'
 import { elementsOf } from '../line/line'
+import type { Unit } from '../limit/limit'
 import type { LineMarks } from '../line/lineMark'
 import { placeAlong, tapeOf } from '../line/lineMark'
 import type { Verdict } from '../round/outcome'
@@ -271,9 +272,12 @@ export function asideRows(telling: Telling): { tags: string[], titles: string, w
   return [...rows.values()]
 }
 
-/** One step in the history of a deficiency, in a sentence. `at` is its place in the history. */
-export function stepWords({ say }: Telling, step: RecordStep, at: number): string {
-  const { phrases, helds, findings, decisions } = say.w
+/**
+ * One step in the history of a deficiency, in a sentence. `at` is its place in the history; `unit` is its check's, and where that is not known any more a
+ * measure is told as it was typed.
+ */
+export function stepWords({ say }: Pick<Telling, 'say'>, step: RecordStep, at: number, unit: Unit | null): string {
+  const { phrases, helds, decisions } = say.w
   if (step.erased) return phrases.erased
   const person = step.person ?? step.by
   // What somebody closed with a full stop goes on in this sentence.
@@ -283,8 +287,8 @@ export function stepWords({ say }: Telling, step: RecordStep, at: number): strin
   const deviation = [...(step.condition ? [fill(phrases.condition, { words: step.until ? open(step.condition) : step.condition })] : []), ...(step.until ? [fill(phrases.until, { on: say.day(step.until) })] : [])].map(part => `, ${part}`).join('')
   switch (step.kind) {
     case 'reading': {
-      const look = step.value?.method === 'look' ? (step.value.found === 'clear' ? phrases.clear : findings[step.value.finding ?? 'other']) : step.value ? say.reading(step.value, { unit: step.value.method === 'measure' ? 'length' : null }) : ''
-      return `${at === 0 ? phrases.found : phrases.readAgainStep}: ${look}${step.words ? `, ${step.words}` : ''}`
+      const read = !step.value ? '' : step.value.method === 'measure' && unit === null ? step.value.text : say.reading(step.value, { unit })
+      return `${at === 0 ? phrases.found : phrases.readAgainStep}: ${read}${step.words ? `, ${step.words}` : ''}`
     }
     case 'correction': return fill(phrases.corrected, { person }) + words
     case 'assignment': return fill(phrases.assigned, { person }) + (step.due ? `, ${fill(phrases.due, { at: say.at(step.due) })}` : '') + words

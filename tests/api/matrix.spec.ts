@@ -181,7 +181,7 @@ describe('queries', () => {
   it.each([
     ['/api/jobs?surplus=1', '/query/surplus'], ['/api/jobs?filter=mine', '/query/filter'], ['/api/jobs?most=0', '/query/most'], ['/api/jobs?siteId=7', '/query/siteId'], ['/api/jobs?find=%00', '/query/find'],
     ['/api/jobs?after=garbage', '/query/after'], ['/api/jobs?after=00000000-0000-4000-8000-000000000000.2026-99-99', '/query/after'], ['/api/jobs?sort=number&after=00000000-0000-4000-8000-000000000000.99999999999', '/query/after'],
-    ['/api/jobs.csv?find=a%00b', '/query/find'], ['/api/deficiencies?after=garbage', '/query/after'], ['/api/deficiencies?sort=job&after=00000000-0000-4000-8000-000000000000.x', '/query/after'], ['/api/records?most=x', '/query/most'], ['/api/records?find=%00', '/query/find'], ['/api/numbers?authorityId=1', '/query/authorityId'], ['/api/numbers/page', '/query/setting'],
+    ['/api/tables/jobs/csv?find=a%00b', '/query/find'], ['/api/deficiencies?after=garbage', '/query/after'], ['/api/deficiencies?sort=job&after=00000000-0000-4000-8000-000000000000.x', '/query/after'], ['/api/records?most=x', '/query/most'], ['/api/records?find=%00', '/query/find'], ['/api/numbers?authorityId=1', '/query/authorityId'], ['/api/numbers/page', '/query/setting'],
   ])('%s is refused with a pointer', async (path, pointer) => {
     const answer = await send(manager(), { method: 'GET', path })
     expect({ status: answer.status, pointers: answer.json.errors?.map((error: { pointer: string }) => error.pointer) }).toEqual({ status: 422, pointers: [pointer] })

@@ -95,6 +95,9 @@ describe('pushing and pulling', () => {
     expect(await emptyAt()).toBeInstanceOf(Date)
     await push(ana, round, [], false)
     expect(await emptyAt()).toBeNull()
+    // Whoever else knows the device's id does not speak for it.
+    await push(await story.signedIn('bo'), round, [], true)
+    expect(await emptyAt()).toBeNull()
   })
 })
 

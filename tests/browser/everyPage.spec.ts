@@ -34,11 +34,13 @@ const ROWS: Record<string, Row> = {
   'jobs/[jobId]/index.vue': { as: 'manager', at: ({ job }) => `/jobs/${job}` },
   'jobs/[jobId]/change.vue': { as: 'manager', at: ({ job }) => `/jobs/${job}/change` },
   'jobs/[jobId]/line.vue': { as: 'manager', at: ({ job }) => `/jobs/${job}/line` },
+  'jobs/[jobId]/erase.vue': { as: 'manager', at: ({ job }) => `/jobs/${job}/erase` },
   'sites/index.vue': { as: 'manager', at: () => '/sites' },
   'tags.vue': { as: 'manager', at: () => '/tags' },
   'instruments.vue': { as: 'manager', at: () => '/instruments' },
   'numbers.vue': { as: 'administrator', at: () => '/numbers' },
   'people.vue': { as: 'administrator', at: () => '/people' },
+  'log.vue': { as: 'administrator', at: () => '/log' },
   'you.vue': { as: 'manager', at: () => '/you' },
   'records/index.vue': { as: 'manager', at: () => '/records' },
   'records/[recordId].vue': { as: 'manager', at: ({ record }) => `/records/${record}` },
@@ -160,6 +162,7 @@ describe('every page', () => {
       if (axe) found.push(...(await faultsOfAxe(page)).map(fault => `${where}: ${fault}`))
       if (axe && size === 'desk') {
         await page.evaluate(() => { document.documentElement.dataset.theme = 'dusk' })
+        await keepPicture(page, `page-${file.replace(/\.vue$/, '').replace(/[^\w-]+/g, '_')}-${size}-${language}-dusk`, true)
         found.push(...(await faultsOfAxe(page, true)).map(fault => `${where} dusk: ${fault}`))
       }
       found.push(...faults.filter(fault => !unknown || !fault.includes('404')).map(fault => `${where}: ${fault}`))

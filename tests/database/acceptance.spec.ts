@@ -67,6 +67,22 @@ describe('sending', { timeout: 60_000 }, () => {
     expect(await kinds()).toEqual(['queued', 'handed', 'opened', 'downloaded'])
   })
 
+  it('refuses an id that was used for another record or for other people, and takes the very same at one moment for one', async () => {
+    const { rows: [first] } = await scene.admin.query<{ id: string }>('select id from transmittal where record_id = $1', [interim])
+    const other = uuidv7()
+    await scene.admin.query(`insert into record (organisation_id, id, job_id, round_id, number, scope, code, border, requested_by, sealing, sealed_at) select organisation_id, $2, job_id, round_id, 90, scope, 'AA-90', border, requested_by, 'sealed', now() from record where id = $1`, [interim, other])
+    await expect(sendRecord(manager(), other, { id: first!.id, contacts: [scene.one.contactId], message: '' })).rejects.toMatchObject({ code: 'differs' })
+    await expect(sendRecord(manager(), interim, { id: first!.id, contacts: [uuidv7()], message: 'Thank you.' })).rejects.toMatchObject({ code: 'differs' })
+    const twice = { id: uuidv7(), contacts: [scene.one.contactId], message: '' }
+    expect(await Promise.all([sendRecord(manager(), other, twice), sendRecord(manager(), other, twice)])).toEqual([{ sentTo: 1 }, { sentTo: 1 }])
+    expect((await scene.admin.query('select from recipient where transmittal_id = $1', [twice.id])).rowCount).toBe(1)
+    for (const table of ['delivery_event', 'recipient', 'transmittal', 'record']) {
+      await scene.admin.query(`alter table ${table} disable trigger all`)
+      await scene.admin.query(table === 'delivery_event' ? `delete from delivery_event d using recipient p where p.id = d.recipient_id and p.record_id = $1` : `delete from ${table} where ${table === 'record' ? 'id' : 'record_id'} = $1`, [other])
+      await scene.admin.query(`alter table ${table} enable trigger all`)
+    }
+  })
+
   it('says returned where the mail server refuses the address', async () => {
     scene.mail.refuse = true
     await sendRecord(manager(), interim, { id: uuidv7(), contacts: [scene.one.contactId], message: '' })

@@ -1,10 +1,12 @@
 import { randomUUID } from 'node:crypto'
+import { Workbook } from 'exceljs'
 import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest'
 import { withSession } from '../../server/database/withSession'
 import { tagListSchema, type TagListQuery } from '#shared/api/deficiency'
 import { assignTags } from '../../server/services/deficiency/assignTags'
-import { exportTags } from '../../server/services/deficiency/exportTags'
 import { listTags } from '../../server/services/deficiency/listTags'
+import { tagTable } from '../../server/services/table/listTables'
+import { writeTable } from '../../server/services/table/writeTable'
 import { readTag } from '../../server/services/deficiency/readTag'
 import { acceptEntries } from '../../server/services/entry/acceptEntries'
 import { makeRound, makeStoryOrganisation, senderOf, type StoryAt } from '../helpers/roundAt'
@@ -16,6 +18,7 @@ let scene: Scene
 let one: StoryAt
 let two: StoryAt
 const ids: Record<string, string> = {}
+const SECOND = randomUUID()
 const manager = { ...senderOf(PEOPLE.manager), accountId: PEOPLE.manager, organisationId: ORGANISATION }
 
 /** Sends what a story holds, each entry by its author. */
@@ -103,10 +106,19 @@ describe('the list of tags', () => {
 
   it('goes out as a table, with nothing that a table program would run', async () => {
     await scene.admin.query(`update job set title = '=cmd()' where id = $1`, [two.job])
-    const lines = (await exportTags(manager, query({ sort: 'tag' }))).split('\r\n')
+    const table = await tagTable(manager, query({ sort: 'tag' }))
+    const lines = (await writeTable(table, 'csv')).toString('utf8').split('\r\n')
     expect(lines).toHaveLength(5)
     expect(lines[0]).toBe('tag,check,job,title,site,element,bay,class,state,with,due,waits for,held,until')
     expect(lines[4]).toContain(`,'=cmd(),`)
+    // A workbook is a zip of XML (ISO/IEC 29500).
+    const bytes = await writeTable(table, 'xlsx')
+    const book = new Workbook()
+    await book.xlsx.load(bytes as unknown as ArrayBuffer)
+    const sheet = book.getWorksheet('tags')!
+    expect(sheet.rowCount).toBe(5)
+    expect(sheet.getRow(5).values).toContain(`'=cmd()`)
+    expect(sheet.getRow(5).getCell(7).value).toBe(1)
   })
 })
 
@@ -144,6 +156,24 @@ describe('giving tags from the desk', () => {
     // Whoever is no crew sees every job of the organisation already.
     await assignTags(manager, { tags: wanted('B1'), to: { account: PEOPLE.bo, name: 'bo' }, due: null })
     expect((await scene.admin.query('select account_id from job_given where job_id = $1', [two.job])).rows).toEqual([{ account_id: PEOPLE.crew }])
+  })
+
+  it('in the field lets them see its job too, also where the crew\'s own push lets the assignment in', async () => {
+    const seen = () => withSession(senderOf(PEOPLE.crew), async tx => (await tx.client.query('select from job where id = $1', [two.job])).rowCount === 1)
+    await scene.admin.query('delete from job_given where job_id = $1', [two.job])
+    two.assign([ids.B1!], { author: PEOPLE.ana })
+    await send(two, two.entries.length - 1)
+    expect(await seen()).toBe(true)
+    await scene.admin.query('delete from job_given where job_id = $1 and account_id <> $2', [two.job, PEOPLE.crew])
+    // Bo's assignment names a word of the crew that is still on its way; it is held, and let in by whoever brings that word.
+    const cannot = two.write('cannot', { waitsFor: 'a tie' }, { author: PEOPLE.crew, ...two.about([ids.B1!]) })
+    await scene.admin.query(`insert into account (id, email, name) values ($1, 'second@story.example', 'second')`, [SECOND])
+    await scene.admin.query(`insert into membership (organisation_id, account_id, role) values ($1, $2, 'crew')`, [ORGANISATION, SECOND])
+    two.write('assignment', { to: { account: SECOND, name: 'second' }, due: null }, { author: PEOPLE.bo, ...two.about([ids.B1!]), answers: [ids.B1!, cannot] })
+    const [word, assignment] = two.wires(two.entries.length - 2)
+    expect((await acceptEntries(senderOf(PEOPLE.bo), two.round, [assignment!])).results[0]!.state).toBe('held')
+    expect((await acceptEntries(senderOf(PEOPLE.crew), two.round, [word!])).results[0]!.state).toBe('accepted')
+    expect((await scene.admin.query('select account_id from job_given where job_id = $1 order by 1', [two.job])).rows.map(row => row.account_id as string)).toEqual([PEOPLE.crew, SECOND].sort())
   })
 
   it('gives no tag of another organisation', async () => {

@@ -1,8 +1,17 @@
-import { createHash } from 'node:crypto'
+import { createHash, randomUUID } from 'node:crypto'
 import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import pg from 'pg'
+import { uuidv7 } from 'uuidv7'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import type { PayloadOf } from '#shared/entry/entry'
+import { makeEntry } from '#shared/entry/makeEntry'
+import { readEntry } from '#shared/entry/readEntry'
+import { sha256Hex } from '#shared/record/canonicalJson'
+import { insertEntries, lockRound, setAccepted } from '../../server/database/queries/entry'
+import { withSession } from '../../server/database/withSession'
+import { acceptEntries } from '../../server/services/entry/acceptEntries'
+import { requestSealing } from '../../server/services/record/requestSealing'
 import { setPool } from '../../server/database/client'
 import { sealRecord } from '../../server/services/record/sealRecord'
 import { readRecord, readRecordFile } from '../../server/services/record/readRecord'
@@ -68,11 +77,45 @@ const after = (to: string) => {
 const stateOf = async (id: string) => (await scene.admin.query<{ sealing: string, trouble: string | null, leaf: string | null, file_digest: string | null }>('select sealing, trouble, leaf, file_digest from record where id = $1', [id])).rows[0]!
 const leavesOf = async (id: string) => (await scene.admin.query<{ n: number }>(`select count(*)::int as n from log_leaf where kind = 'record' and record_id = $1`, [id])).rows[0]!.n
 
+const manager = () => scene.one.as('manager') as ReturnType<SealingScene['one']['as']> & { organisationId: string }
+/** The inspector's signature with a payload as only a foreign or broken program writes it. */
+async function signatureWire(side: SealingScene['one'], more: Partial<PayloadOf<'signature'>>, replaces: string[] = []) {
+  const { rows: [round] } = await scene.admin.query<{ id: string, basis: string }>('select id, basis from round where job_id = $1', [side.jobId])
+  const author = side.accounts.inspector
+  const payload: Omit<PayloadOf<'signature'>, 'salt'> = { state: 'signed', meaning: 'present', signer: { account: author, name: 'Nonsense' }, role: 'inspector', known: 'ownAccount', presence: null, sheet: null, sheetDigest: null, strokes: null, typed: 'N', ...more }
+  return { round: round!.id, wire: makeEntry({ kind: 'signature', id: uuidv7(), salt: '0'.repeat(32), madeAt: '2026-11-30T09:00:00-05:00', organisation: side.id, job: side.jobId, round: round!.id, author, device: uuidv7(), replaces, payload }).wire }
+}
+
 describe('sealing', { timeout: 240_000 }, () => {
-  it('that is killed before, within and after each of its steps ends sealed, signed once and entered once', async () => {
+  it('refuses a signature over what is no sheet of the round when it comes, and asks one that is kept to sign again', async () => {
     const { one } = scene
     await drawLineOf(one)
     await walkAll(one, false)
+    const sheet = '{"scope":"final"}'
+    for (const wrong of [{ sheet, sheetDigest: sha256Hex(sheet) }, { sheet: 'not even JSON', sheetDigest: sha256Hex(sheet) }, { sheet: null, sheetDigest: null }]) {
+      const wire = await signatureWire(one, wrong)
+      expect(await acceptEntries(one.as('inspector'), wire.round, [wire.wire])).toMatchObject({ results: [{ state: 'refused', refusal: { code: 'sheet', pointer: '/payload/sheet' } }] })
+    }
+    await expect(requestSealing(manager(), one.jobId, { id: randomUUID(), scope: 'final', overDevices: null })).rejects.toMatchObject({ code: 'notReady' })
+    // As an earlier program took it in.
+    const { wire, round } = await signatureWire(one, { sheet, sheetDigest: sha256Hex(sheet) })
+    await withSession(one.as('manager'), async (tx) => {
+      const locked = (await lockRound(tx, round))!
+      const read = readEntry(wire)
+      if (read.state === 'refused') throw new Error(read.refusal.message)
+      await insertEntries(tx, [{ entry: { ...read.entry, number: locked.accepted + 1 }, wire }])
+      await setAccepted(tx, round, locked.accepted + 1)
+    })
+    await expect(requestSealing(manager(), one.jobId, { id: randomUUID(), scope: 'final', overDevices: null })).rejects.toMatchObject({ code: 'notReady' })
+    await expect(signAndRequest(one, 'final')).rejects.toMatchObject({ code: 'stale', message: expect.stringContaining('Nonsense') as string })
+    // Nobody can take it back but its signer, who signs again.
+    const { rows: [bad] } = await scene.admin.query<{ id: string }>(`select id from entry where kind = 'signature' order by number limit 1`)
+    const absent = await signatureWire(one, { state: 'absent', sheet: null, sheetDigest: null, typed: null }, [bad!.id])
+    expect((await acceptEntries(one.as('inspector'), absent.round, [absent.wire])).results[0]!.state).toBe('accepted')
+  })
+
+  it('that is killed before, within and after each of its steps ends sealed, signed once and entered once', async () => {
+    const { one } = scene
     const id = await signAndRequest(one, 'final')
     const pool = new BreakingPool({ connectionString: scene.database.appUrl, max: 6 })
     setPool(pool)

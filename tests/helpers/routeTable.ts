@@ -104,7 +104,17 @@ async function sheetOf(side: Side, { admin }: DemoGround): Promise<string> {
 const GIVEN = 'exists (select 1 from job_given g where g.organisation_id = j.organisation_id and g.job_id = j.id and g.account_id = $2)'
 const SENT = `select p.record_id::text as id from recipient p join contact c on c.organisation_id = p.organisation_id and c.id = p.contact_id
   join record r on r.organisation_id = p.organisation_id and r.id = p.record_id where c.account_id = $2 and r.sealing = 'sealed'`
+const CODES = `select o.code || '-' || lpad(j.number::text, 4, '0') as id from job j join organisation o on o.id = j.organisation_id`
+const firstCells = (_: unknown, text: string) => text.split('\r\n').slice(1).map(row => row.split(',')[0]!)
 const idsOf = (json: { id: string }[]) => json.map(one => one.id)
+
+/** An entry of some job that another person of the office asked to be erased. */
+async function askedErasure(side: Side, admin: DemoGround['admin'], actor: DemoActor): Promise<string> {
+  const id = randomUUID()
+  await admin.query(`insert into erasure (organisation_id, id, job_id, entry_id, reason, asked_by) select organisation_id, $2, job_id, id, 'The parents asked.', $3 from entry where organisation_id = $1 and kind = 'walkOpened' limit 1`,
+    [side.id, id, side.accounts[actor === 'manager' ? 'administrator' : 'manager']])
+  return id
+}
 
 export const ROUTES: RouteRow[] = [
   { file: 'api/account/act-for.post.ts', permission: 'account.own', call: (side, _, actor) => ({ method: 'POST', path: '/api/account/act-for', body: actor === 'client' ? { standing: 'client', organisationId: null } : { standing: actor === 'crew' ? 'crew' : 'staff', organisationId: side.id } }), foreign: { client: 200, else: 403 }, ownSession: true },
@@ -119,6 +129,14 @@ export const ROUTES: RouteRow[] = [
   { file: 'api/authorities/index.put.ts', permission: 'numbers.write', call: () => ({ method: 'PUT', path: '/api/authorities', body: { id: randomUUID(), name: `Town of ${randomUUID()}` } }), foreign: null },
   { file: 'api/check/[key].get.ts', permission: 'public', call: () => get(`/api/check/${'0'.repeat(64)}`), foreign: null },
   { file: 'api/check/index.post.ts', permission: 'public', call: () => ({ method: 'POST', path: '/api/check', body: Buffer.from('no PDF at all'), headers: { 'content-type': 'application/pdf' } }), foreign: null },
+  {
+    file: 'api/erasures/[erasureId]/done.post.ts', permission: 'erasure.write',
+    call: async (side, { admin }, actor) => ({ method: 'POST', path: `/api/erasures/${await askedErasure(side, admin, actor)}/done`, body: {} }),
+  },
+  { file: 'api/erasures/[erasureId]/index.delete.ts', permission: 'erasure.write', call: async (side, { admin }, actor) => ({ method: 'DELETE', path: `/api/erasures/${await askedErasure(side, admin, actor)}` }), again: 404 },
+  { file: 'api/jobs/[jobId]/erasures/index.get.ts', permission: 'erasure.write', call: side => get(`/api/jobs/${side.jobId}/erasures`) },
+  { file: 'api/jobs/[jobId]/erasures/index.post.ts', permission: 'erasure.write', ok: 201, call: side => ({ method: 'POST', path: `/api/jobs/${side.jobId}/erasures`, body: { id: randomUUID(), entryId: null, photo: side.photo, reason: 'The parents asked.' } }), foreign: 404 },
+  { file: 'api/jobs/[jobId]/hold.put.ts', permission: 'erasure.write', call: side => ({ method: 'PUT', path: `/api/jobs/${side.jobId}/hold`, body: { reason: null } }) },
   { file: 'api/checklists.get.ts', permission: 'checklist.read', call: () => get('/api/checklists'), foreign: null },
   { file: 'api/clients/index.get.ts', permission: 'client.read', call: () => get('/api/clients'), foreign: null, rows: { ids: (json: { id: string, contacts: { id: string }[] }[]) => json.flatMap(one => [one.id, ...idsOf(one.contacts)]), staff: 'select id from client where organisation_id = $1 union all select id from contact where organisation_id = $1 and ended_at is null' } },
   { file: 'api/clients/index.put.ts', permission: 'client.write', call: () => ({ method: 'PUT', path: '/api/clients', body: { id: randomUUID(), name: `Parks of ${randomUUID()}`, address: '' } }), foreign: null },
@@ -131,7 +149,6 @@ export const ROUTES: RouteRow[] = [
       return { method: 'DELETE', path: `/api/clients/${side.clientId}/contacts/${id}` }
     },
   },
-  { file: 'api/deficiencies.csv.get.ts', permission: 'deficiency.assign', call: () => get('/api/deficiencies.csv'), foreign: null, rows: { ids: (_, text) => text.split('\r\n').slice(1).map(row => row.split(',')[0]!), staff: `select tag as id from deficiency_state where organisation_id = $1 and state not like 'ended%'` } },
   { file: 'api/deficiencies/index.get.ts', permission: 'deficiency.assign', call: () => get('/api/deficiencies?most=200'), foreign: null, rows: { ids: (json: { rows: { id: string }[] }) => idsOf(json.rows), staff: `select id from deficiency_state where organisation_id = $1 and state not like 'ended%'` } },
   { file: 'api/deficiencies/[deficiencyId].get.ts', permission: 'deficiency.assign', call: side => get(`/api/deficiencies/${side.deficiencyId}`) },
   {
@@ -145,7 +162,6 @@ export const ROUTES: RouteRow[] = [
     rows: { ids: (json: { entries: { envelope: string }[] }) => json.entries.map(one => (JSON.parse(one.envelope) as { id: string }).id), staff: `select e.id from entry e join job j on j.organisation_id = e.organisation_id and j.id = e.job_id join round r on r.id = e.round_id where e.organisation_id = $1 and j.title in ('Upper lawn', 'Bus loop')` },
   },
   { file: 'api/field/v1/rounds/[roundId]/entries.post.ts', permission: 'entry.send', maxBytes: 25_000_000, call: (side, _, actor) => ({ method: 'POST', path: `/api/field/v1/rounds/${side.roundId}/entries`, body: { device: uuidv7(), entries: [noteWire(side, side.accounts[actor])], empty: false } }), sameBody: false },
-  { file: 'api/jobs.csv.get.ts', permission: 'job.read', call: () => get('/api/jobs.csv'), foreign: null, rows: { ids: (_, text) => text.split('\r\n').slice(1).map(row => row.split(',')[0]!), staff: `select o.code || '-' || lpad(j.number::text, 4, '0') as id from job j join organisation o on o.id = j.organisation_id where o.id = $1`, crew: `select o.code || '-' || lpad(j.number::text, 4, '0') as id from job j join organisation o on o.id = j.organisation_id where o.id = $1 and ${GIVEN}` } },
   { file: 'api/jobs/index.get.ts', permission: 'job.read', call: () => get('/api/jobs?most=200'), foreign: null, rows: { ids: (json: { rows: { id: string }[] }) => idsOf(json.rows), staff: 'select id from job where organisation_id = $1', crew: `select j.id from job j where j.organisation_id = $1 and ${GIVEN}` } },
   { file: 'api/jobs/index.post.ts', permission: 'job.write', call: side => ({ method: 'POST', path: '/api/jobs', body: { id: randomUUID(), siteId: side.siteId, ...jobBody(side) } }), ok: 201, foreign: 422 },
   { file: 'api/jobs/[jobId]/index.get.ts', permission: 'job.read', call: side => get(`/api/jobs/${side.jobId}`), rows: { ids: (json: { job: { id: string } }) => [json.job.id], staff: `select id from job where organisation_id = $1 and title in ('Upper lawn', 'Bus loop')` } },
@@ -231,6 +247,14 @@ export const ROUTES: RouteRow[] = [
   },
   { file: 'api/sites/index.get.ts', permission: 'site.read', call: () => get('/api/sites'), foreign: null, rows: { ids: idsOf, staff: 'select id from site where organisation_id = $1', crew: `select distinct j.site_id as id from job j where j.organisation_id = $1 and ${GIVEN}` } },
   { file: 'api/sites/index.put.ts', permission: 'site.write', call: side => ({ method: 'PUT', path: '/api/sites', body: { id: randomUUID(), clientId: side.clientId, name: `Yard ${randomUUID()}`, address: '', timeZone: 'America/New_York', authorityId: null } }), foreign: 422 },
+  { file: 'api/tables/jobs/[as].get.ts', permission: 'job.read', call: () => get('/api/tables/jobs/csv'), foreign: null, rows: { ids: firstCells, staff: `${CODES} where o.id = $1`, crew: `${CODES} where o.id = $1 and ${GIVEN}` } },
+  { file: 'api/tables/tags/[as].get.ts', permission: 'deficiency.assign', call: () => get('/api/tables/tags/csv'), foreign: null, rows: { ids: firstCells, staff: `select tag as id from deficiency_state where organisation_id = $1 and state not like 'ended%'` } },
+  { file: 'api/tables/sites/[as].get.ts', permission: 'site.read', call: () => get('/api/tables/sites/csv'), foreign: null, rows: { ids: firstCells, staff: 'select name as id from site where organisation_id = $1', crew: `select distinct s.name as id from site s join job j on j.organisation_id = s.organisation_id and j.site_id = s.id where s.organisation_id = $1 and ${GIVEN}` } },
+  { file: 'api/tables/records/[as].get.ts', permission: 'record.read', call: () => get('/api/tables/records/csv'), foreign: null, rows: { ids: firstCells, staff: 'select code as id from record where organisation_id = $1', client: `select r.code as id from record r join (${SENT}) s on s.id = r.id::text where $1::text is not null` } },
+  { file: 'api/tables/people/[as].get.ts', permission: 'people.read', call: () => get('/api/tables/people/csv'), foreign: null, rows: { ids: firstCells, staff: 'select a.name as id from membership m join account a on a.id = m.account_id where m.organisation_id = $1' } },
+  { file: 'api/tables/numbers/[as].get.ts', permission: 'numbers.read', call: side => get(`/api/tables/numbers/csv?authorityId=${side.authorityId}`), foreign: 200 },
+  { file: 'api/log/index.get.ts', permission: 'log.epoch', call: () => get('/api/log'), foreign: null },
+  { file: 'api/log/epochs.post.ts', permission: 'log.epoch', call: () => ({ method: 'POST', path: '/api/log/epochs', body: { reason: 'To be tidy.' } }), ok: 409, foreign: null },
   { file: 'routes/acceptances/[acceptanceFile].get.ts', permission: 'record.read', call: () => get(`/acceptances/${RECEIPT}.pdf`) },
   { file: 'routes/health/live.get.ts', permission: 'public', call: () => get('/health/live'), foreign: null },
   { file: 'routes/health/ready.get.ts', permission: 'public', call: () => get('/health/ready'), foreign: null, sameBody: false },

@@ -100,11 +100,11 @@ export async function walkAll(side: TestOrganisation, wide: boolean): Promise<st
   return ids.get('A1')
 }
 
-/** The manager offers that reading to the owner. */
-export async function offer(side: TestOrganisation, reading: string): Promise<string> {
+/** The manager offers that reading to the owner; anew where an offer is named. */
+export async function offer(side: TestOrganisation, reading: string, before: string[] = []): Promise<string> {
   const { walker, pinned, send } = await walkerOf(side, 'manager')
   const run = elementsOf(pinned.line)[0]!
-  const id = walker.write('deviationOffered', { words: 'One bay is 10 ft 2 in; fabric and ties conform.', condition: 'No wind screen is hung there.', until: '2028-06-30' }, { element: run.id, check: 'post-spacing', place: { face: null, bay: 2, from: null, height: null }, answers: [reading] })
+  const id = walker.write('deviationOffered', { words: 'One bay is 10 ft 2 in; fabric and ties conform.', condition: 'No wind screen is hung there.', until: '2028-06-30' }, { element: run.id, check: 'post-spacing', place: { face: null, bay: 2, from: null, height: null }, answers: [reading, ...before] })
   await send()
   return id
 }

@@ -36,7 +36,7 @@ const COLUMNS = `d.id, d.tag, d.class, d.state, d.check_id as "checkId", d.due, 
   (select a.payload->'to'->>'name' from entry a where a.organisation_id = d.organisation_id and a.kind = 'assignment'
      and a.id in (select x::uuid from jsonb_array_elements_text(d.outcome->'history') x) order by a.accepted_at desc, a.number desc limit 1) as "givenTo"`
 
-export type TagRowOfStore = Omit<TagListRow, 'jobCode' | 'title'> & { number: number, organisationCode: string, key?: string }
+export type TagRowOfStore = Omit<TagListRow, 'jobCode' | 'title' | 'unit'> & { number: number, organisationCode: string, key?: string }
 
 export async function listTags(tx: Tx, query: TagListQuery): Promise<TagRowOfStore[]> {
   const { key, type } = SORTS[query.sort]
@@ -92,10 +92,10 @@ export async function tagsToAnswer(tx: Tx, ids: string[]): Promise<TagToAnswer[]
   return rows
 }
 
-/** Crew see the jobs that were given to them: who gets a tag gets its job too. Others see it anyway. */
-export async function giveJobs(tx: Tx, jobIds: string[], accountId: string): Promise<void> {
+/** Crew see the jobs that were given to them; others see them anyway, and nothing is written for those. */
+export async function giveJob(tx: Tx, jobId: string, accounts: string[]): Promise<void> {
   await tx.client.query(
     `insert into job_given (organisation_id, job_id, account_id, given_as)
-     select m.organisation_id, x, m.account_id, 'crew' from unnest($1::uuid[]) x, membership m
-      where m.organisation_id = app_organisation() and m.account_id = $2 and m.role = 'crew' and m.ended_at is null on conflict do nothing`, [[...new Set(jobIds)], accountId])
+     select m.organisation_id, $1, m.account_id, 'crew' from membership m
+      where m.organisation_id = app_organisation() and m.account_id = any($2::uuid[]) and m.role = 'crew' and m.ended_at is null on conflict do nothing`, [jobId, accounts])
 }

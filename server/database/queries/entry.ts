@@ -63,6 +63,17 @@ export async function dropAside(tx: Tx, entries: KeptEntry[]): Promise<void> {
   if (entries.length > 0) await tx.client.query(`delete from entry_aside where organisation_id = app_organisation() and why = 'held' and id = any($1::uuid[])`, [entries.map(entry => entry.envelope.id)])
 }
 
+/** The round's entries up to a number whose payload was erased since they were pulled, or before. */
+export async function erasedUpTo(tx: Tx, roundId: string, number: number): Promise<{ number: number, envelope: string, payload: string }[]> {
+  const { rows } = await tx.client.query<{ number: number, envelope: string, payload: string }>(
+    `select number, envelope_text as envelope, '' as payload from entry where organisation_id = app_organisation() and round_id = $1 and number <= $2 and payload_text is null order by number`, [roundId, number])
+  return rows
+}
+
+export async function erasedCount(tx: Tx, roundId: string): Promise<number> {
+  return (await tx.client.query<{ n: number }>('select count(*)::int as n from entry where organisation_id = app_organisation() and round_id = $1 and payload_text is null', [roundId])).rows[0]!.n
+}
+
 /** The round's entries after a number, in order. */
 export async function entriesAfter(tx: Tx, roundId: string, after: number, most: number): Promise<{ number: number, envelope: string, payload: string }[]> {
   const { rows } = await tx.client.query<{ number: number, envelope: string, payload: string }>(

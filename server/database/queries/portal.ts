@@ -40,6 +40,15 @@ export async function acceptingContact(tx: Tx, recordId: string, accountId: stri
       where r.id = $1 and c.account_id = $2 and c.ended_at is null and not c.mailbox order by c.accepts desc, c.id limit 1`, [recordId, accountId])).rows[0]
 }
 
+/** Who signed on a device, as a contact of the job's client: by the account, or by the very name where the contact has none. */
+export async function contactNamed(tx: Tx, jobId: string, signer: { account: string | null, name: string }): Promise<AcceptingContact | undefined> {
+  return (await tx.client.query<AcceptingContact>(
+    `select c.id, c.client_id as "clientId", c.name, c.title, c.accepts, cl.name as "clientName" from job j
+       join contact c on c.organisation_id = j.organisation_id and c.client_id = j.client_id join client cl on cl.organisation_id = c.organisation_id and cl.id = c.client_id
+      where j.organisation_id = app_organisation() and j.id = $1 and c.ended_at is null and not c.mailbox and (c.account_id = $2::uuid or ($2::uuid is null and c.account_id is null and c.name = $3))
+      order by c.accepts desc, c.id limit 1`, [jobId, signer.account, signer.name])).rows[0]
+}
+
 /** Deficiencies of a job that this client may see: offered to it, or accepted. */
 export async function offeredOf(tx: Tx, organisationId: string, jobId: string): Promise<string[]> {
   return (await tx.client.query<{ id: string }>('select id from deficiency_state where organisation_id = $1 and job_id = $2', [organisationId, jobId])).rows.map(row => row.id)

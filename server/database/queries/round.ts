@@ -39,9 +39,9 @@ export async function addDevice(tx: Tx, roundId: string, device: { device: strin
   await tx.client.query('insert into round_device (organisation_id, round_id, device_id, account_id, name, letter) values (app_organisation(), $1, $2, $3, $4, $5)', [roundId, device.device, accountId, device.name, letter])
 }
 
-/** A device says whether anything of the round still waits on it. */
+/** A device of this person says whether anything of the round still waits on it; another's device says so itself. */
 export async function noteDevice(tx: Tx, roundId: string, device: string, empty: boolean): Promise<void> {
-  await tx.client.query('update round_device set empty_at = case when $3 then now() end where organisation_id = app_organisation() and round_id = $1 and device_id = $2', [roundId, device, empty])
+  await tx.client.query('update round_device set empty_at = case when $3 then now() end where organisation_id = app_organisation() and round_id = $1 and device_id = $2 and account_id = app_account()', [roundId, device, empty])
 }
 
 export async function basesOf(tx: Tx, jobId: string): Promise<{ digest: string, text: string }[]> {

@@ -3,8 +3,11 @@ import type { Tx } from '../withSession'
 
 interface ContactOf { id: string, name: string, email: string }
 
-export async function isThere(tx: Tx, transmittalId: string): Promise<boolean> {
-  return (await tx.client.query('select from transmittal where organisation_id = app_organisation() and id = $1', [transmittalId])).rowCount === 1
+/** Which record went to which contacts under that id. */
+export async function sentAs(tx: Tx, transmittalId: string): Promise<{ recordId: string, contacts: string[] }> {
+  return (await tx.client.query<{ recordId: string, contacts: string[] }>(
+    `select t.record_id as "recordId", array(select p.contact_id from recipient p where p.organisation_id = t.organisation_id and p.transmittal_id = t.id) as contacts
+       from transmittal t where t.organisation_id = app_organisation() and t.id = $1`, [transmittalId])).rows[0]!
 }
 
 /** Those of the given contacts that are of the record's client and still stand. */
@@ -15,8 +18,9 @@ export async function contactsAmong(tx: Tx, recordId: string, ids: string[]): Pr
       where r.organisation_id = app_organisation() and r.id = $1 and c.id = any($2::uuid[]) and c.ended_at is null`, [recordId, ids])).rows
 }
 
-export async function insertTransmittal(tx: Tx, transmittal: { id: string, recordId: string, message: string, sentBy: string }): Promise<void> {
-  await tx.client.query('insert into transmittal (organisation_id, id, record_id, message, sent_by) values (app_organisation(), $1, $2, $3, $4)', [transmittal.id, transmittal.recordId, transmittal.message, transmittal.sentBy])
+/** False where that id was used already; one that is being written at this moment is waited for. */
+export async function insertTransmittal(tx: Tx, transmittal: { id: string, recordId: string, message: string, sentBy: string }): Promise<boolean> {
+  return (await tx.client.query('insert into transmittal (organisation_id, id, record_id, message, sent_by) values (app_organisation(), $1, $2, $3, $4) on conflict do nothing', [transmittal.id, transmittal.recordId, transmittal.message, transmittal.sentBy])).rowCount === 1
 }
 
 export async function insertRecipient(tx: Tx, recipient: { id: string, transmittalId: string, recordId: string, contact: ContactOf }): Promise<void> {

@@ -162,3 +162,19 @@ export const basis = pgTable('basis', {
   primaryKey({ columns: [table.organisationId, table.jobId, table.digest] }),
   foreignKey({ columns: [table.organisationId, table.jobId], foreignColumns: [job.organisationId, job.id] }),
 ])
+
+/** A hold on a job: while it stands nothing of the job is erased. */
+export const jobHold = pgTable('job_hold', {
+  organisationId: organisationId(),
+  id: uuid('id').notNull(),
+  jobId: uuid('job_id').notNull(),
+  reason: text('reason').notNull(),
+  placedBy: uuid('placed_by').notNull().references(() => account.id),
+  placedAt: createdAt('placed_at'),
+  liftedBy: uuid('lifted_by').references(() => account.id),
+  liftedAt: instant('lifted_at'),
+}, table => [
+  primaryKey({ columns: [table.organisationId, table.id] }),
+  foreignKey({ columns: [table.organisationId, table.jobId], foreignColumns: [job.organisationId, job.id] }),
+  uniqueIndex('job_hold_one').on(table.organisationId, table.jobId).where(sql`lifted_at is null`),
+])

@@ -1,3 +1,4 @@
+import { sql } from 'drizzle-orm'
 import { boolean, foreignKey, index, integer, jsonb, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core'
 import { DEFICIENCY_CLASSES } from '../../../shared/checklist/check'
 import { DEFICIENCY_STATES, VERDICTS } from '../../../shared/round/outcome'
@@ -58,6 +59,7 @@ export const entry = pgTable('entry', {
 }, table => [
   primaryKey({ columns: [table.organisationId, table.id] }),
   unique('entry_number').on(table.organisationId, table.roundId, table.number),
+  index('entry_erased').on(table.organisationId, table.roundId).where(sql`payload_text is null`),
   foreignKey({ columns: [table.organisationId, table.roundId], foreignColumns: [round.organisationId, round.id] }),
 ])
 
@@ -99,8 +101,8 @@ export const checkState = pgTable('check_state', {
   verdict: text('verdict', { enum: VERDICTS }).notNull(),
   settled: boolean('settled').notNull(),
   readAgain: boolean('read_again').notNull(),
-  at: integer('at').notNull().default(0),
-  outcome: jsonb('outcome').notNull().default({}),
+  at: integer('at').notNull(),
+  outcome: jsonb('outcome').notNull(),
 }, table => [
   primaryKey({ columns: [table.organisationId, table.roundId, table.elementId, table.checkId, table.face] }),
   foreignKey({ columns: [table.organisationId, table.roundId], foreignColumns: [round.organisationId, round.id] }),
@@ -126,7 +128,7 @@ export const deficiencyState = pgTable('deficiency_state', {
   index('deficiency_state_assigned').on(table.organisationId, table.assignedTo, table.state),
 ])
 
-/** A photo's final bytes stand in the store under their digest. */
+/** That a job has a photo. Its final bytes stand once in the store under their digest, whichever jobs have it. */
 export const photo = pgTable('photo', {
   organisationId: organisationId(),
   digest: text('digest').notNull(),
@@ -138,6 +140,26 @@ export const photo = pgTable('photo', {
   storedAt: createdAt('stored_at'),
   erasedAt: instant('erased_at'),
 }, table => [
-  primaryKey({ columns: [table.organisationId, table.digest] }),
+  primaryKey({ columns: [table.organisationId, table.digest, table.jobId] }),
   foreignKey({ columns: [table.organisationId, table.jobId], foreignColumns: [job.organisationId, job.id] }),
+])
+
+/** What somebody asked to have erased: the payload of an entry or a picture, with the reason. A second person does it, through the owner's function `redact`. */
+export const erasure = pgTable('erasure', {
+  organisationId: organisationId(),
+  id: uuid('id').notNull(),
+  jobId: uuid('job_id').notNull(),
+  entryId: uuid('entry_id'),
+  /** Digest of a picture's final bytes. */
+  photo: text('photo'),
+  reason: text('reason').notNull(),
+  askedBy: uuid('asked_by').notNull().references(() => account.id),
+  askedAt: createdAt('asked_at'),
+  withdrawnAt: instant('withdrawn_at'),
+  doneBy: uuid('done_by').references(() => account.id),
+  doneAt: instant('done_at'),
+}, table => [
+  primaryKey({ columns: [table.organisationId, table.id] }),
+  foreignKey({ columns: [table.organisationId, table.jobId], foreignColumns: [job.organisationId, job.id] }),
+  foreignKey({ columns: [table.organisationId, table.entryId], foreignColumns: [entry.organisationId, entry.id] }),
 ])

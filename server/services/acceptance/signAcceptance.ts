@@ -14,7 +14,6 @@ import { buildAcceptancePdf } from '../../documents/acceptancePdf'
 import { signPdf } from '../../documents/signPdf'
 import { useSettings } from '../../settings'
 import { useStorage } from '../../storage/storage'
-import { writeDeskEntry } from '../entry/writeDeskEntry'
 import { Failure, notFound } from '../failure'
 import { appendLeaf } from '../log/appendLeaf'
 import { writeHead } from '../log/writeHead'
@@ -22,6 +21,7 @@ import { offeredDeviations } from '../portal/offeredDeviations'
 import { witnessKey } from '../record/signingKey'
 import { instantAt, zoneNames } from '../record/zoneNames'
 import { acceptanceKey } from './readAcceptance'
+import { writeAnswer } from './writeAnswer'
 
 type Who = Session & { accountId: string }
 export interface SignedAcceptance { id: string, at: string }
@@ -53,13 +53,7 @@ async function answerOffer(who: Who, organisationId: string, jobId: string, cont
   if (offer.class !== 'ownerMayAccept') throw new Failure('conflict', 'This deficiency is of a class that no owner may accept. It has to be corrected, or decided by the authority.')
   if (offer.readings.length !== 1) throw new Failure('notReady', 'Readings at this place disagree. Ask the contractor which one stands before you answer.')
   if (found!.round.state !== 'open') throw new Failure('frozen', 'A record of this job is being sealed at this moment. Try again in a minute.')
-  await writeDeskEntry(staff, who.accountId, {
-    kind: 'deviationAccepted', id: input.id, job: jobId, round: found!.round.id, element: offer.element, check: offer.check, basis: offer.basis, place: offer.place, answers: [offer.readings[0]!, offer.offer],
-    payload: {
-      by: { account: who.accountId, name: contact.name, ...(contact.title ? { title: contact.title } : {}) }, for: contact.clientName, accepted: input.meaning === 'acceptsDeviation',
-      ...(input.words ? { words: input.words } : {}), ...(offer.condition ? { condition: offer.condition } : {}), until: offer.until,
-    },
-  })
+  await writeAnswer(staff, offer, contact, { id: input.id, jobId, roundId: found!.round.id, author: who.accountId, account: who.accountId, accepted: input.meaning === 'acceptsDeviation', words: input.words })
   return offer
 }
 

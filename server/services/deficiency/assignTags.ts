@@ -9,7 +9,7 @@ import { Failure } from '../failure'
 
 /**
  * Gives several tags to somebody from the desk, one entry for each. A tag that cannot be given holds up none of the others; the same ids again write nothing
- * twice. Somebody of the crew is given the jobs too, or they would not see their tags.
+ * twice.
  */
 export async function assignTags(who: Session & { accountId: string, organisationId: string }, { tags: wanted, to, due, words }: AssignTags): Promise<AssignTagsAnswer> {
   const { found, written } = await withSession(who, async tx => ({
@@ -39,7 +39,5 @@ export async function assignTags(who: Session & { accountId: string, organisatio
       }
     }
   }
-  const jobs = answer.written.map(id => found.get(id)!.jobId)
-  if (to.account !== null && jobs.length > 0) await withSession(who, tx => tags.giveJobs(tx, jobs, to.account!))
   return answer
 }

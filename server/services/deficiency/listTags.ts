@@ -1,21 +1,22 @@
 import { jobCode } from '../../../shared/api/job'
 import type { TagListPage, TagListQuery, TagListRow } from '../../../shared/api/deficiency'
-import type { Both } from '../../../shared/checklist/check'
+import type { Check } from '../../../shared/checklist/check'
 import * as tags from '../../database/queries/deficiency'
 import type { Session } from '../../database/withSession'
 import { withSession } from '../../database/withSession'
 import { readBuiltIn } from '../checklist/readBuiltIn'
 import { fromPlace } from '../fromPlace'
 
-let titles: Map<string, Both> | undefined
-/** A check's title by its id; ids are stable over versions. */
-function titleOf(checkId: string): Both | null {
-  titles ??= new Map(readBuiltIn().flatMap(list => list.checks.map(check => [check.id, check.title])))
-  return titles.get(checkId) ?? null
+let checks: Map<string, Check> | undefined
+/** A check by its id; ids are stable over versions. */
+function checkOf(checkId: string): Check | undefined {
+  checks ??= new Map(readBuiltIn().flatMap(list => list.checks.map(check => [check.id, check])))
+  return checks.get(checkId)
 }
 
 export function toTagRow({ organisationCode, number, key: _, ...row }: tags.TagRowOfStore): TagListRow {
-  return { ...row, jobCode: jobCode(organisationCode, number), title: titleOf(row.checkId) }
+  const check = checkOf(row.checkId)
+  return { ...row, jobCode: jobCode(organisationCode, number), title: check?.title ?? null, unit: check?.unit ?? null }
 }
 
 /** One page of the tags of all jobs that the person may see, and how many each filter holds. */

@@ -12,6 +12,8 @@ import * as entries from '../../database/queries/entry'
 import { notFound } from '../failure'
 import { rememberRound } from '../round/foldRound'
 import { keepState } from '../round/keepState'
+import { giveAssigned } from './giveAssigned'
+import { signatureRefusal } from './signatureRefusal'
 import { sha256 } from './sha256'
 
 /** One entry of a push on its way: its texts, what was read, and what becomes of it. */
@@ -38,6 +40,7 @@ export async function acceptEntries(who: Session, roundId: string, wires: WireEn
       // Held by an earlier push, sent again or not.
       await entries.dropAside(tx, good.map(one => one.entry))
       await entries.setAccepted(tx, roundId, round.accepted)
+      await giveAssigned(tx, who, round.jobId, good.map(one => one.entry))
     })
     return { accepted: round.accepted, folded }
   })
@@ -75,7 +78,7 @@ function read(wire: WireEntry, who: Session, roundId: string): Offered {
     : envelope.organisation !== who.organisationId ? '/envelope/organisation'
       : who.accountId !== null && envelope.author !== who.accountId ? '/envelope/author'
         : who.role !== null && isKnown(entry) && !may(who.role, ENTRY_RULES[entry.envelope.kind].permission) ? '/envelope/kind' : null
-  const refusal = wrong ? entryRefusal('notYours', wrong) : null
+  const refusal = wrong ? entryRefusal('notYours', wrong) : signatureRefusal(entry)
   return { wire, entry, result: { id: envelope.id, state: refusal ? 'refused' : 'accepted', number: null, refusal } }
 }
 

@@ -25,15 +25,17 @@ export async function writeHead(): Promise<{ size: number, root: string }> {
   return { size, root }
 }
 
-/**
- * Refuses to seal over a log that has fallen behind what was once said outside of it (an old backup was put back): sealing again at the same positions
- * would make two histories. An administrator opens a new epoch first.
- */
-export async function refuseBehind(): Promise<void> {
+/** The last head that stands outside, where the database has fallen behind it in the same epoch (an old backup was put back); null where it has not. */
+export async function headAhead(): Promise<OutsideHead | null> {
   const text = await readFile(outside(), 'utf8').catch((error: NodeJS.ErrnoException) => { if (error.code === 'ENOENT') return ''; throw error })
   const last = text.trim().split('\n').filter(Boolean).at(-1)
-  if (!last) return
+  if (!last) return null
   const head = JSON.parse(last) as OutsideHead
   const { log_epoch: epoch } = await entrance.installation()
-  if (head.epoch === epoch && await entrance.logSize() < head.size) throw new Failure('unavailable', 'The log of this installation is older than its last signed head: a backup was put back. Sealing stops until an administrator opens a new epoch of the log.')
+  return head.epoch === epoch && await entrance.logSize() < head.size ? head : null
+}
+
+/** Refuses to seal over a log that has fallen behind: sealing again at the same positions would make two histories. An administrator opens a new epoch first. */
+export async function refuseBehind(): Promise<void> {
+  if (await headAhead()) throw new Failure('unavailable', 'The log of this installation is older than its last signed head: a backup was put back. Sealing stops until an administrator opens a new epoch of the log.')
 }

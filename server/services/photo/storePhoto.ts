@@ -2,7 +2,7 @@ import { createHash } from 'node:crypto'
 import sharp from 'sharp'
 import { fileTypeFromBuffer } from 'file-type'
 import type { Session } from '../../database/withSession'
-import { withSession } from '../../database/withSession'
+import { asProgram, withSession } from '../../database/withSession'
 import * as photos from '../../database/queries/photo'
 import { useStorage } from '../../storage/storage'
 import { Failure, notFound } from '../failure'
@@ -24,7 +24,12 @@ export async function storePhoto(who: Session & { accountId: string, organisatio
   if (type?.mime !== 'image/jpeg') throw new Failure('wrongType', `This is ${type ? `a ${type.ext.toUpperCase()} file` : 'no picture'}, not a JPEG photo. Choose a photo.`)
   if (createHash('sha256').update(bytes).digest('hex') !== digest) throw new Failure('differs', 'These bytes are not the ones that the entry names. Send the photo as the device keeps it.')
   const { width, height } = await checkFinal(bytes)
-  await withSession(who, async (tx) => { if (!await photos.jobIsTheirs(tx, jobId)) throw notFound('job') })
+  const erased = await withSession(who, async (tx) => {
+    if (!await photos.jobIsTheirs(tx, jobId)) throw notFound('job')
+    return asProgram(tx, who, () => photos.photoIsErased(tx, digest))
+  })
+  // A device that still holds it may be done with it; what was erased is not taken in again.
+  if (erased) return { digest, bytes: bytes.length }
   const thumbnail = await sharp(bytes).resize(480, 480, { fit: 'inside', withoutEnlargement: true }).jpeg({ quality: 78 }).toBuffer()
   // Files first, the row last: a row is only there when its file is.
   await useStorage().put(photoKey(who.organisationId, digest), bytes)

@@ -1,11 +1,12 @@
 import { uuidv7 } from 'uuidv7'
 import type { RecordPageOf, RecordRow } from '../../../shared/api/record'
 import type { RecordDocument } from '../../../shared/record/record'
+import { photoIsErased } from '../../database/queries/photo'
 import * as records from '../../database/queries/record'
 import type { Session } from '../../database/withSession'
-import { withSession } from '../../database/withSession'
+import { forOrganisation, withSession } from '../../database/withSession'
 import { useStorage } from '../../storage/storage'
-import { notFound } from '../failure'
+import { Failure, notFound } from '../failure'
 import { photoKey, thumbnailKey } from '../photo/storePhoto'
 import { documentKey, pdfKey } from './sealRecord'
 
@@ -59,6 +60,7 @@ export async function readRecordPhoto(who: Session, recordId: string, digest: st
   const document = await documentOf(organisationId, documentDigest)
   const there = document?.photos.some(photo => photo.digest === digest)
   const bytes = there ? await useStorage().get(photoKey(organisationId, digest)) ?? await useStorage().get(thumbnailKey(organisationId, digest)) : null
+  if (there && !bytes && await withSession(forOrganisation(organisationId), tx => photoIsErased(tx, digest))) throw new Failure('erased', 'This picture was erased, with a reason and by two people. The record stays as it was sealed.')
   if (!bytes) throw notFound('photo')
   return bytes
 }

@@ -9,6 +9,7 @@ import { usePool } from '../../database/client'
 import { insertRound } from '../../database/queries/line'
 import { roundOf } from '../../database/queries/round'
 import type { SealingRow } from '../../database/queries/sealing'
+import { erasedPictures } from '../../database/queries/erasure'
 import * as sealing from '../../database/queries/sealing'
 import type { Session } from '../../database/withSession'
 import { forOrganisation, withSession } from '../../database/withSession'
@@ -46,7 +47,8 @@ const STEPS: Record<Exclude<SealingState, 'sealed'>, Step> = {
     const text = canonicalJson(document)
     const documentDigest = sha256Hex(text)
     await useStorage().put(documentKey(session.organisationId, documentDigest), Buffer.from(text, 'utf8'))
-    const pdf = await buildRecordPdf(document, { photoBytes: digest => stored(photoKey(session.organisationId, digest)) })
+    const erased = await withSession(session, tx => erasedPictures(tx, row.jobId))
+    const pdf = await buildRecordPdf(document, { photoBytes: async digest => erased.includes(digest) ? null : stored(photoKey(session.organisationId, digest)) })
     const pdfDigest = sha256(pdf)
     await useStorage().put(pdfKey(session.organisationId, pdfDigest), pdf)
     const pages = (await PDFDocument.load(pdf, { updateMetadata: false })).getPageCount()

@@ -7,6 +7,7 @@ import type { Adverse } from '../../../shared/round/lateEffect'
 import { lateEffect } from '../../../shared/round/lateEffect'
 import type { RoundOutcome } from '../../../shared/round/outcome'
 import { checkSignSheet } from '../../../shared/round/signSheet'
+import { readSheet } from '../entry/signatureRefusal'
 
 export interface SignedSet {
   scope: 'interim' | 'final'
@@ -17,7 +18,7 @@ export interface SignedSet {
   late: KeptEntry[]
   /** What later entries change for the worse: nothing is sealed over it. */
   adverse: Adverse[]
-  /** Signers whose sheet misses entries or was worked out differently: they sign again. */
+  /** Signers whose sheet misses entries, was worked out differently or cannot be read: they sign again. */
   again: string[]
 }
 
@@ -30,7 +31,8 @@ const isSigned = (entry: KeptEntry): entry is Entry<'signature'> => isKnown(entr
 export function signedSet(entries: KeptEntry[], bases: ReadonlyMap<string, RoundBasis>, options: FoldOptions): SignedSet | null {
   const replaced = new Set(entries.flatMap(entry => entry.envelope.replaces))
   const signatures = entries.filter(entry => entry.envelope.kind === 'signature' && !replaced.has(entry.envelope.id))
-  const signed = signatures.filter(isSigned)
+  const given = signatures.filter(isSigned)
+  const signed = given.filter(one => readSheet(one.payload!.sheet) !== null)
   const newest = signed.at(-1)
   if (!newest) return null
   const check = checkSignSheet(newest.payload!.sheet!, entries, bases, options)
@@ -48,6 +50,6 @@ export function signedSet(entries: KeptEntry[], bases: ReadonlyMap<string, Round
     entries: [...set, ...signatures].filter(isKnown),
     outcome, late,
     adverse: late.length > 0 ? lateEffect(outcome, fold(entries, bases, options)) : [],
-    again: again.map(one => one.payload!.signer.name),
+    again: [...again, ...given.filter(one => !signed.includes(one))].map(one => one.payload!.signer.name),
   }
 }

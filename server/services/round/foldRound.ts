@@ -1,10 +1,11 @@
 import type { KeptEntry } from '../../../shared/entry/entry'
+import { isKnown } from '../../../shared/entry/entry'
 import { readEntry } from '../../../shared/entry/readEntry'
 import type { RoundBasis } from '../../../shared/round/basis'
 import type { Folded, FoldOptions } from '../../../shared/round/fold'
 import { tasksFor } from '../../../shared/round/makeBasis'
 import type { LockedRound } from '../../database/queries/entry'
-import { entriesAfter } from '../../database/queries/entry'
+import { entriesAfter, erasedCount } from '../../database/queries/entry'
 import { basesOf, basisDigestsOf } from '../../database/queries/round'
 import { outcomeBefore } from '../../database/queries/state'
 import type { Tx } from '../../database/withSession'
@@ -12,9 +13,10 @@ import { sha256 } from '../entry/sha256'
 
 /**
  * The rounds in hand as they were last accepted by this process, so that a push does not read thousands of texts and fold them again. Only a cache: whoever uses it holds
- * the round's row lock and compares the number, since another process may have accepted meanwhile. Entries never change under a number.
+ * the round's row lock and compares the number, since another process may have accepted meanwhile. Entries change under a number only when one is erased, so
+ * how many were is compared as well.
  */
-const inHand = new Map<string, { accepted: number, folded: Folded }>()
+const inHand = new Map<string, { accepted: number, erased: number, folded: Folded }>()
 const ROUNDS_KEPT = 24
 const bases = new Map<string, RoundBasis>()
 
@@ -30,10 +32,16 @@ export function readBasis(digest: string, text: string): RoundBasis {
 
 /** All entries of a round up to its accepted number, parsed. `fresh` are those that this transaction has just stored. */
 export async function entriesOf(tx: Tx, round: { id: string, accepted: number }, fresh: KeptEntry[] = []): Promise<KeptEntry[]> {
-  const before = round.accepted - fresh.length
-  const entries = heldFold(round.id, before)?.entries ?? await readAll(tx, round.id, before)
-  return [...entries, ...fresh]
+  return (await entriesInHand(tx, round, fresh)).entries
 }
+
+async function entriesInHand(tx: Tx, round: { id: string, accepted: number }, fresh: KeptEntry[]): Promise<{ held: Folded | null, entries: KeptEntry[] }> {
+  const before = round.accepted - fresh.length
+  const held = await heldFold(tx, round.id, before)
+  return { held, entries: [...held?.entries ?? await readAll(tx, round.id, before), ...fresh] }
+}
+
+const isErased = (entry: KeptEntry) => isKnown(entry) ? entry.payload === null : entry.payloadText === ''
 
 async function readAll(tx: Tx, roundId: string, upTo: number): Promise<KeptEntry[]> {
   const rows = upTo > 0 ? await entriesAfter(tx, roundId, 0, upTo) : []
@@ -47,14 +55,14 @@ async function readAll(tx: Tx, roundId: string, upTo: number): Promise<KeptEntry
 /** Remembers what a committed transaction left behind; after a rollback nothing is remembered and the next one reads again. */
 export function rememberRound(roundId: string, accepted: number, folded: Folded): void {
   inHand.delete(roundId)
-  inHand.set(roundId, { accepted, folded })
+  inHand.set(roundId, { accepted, erased: folded.entries.filter(isErased).length, folded })
   if (inHand.size > ROUNDS_KEPT) inHand.delete(inHand.keys().next().value!)
 }
 
 /** The fold of a round's entries up to that number, where this process has it in hand. */
-export function heldFold(roundId: string, accepted: number): Folded | null {
+async function heldFold(tx: Tx, roundId: string, accepted: number): Promise<Folded | null> {
   const held = inHand.get(roundId)
-  return held?.accepted === accepted ? held.folded : null
+  return held?.accepted === accepted && held.erased === await erasedCount(tx, roundId) ? held.folded : null
 }
 
 /** The bases of a job. Their texts are long and never change: only those that this process has not read yet are fetched. */
@@ -64,10 +72,10 @@ async function basesOfJob(tx: Tx, jobId: string): Promise<Map<string, RoundBasis
   return new Map(digests.map(digest => [digest, bases.get(digest)!]))
 }
 
-/** What a fold of this round needs: its entries, the bases that they name, and what it goes on from. */
-export async function roundFold(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'number' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ entries: KeptEntry[], bases: Map<string, RoundBasis>, options: FoldOptions }> {
-  const entries = await entriesOf(tx, round, fresh)
+/** What a fold of this round needs: the fold in hand before the fresh ones, its entries, the bases that they name, and what it goes on from. */
+export async function roundFold(tx: Tx, round: Pick<LockedRound, 'id' | 'jobId' | 'number' | 'accepted' | 'basis'>, fresh: KeptEntry[] = []): Promise<{ held: Folded | null, entries: KeptEntry[], bases: Map<string, RoundBasis>, options: FoldOptions }> {
+  const { held, entries } = await entriesInHand(tx, round, fresh)
   const bases = await basesOfJob(tx, round.jobId)
   const startsFrom = await outcomeBefore(tx, round.jobId, round.number)
-  return { entries, bases, options: { basis: round.basis, startsFrom, tasksFor: (element, basis) => tasksFor(basis, element).tasks } }
+  return { held, entries, bases, options: { basis: round.basis, startsFrom, tasksFor: (element, basis) => tasksFor(basis, element).tasks } }
 }

@@ -8,7 +8,7 @@ import type { LockedRound } from '../../database/queries/entry'
 import * as states from '../../database/queries/state'
 import type { Tx } from '../../database/withSession'
 import { jobSummary } from '../job/jobSummary'
-import { heldFold, roundFold } from './foldRound'
+import { roundFold } from './foldRound'
 
 /**
  * Writes the fold's result for lists, in the accepting transaction: round, checks, deficiencies, and what the list of jobs shows. Only what changed is
@@ -22,9 +22,9 @@ export async function keepState(tx: Tx, round: LockedRound, accepted: KeptEntry[
     await store()
     return null
   }
-  const { entries, bases, options } = await roundFold(tx, round, accepted)
+  const { held: inHand, entries, bases, options } = await roundFold(tx, round, accepted)
   // Folded again with nothing new (refold): what was kept has been thrown away.
-  const held = accepted.length === 0 ? null : heldFold(round.id, round.accepted - accepted.length)
+  const held = accepted.length === 0 ? null : inHand
   const before = accepted.length === 0 ? null : held?.outcome ?? await states.readOutcome(tx, round.id)
   const signatures = entries.filter(entry => isKnown(entry) && entry.envelope.kind === 'signature').length
   const stored = store()
