@@ -3,7 +3,7 @@ import { fileURLToPath } from 'node:url'
 
 /** The rooms that have a message file of their own under i18n/locales/<language>/. */
 const messageFiles = (language: string) =>
-  ['base', 'account', 'job', 'line', 'site', 'numbers', 'walk', 'deficiency', 'signature', 'record', 'portal', 'check', 'people']
+  ['base', 'account', 'job', 'line', 'site', 'numbers', 'limits', 'walk', 'deficiency', 'signature', 'record', 'portal', 'check', 'people']
     .map(word => `${language}/${word}.json`)
 
 export default defineNuxtConfig({
