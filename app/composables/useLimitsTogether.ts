@@ -1,13 +1,12 @@
 import { GateRefusal } from '#shared/gate/gateRefusal'
-import { combineLimits } from '#shared/limit/combineLimits'
 import { LimitRefused } from '#shared/limit/limitRefused'
 import type { Window } from '#shared/limit/window'
-import { placeLimits } from '#shared/drawing/live/placedLimit'
-import { limitBand } from '#shared/drawing/limitBand'
+import { bandOfLimits } from '#shared/drawing/limitBand'
 import type { Limit } from '#shared/limit/limit'
 import { elementsOf } from '#shared/line/line'
 import type { LimitsTogether, Together } from '#shared/provision/limitsTogether'
 import { limitsTogether } from '#shared/provision/limitsTogether'
+import type { QuestionAbout } from '#shared/question/question'
 import type { RoundBasis } from '#shared/round/basis'
 
 /** All limits of a job brought together, and the words and drawings that a screen needs to tell of them. */
@@ -43,18 +42,11 @@ export function useLimitsTogether(basis: MaybeRefOrGetter<RoundBasis>) {
     return high ? t(high.inclusive ? 'limits.window.atMost' : 'limits.window.under', { x: to! }) : t('limits.window.open')
   }
 
-  /** The limits over a stretch of tape; from two datums at the gap that is told. */
-  function band(one: Together) {
-    const joined = one.joined
-    const gap = joined && !joined.always ? joined.at ?? joined.works?.to ?? joined.gap.from : null
-    const datum = gap === null ? one.byDatum[0]!.datum : joined!.lower
-    const held = one.limits.map(limitOf).filter(limit => limit.datum === datum || (gap !== null && limit.datum === joined!.upper))
-    const shift = (limit: Limit) => limit.datum === datum ? 0 : gap!
-    const { windows } = combineLimits(held, { datum, ...(gap === null ? {} : { offsets: { [joined!.upper]: gap } }), system: system.value })
-    return limitBand({
-      placed: placeLimits({ limits: held.map(limit => ({ limit, shift: shift(limit) })), reading: null, system: system.value, say: () => '' }),
-      windows, tape: one.unit === 'length' ? system.value : null, figure: value => amount(value, one.unit),
-    })
+  /** Where the limits come from two datums that do not always meet: how far they lie apart in what is told. */
+  function gapOf({ joined }: Together): QuestionAbout['gap'] {
+    return joined && !joined.always ? { upper: joined.upper, lower: joined.lower, at: joined.at ?? joined.works?.to ?? joined.gap.from } : null
   }
-  return { found, speech, limitOf, both, title, amount, places, windowWords, band, checks, tags }
+  /** The limits over a stretch of tape; from two datums at the gap that is told. */
+  const band = (one: Together) => bandOfLimits(one.limits.map(limitOf), { gap: gapOf(one), system: system.value, figure: value => amount(value, one.unit) })
+  return { found, speech, limitOf, both, title, amount, places, windowWords, gapOf, band, checks, tags }
 }

@@ -2,7 +2,7 @@ import { createHash, verify, X509Certificate } from 'node:crypto'
 import { decodePDFRawStream, PDFArray, PDFDict, PDFDocument, PDFHexString, PDFName, PDFRawStream, PDFString } from 'pdf-lib'
 import { acceptanceSchema, type AcceptanceDocument } from '../../shared/record/acceptance'
 import { parseCanonicalJson } from '../../shared/record/canonicalJson'
-import { recordSchema, type RecordDocument } from '../../shared/record/record'
+import { anyRecordSchema, type RecordDocument } from '../../shared/record/record'
 import { bytesToSign, derLength, readCms, type SealParts } from './cms'
 
 /** What a check may find, each with a sentence for the person who holds the paper (the check page has its own words by these codes). */
@@ -139,7 +139,7 @@ async function attachmentOf(bytes: Uint8Array): Promise<PdfCheck['attachment']> 
 function documentIn(text: string): CheckedDocument | null {
   try {
     const value = parseCanonicalJson(text)
-    const record = recordSchema.safeParse(value)
+    const record = anyRecordSchema.safeParse(value)
     if (record.success) return { kind: 'record', record: record.data }
     const acceptance = acceptanceSchema.safeParse(value)
     return acceptance.success ? { kind: 'acceptance', acceptance: acceptance.data } : null

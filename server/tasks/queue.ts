@@ -4,7 +4,7 @@ import { useSettings } from '../settings'
 import { logger } from '../logger'
 import queues from './queues.json'
 
-export type Queue = 'seal' | 'send'
+export type Queue = 'seal' | 'send' | 'ask'
 /** A queued task names its row and nothing else (contracts.md 6). */
 export interface Task { organisationId: string, id: string }
 

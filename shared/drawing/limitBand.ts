@@ -1,7 +1,9 @@
+import { combineLimits } from '../limit/combineLimits'
+import type { Limit } from '../limit/limit'
 import type { Window } from '../limit/window'
-import { INCH, MILLIMETRE, type System } from '../measure/length'
+import { INCH, MILLIMETRE, type Length, type System } from '../measure/length'
 import { box, dimH, hatch, seg, text, type Drawing, type Shape } from './displayList'
-import { clashOf, type PlacedLimit } from './live/placedLimit'
+import { clashOf, placeLimits, type PlacedLimit } from './live/placedLimit'
 import { textWidth } from './live/textWidth'
 
 export interface LimitBandInput {
@@ -60,6 +62,16 @@ export function limitBand({ placed, windows, tape, figure, width = 300 }: LimitB
   list.push(seg('dim', 0, foot, width, foot), ...ticks(tape, from, to, width, foot), ...labels(ends.map(end => ({ x: at(end), words: figure(end) })), width, foot))
   const rows = Math.max(0, ...list.flatMap(shape => shape.kind === 'text' ? [shape.y] : []))
   return { list, width, height: Math.max(rows, foot + 8) + 5 }
+}
+
+/** The limits on the first one's measurand of one datum (or of two, the upper lying over the lower by `gap.at`) as a band: combined as {@link combineLimits} does. Throws what it throws. */
+export function bandOfLimits(limits: readonly Limit[], { gap, system, figure, width }: { gap: { upper: string, lower: string, at: Length } | null, system: System, figure: (amount: number) => string, width?: number }): Drawing | null {
+  const datum = gap?.lower ?? limits[0]?.datum
+  const held = limits.filter(limit => limit.measurand === limits[0]!.measurand && (limit.datum === datum || (gap && limit.datum === gap.upper)))
+  if (datum === undefined || held.length === 0) return null
+  const { windows, unit } = combineLimits(held, { datum, ...(gap && { offsets: { [gap.upper]: gap.at } }), system })
+  const placed = placeLimits({ limits: held.map(limit => ({ limit, shift: limit.datum === datum ? 0 : gap!.at })), reading: null, system, say: () => '' })
+  return limitBand({ placed, windows, tape: unit === 'length' ? system : null, figure, ...(width !== undefined && { width }) })
 }
 
 function ticks(tape: System | null, from: number, to: number, width: number, foot: number): Shape[] {

@@ -22,6 +22,8 @@ export const PERMISSIONS = {
   'site.write': office,
   'numbers.read': staff,
   'numbers.write': office,
+  'question.read': staff,
+  'question.write': office,
   'checklist.read': field,
   'job.read': field,
   'job.write': office,

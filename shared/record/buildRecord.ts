@@ -6,8 +6,8 @@ import type { RoundBasis } from '../round/basis'
 import { tasksFor } from '../round/makeBasis'
 import type { CheckOutcome, DeficiencyOutcome, RoundOutcome } from '../round/outcome'
 import { isEnded } from '../round/outcome'
-import type { Caution, RecordCheck, RecordDeficiency, RecordDocument, RecordParticulars, RecordPhoto, RecordReading, RecordSignature, RecordStep } from './record'
-import { recordSchema, RENDERER_VERSION } from './record'
+import type { settledQuestions, Caution, RecordCheck, RecordDeficiency, RecordDocument, RecordParticulars, RecordPhoto, RecordReading, RecordSignature, RecordStep } from './record'
+import { anyRecordSchema, RENDERER_VERSION } from './record'
 import type { RecordTexts } from './recordSentence'
 import { recordSentence } from './recordSentence'
 
@@ -23,6 +23,8 @@ export class RecordError extends Error {
   }
 }
 
+type SettledQuestions = ReturnType<typeof settledQuestions>
+
 export interface RecordSources {
   particulars: RecordParticulars
   /** The basis in force. */
@@ -36,14 +38,17 @@ export interface RecordSources {
   /** Name of each account that wrote or is named in an entry, by account id. */
   names: Record<string, string>
   texts: RecordTexts
+  /** Questions that were answered, and those that were not put to anybody yet; a record that has any is of version 2. */
+  answers?: SettledQuestions['answers']
+  notPut?: SettledQuestions['notPut']
 }
 
 /**
- * The canonical document of a record (record.json v1) from its sources: a pure function, the same document for the same sources in any order of
+ * The canonical document of a record (record.json v1, or v2 where questions were settled) from its sources: a pure function, the same document for the same sources in any order of
  * entries. Throws {@link RecordError}: for entries that the server has not accepted, names or checks that are not given, and a final record over
- * anything open; a ZodError when the result is no {@link recordSchema}.
+ * anything open; a ZodError when the result is no {@link anyRecordSchema}.
  */
-export function buildRecord({ particulars, basis, basisDigest, entries: given, outcome, names, texts }: RecordSources): RecordDocument {
+export function buildRecord({ particulars, basis, basisDigest, entries: given, outcome, names, texts, answers = [], notPut = [] }: RecordSources): RecordDocument {
   const entries = [...given].sort((a, b) => numberOf(a) - numberOf(b))
   if (outcome.basis !== basisDigest) throw new RecordError('otherBasis', 'The outcome was folded over another basis; fold the entries again over the basis in force.')
   refuseUnfinished(particulars, outcome)
@@ -60,10 +65,12 @@ export function buildRecord({ particulars, basis, basisDigest, entries: given, o
   const built = elementsOf(outcome.line)
   const walkList = walkListOf(basis, built)
   const recordChecks = outcome.checks.map(one => checkRecord(one, checkOf(one.check), walkList.tasks, say, source))
-  return recordSchema.parse({
+  const settled = answers.length > 0 || notPut.length > 0
+  return anyRecordSchema.parse({
     ...particulars,
     format: 'smoothside-record',
-    version: 1,
+    version: settled ? 2 : 1,
+    ...(settled ? { answers, notPut } : {}),
     rules: basis.rules,
     renderer: RENDERER_VERSION,
     basis: basisDigest,

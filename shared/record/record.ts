@@ -5,6 +5,7 @@ import { limitSchema, UNITS } from '../limit/limit'
 import { elementSchema, FACES, lineSchema } from '../line/line'
 import { SYSTEMS } from '../measure/length'
 import { provisionSchema } from '../provision/provision'
+import { questionAnswerSchema } from '../question/question'
 import { DEFICIENCY_STATES, VERDICTS } from '../round/outcome'
 
 /** The version of the code that paints a record; a record keeps the one that it was built with. */
@@ -259,4 +260,21 @@ export const recordSchema = recordParticularsSchema.extend({
   /** Changes of the basis or the line that stand side by side and that nobody has settled. */
   conflicts: z.array(z.object({ of: z.enum(['basis', 'line']), entries: z.array(uuid) }).strict()),
 }).strict()
-export type RecordDocument = z.infer<typeof recordSchema>
+
+/**
+ * record.json, version 2: version 1 and what authorities answered. It is written only where a job has a question that was answered or was not put to anybody yet;
+ * every other record is version 1 still, byte for byte.
+ */
+export const recordSchemaV2 = recordSchema.extend({
+  version: z.literal(2),
+  /** Questions that somebody settled: what was asked, of whom and when (null where nobody had been asked in writing), and the answer. */
+  answers: z.array(z.object({ words, askedOf: short.nullable(), askedOn: day.nullable(), answer: questionAnswerSchema }).strict()),
+  /** Questions that were written down and not put to anybody. */
+  notPut: z.array(words),
+}).strict()
+
+/** A record of any version. */
+export const anyRecordSchema = z.discriminatedUnion('version', [recordSchema, recordSchemaV2])
+export type RecordDocument = z.infer<typeof anyRecordSchema>
+/** What version 2 adds; empty for a record of version 1. */
+export const settledQuestions = (record: RecordDocument): Pick<z.infer<typeof recordSchemaV2>, 'answers' | 'notPut'> => record.version === 2 ? record : { answers: [], notPut: [] }

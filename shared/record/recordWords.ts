@@ -5,6 +5,7 @@ import type { LineMarks } from '../line/lineMark'
 import { placeAlong, tapeOf } from '../line/lineMark'
 import type { Verdict } from '../round/outcome'
 import { elementsSeen } from './recordSentence'
+import { settledQuestions } from './record'
 import type { RecordCheck, RecordDeficiency, RecordDocument, RecordPhoto, RecordReading, RecordStep } from './record'
 import { Speech } from './speech'
 import { fill, listed, sentence, WORDING } from './wording'
@@ -95,10 +96,19 @@ export function heldOf(telling: Telling): { element: string, tag: string, words:
   })
 }
 
-/** What was asked and has no answer yet. */
+/** What was asked and has no answer yet, what was not put to anybody, and what was answered, by whom, when and where it stands. */
 export function askedOf({ record, say }: Telling): string[] {
-  if (record.questions.length === 0) return [say.w.phrases.nothingAsked]
-  return record.questions.map(({ words, askedOf: to, on }) => fill(say.w.phrases.putTo, { words: closed(words), to, on: say.day(on) }))
+  const { phrases } = say.w
+  const { answers, notPut } = settledQuestions(record)
+  return [
+    ...(record.questions.length + notPut.length === 0 ? [phrases.nothingAsked] : []),
+    ...record.questions.map(({ words, askedOf: to, on }) => fill(phrases.putTo, { words: closed(words), to, on: say.day(on) })),
+    ...notPut.map(words => fill(phrases.notPut, { words: closed(words) })),
+    ...answers.map(({ words, askedOf: to, askedOn: on, answer }) => [
+      to && on ? fill(phrases.putTo, { words: closed(words), to, on: say.day(on) }) : closed(words),
+      fill(phrases.answered, { name: answer.name, role: answer.role, on: say.day(answer.on), document: answer.document, words: closed(answer.words) }),
+    ].join(' ')),
+  ]
 }
 
 /** What nobody saw: set aside with a reason, not read in full, ground that is still to come, and what no walk ever sees. */

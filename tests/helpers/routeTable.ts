@@ -80,6 +80,27 @@ const provision = (side: Side, setting: 'school' | 'pool' = 'school') => ({
   },
 })
 
+const aQuestion = () => ({
+  id: randomUUID(), words: 'Which of the two holds at this gate?',
+  about: { title: { en: 'Latch release above the ground', es: 'Pestillo sobre el suelo' }, tags: ['G1'], measurand: 'latch-release-height', unit: 'length', datum: 'ground', setting: 'school', limits: [], gap: null },
+})
+/** A question of that side that nobody has answered. */
+async function askedOn(side: Side, { admin }: DemoGround): Promise<string> {
+  const { id, words, about } = aQuestion()
+  await admin.query('insert into question (organisation_id, id, job_id, about, words, written_by) values ($1, $2, $3, $4, $5, $6)', [side.id, id, side.jobId, JSON.stringify(about), words, side.accounts.manager])
+  return id
+}
+/** A sheet of that side, handed over on paper. */
+async function sheetOf(side: Side, { admin }: DemoGround): Promise<string> {
+  const id = randomUUID()
+  const text = JSON.stringify({
+    format: 'smoothside-questions', version: 1, id, language: 'en', system: 'imperial', at: '2026-11-20T09:00:00-05:00', zones: {}, organisation: 'A fence crew', from: { name: 'Margit Hale', email: '' }, to: 'Velmor County',
+    job: { code: 'AA-0001', title: '', permit: '' }, site: { name: 'A yard', address: '' }, client: 'A client', message: '', questions: [aQuestion()],
+  })
+  await admin.query('insert into question_sheet (organisation_id, id, job_id, name, text, sent_by) values ($1, $2, $3, $4, $5, $6)', [side.id, id, side.jobId, 'Velmor County', text, side.accounts.manager])
+  return id
+}
+
 const GIVEN = 'exists (select 1 from job_given g where g.organisation_id = j.organisation_id and g.job_id = j.id and g.account_id = $2)'
 const SENT = `select p.record_id::text as id from recipient p join contact c on c.organisation_id = p.organisation_id and c.id = p.contact_id
   join record r on r.organisation_id = p.organisation_id and r.id = p.record_id where c.account_id = $2 and r.sealing = 'sealed'`
@@ -136,6 +157,19 @@ export const ROUTES: RouteRow[] = [
       return { method: 'PUT', path: `/api/jobs/${side.jobId}/line`, body: { from: version, line: JSON.parse(line), why: 'Drawn again' } }
     },
   },
+  { file: 'api/jobs/[jobId]/basis.post.ts', permission: 'round.basis', call: side => ({ method: 'POST', path: `/api/jobs/${side.jobId}/basis`, body: { why: 'Numbers were set' } }) },
+  { file: 'api/jobs/[jobId]/limits.get.ts', permission: 'question.read', call: side => get(`/api/jobs/${side.jobId}/limits`), rows: { ids: (json: { questions: { id: string }[] }) => idsOf(json.questions), staff: `select q.id from question q join job j on j.organisation_id = q.organisation_id and j.id = q.job_id where q.organisation_id = $1 and q.state <> 'withdrawn' and j.title in ('Upper lawn', 'Bus loop')` } },
+  { file: 'api/jobs/[jobId]/questions.post.ts', permission: 'question.write', call: side => ({ method: 'POST', path: `/api/jobs/${side.jobId}/questions`, body: aQuestion() }), ok: 201 },
+  {
+    file: 'api/jobs/[jobId]/question-sheets.post.ts', permission: 'question.write', ok: 202,
+    call: async (side, demo) => ({ method: 'POST', path: `/api/jobs/${side.jobId}/question-sheets`, body: { id: randomUUID(), questions: [await askedOn(side, demo)], name: 'Velmor County, building division', email: null, message: '', language: 'en' } }),
+  },
+  { file: 'api/questions/[questionId].delete.ts', permission: 'question.write', call: async (side, demo) => ({ method: 'DELETE', path: `/api/questions/${await askedOn(side, demo)}` }) },
+  {
+    file: 'api/questions/[questionId]/answer.post.ts', permission: 'question.write', again: 409,
+    call: async (side, demo) => ({ method: 'POST', path: `/api/questions/${await askedOn(side, demo)}/answer`, body: { answer: { name: 'R. Tamm', role: 'Building official', on: '2026-11-20', document: 'Letter BD-118', words: 'From the ground.' }, number: null } }),
+  },
+  { file: 'routes/questions/[sheetFile].get.ts', permission: 'question.read', call: async (side, demo) => get(`/questions/${await sheetOf(side, demo)}.pdf`) },
   { file: 'api/jobs/[jobId]/records.post.ts', permission: 'record.seal', call: side => ({ method: 'POST', path: `/api/jobs/${side.signedJobId}/records`, body: { id: '7d3f8c52-6a41-4a3b-9a57-1f1f4e0f6c01', scope: 'final', overDevices: null } }), ok: 202 },
   {
     file: 'api/jobs/[jobId]/trials/index.get.ts', permission: 'trial.read', call: side => get(`/api/jobs/${side.jobId}/trials`),

@@ -1,5 +1,6 @@
 export * from './account'
 export * from './job'
 export * from './limiter'
+export * from './question'
 export * from './record'
 export * from './round'

@@ -6,6 +6,7 @@ import { isKnown } from '../../../shared/entry/entry'
 import type { RoundOutcome } from '../../../shared/round/outcome'
 import { roundsBefore } from '../../database/queries/entry'
 import { readJobRow } from '../../database/queries/job'
+import { questionsUntil } from '../../database/queries/question'
 import { contactsOf, devicesOf, peopleOf, roundOf } from '../../database/queries/round'
 import type { SealingRow } from '../../database/queries/sealing'
 import { namesOf, sealedOf } from '../../database/queries/sealing'
@@ -45,6 +46,8 @@ export async function gatherRecord(session: Session, row: SealingRow): Promise<R
     const inspectors = [...new Set(known.filter(entry => ['reading', 'setAside', 'walkOpened'].includes(entry.envelope.kind)).map(entry => entry.envelope.author))]
     const named = (name: string, phone: string) => name ? { name, ...(phone ? { phone } : {}) } : null
     const owner = contacts.find(contact => contact.accepts)
+    const asked = await questionsUntil(tx, row.jobId, row.requestedAt)
+    const dayAt = (instant: Date) => instantAt(instant, job.timeZone).slice(0, 10)
     const particulars: RecordParticulars = {
       id: row.id, number: row.number, code: row.code, scope: row.scope, language: job.language, system: job.system, sealedAt,
       zones: zoneNames([sealedAt, ...known.map(entry => entry.envelope.madeAt)], job.timeZone),
@@ -59,12 +62,15 @@ export async function gatherRecord(session: Session, row: SealingRow): Promise<R
       },
       round: { id: round.id, number: round.number },
       amends: earlier ? { id: earlier.id, code: earlier.code, digest: earlier.documentDigest!, how: 'replacesAll', elements: [], why: WHY_REPLACED[job.language] } : null,
-      questions: [],
+      questions: asked.flatMap(one => one.askedOf && one.askedAt && !one.answer ? [{ words: one.words, askedOf: one.askedOf, on: dayAt(one.askedAt) }] : []),
       devicesOut: row.overDevices
         ? devices.filter(device => !device.emptyAt).map(device => ({ device: device.name, holder: names[device.accountId] ?? '', takenAt: instantAt(new Date(device.takenAt), job.timeZone), reason: row.overDevices! }))
         : [],
       late: late.map(({ digest, number, envelope }) => ({ id: envelope.id, digest, number: number!, kind: envelope.kind, by: names[envelope.author] ?? '', madeAt: envelope.madeAt, element: envelope.element, check: envelope.check })),
     }
-    return buildRecord({ particulars, basis: bases.get(outcome.basis)!, basisDigest: outcome.basis, entries: known, outcome, names, texts: recordTexts(job.language) })
+    return buildRecord({ particulars, basis: bases.get(outcome.basis)!, basisDigest: outcome.basis, entries: known, outcome, names, texts: recordTexts(job.language),
+      answers: asked.flatMap(({ words, askedOf, askedAt, answer }) => answer ? [{ words, askedOf, askedOn: askedAt && dayAt(askedAt), answer }] : []),
+      notPut: asked.flatMap(one => one.askedOf || one.answer ? [] : [one.words]),
+    })
   })
 }

@@ -4,7 +4,7 @@ import { uuidv7 } from 'uuidv7'
 import type { SealingState } from '../../../shared/api/record'
 import { elementsOf } from '../../../shared/line/line'
 import { canonicalJson, sha256Hex } from '../../../shared/record/canonicalJson'
-import { recordSchema } from '../../../shared/record/record'
+import { anyRecordSchema } from '../../../shared/record/record'
 import { usePool } from '../../database/client'
 import { insertRound } from '../../database/queries/line'
 import { roundOf } from '../../database/queries/round'
@@ -73,7 +73,7 @@ const STEPS: Record<Exclude<SealingState, 'sealed'>, Step> = {
   },
   async logged(session, row) {
     await writeHead()
-    const document = recordSchema.parse(JSON.parse((await stored(documentKey(session.organisationId, row.documentDigest!))).toString('utf8')))
+    const document = anyRecordSchema.parse(JSON.parse((await stored(documentKey(session.organisationId, row.documentDigest!))).toString('utf8')))
     const tags = new Map(elementsOf(document.line).map(element => [element.id, element.tag]))
     await withSession(session, async (tx) => {
       const round = await roundOf(tx, row.roundId)

@@ -2,7 +2,8 @@ import { readFileSync } from 'node:fs'
 import { beforeAll, describe, expect, it } from 'vitest'
 import { buildRecord, type RecordSources } from '#shared/record/buildRecord'
 import { canonicalJson, parseCanonicalJson, sha256Hex } from '#shared/record/canonicalJson'
-import { recordSchema } from '#shared/record/record'
+import { anyRecordSchema, recordSchema } from '#shared/record/record'
+import { askedOf, tellingOf } from '#shared/record/recordWords'
 import { sampleRecord, type Sample } from '../../../helpers/sampleRecord'
 
 /**
@@ -11,6 +12,8 @@ import { sampleRecord, type Sample } from '../../../helpers/sampleRecord'
  */
 const frozen = (name: string) => readFileSync(new URL(`../../../fixtures/contracts/${name}`, import.meta.url), 'utf8')
 const GOLDEN_DIGEST = 'ac664c057447df1328e1747a4d5f51767ba7503de7d22542fccc46bd4f4f0256'
+
+const GOLDEN_DIGEST_V2 = '228c94e77cfce2bc11d3e2d04270e53991b6480c8e2845a321f8412c31f8405b'
 
 let sample: Sample
 beforeAll(async () => {
@@ -31,6 +34,38 @@ describe('record.json v1', () => {
   it('refuses anything that it does not know', () => {
     expect(recordSchema.safeParse({ ...sample.record, more: 1 }).success).toBe(false)
     expect(recordSchema.safeParse({ ...sample.record, version: 2 }).success).toBe(false)
+  })
+})
+
+describe('record.json v2', () => {
+  const sources = () => JSON.parse(frozen('record-v1-sources.json')) as RecordSources
+  const more: Pick<RecordSources, 'answers' | 'notPut'> = {
+    answers: [{
+      words: 'Which holds at G3: 54 in over the leaf, or 54 in over the ground?', askedOf: 'Velmor County', askedOn: '2027-02-24',
+      answer: { name: 'R. Tamm', role: 'Building official', on: '2027-03-02', document: 'Letter BD-27-118', words: 'From the ground.' },
+    }],
+    notPut: ['May the landing at G3 be raised?'],
+  }
+  it('is, for the golden sources with an answer, the golden bytes, read back unchanged', () => {
+    const golden = frozen('record-v2.json')
+    expect(sha256Hex(golden)).toBe(GOLDEN_DIGEST_V2)
+    expect(canonicalJson(buildRecord({ ...sources(), ...more }))).toBe(golden)
+    expect(canonicalJson(anyRecordSchema.parse(parseCanonicalJson(golden)))).toBe(golden)
+  })
+  it('is version 1 with what was settled beside it, and nothing else', () => {
+    const { version, answers, notPut, ...rest } = JSON.parse(frozen('record-v2.json')) as Record<string, unknown>
+    expect({ version: 1, ...rest }).toEqual(JSON.parse(frozen('record-v1.json')))
+    expect({ version, answers, notPut }).toEqual({ version: 2, ...more })
+  })
+  it('is written only where a question was settled or not put to anybody', () => {
+    expect(buildRecord({ ...sources(), answers: [], notPut: [] }).version).toBe(1)
+    expect(buildRecord({ ...sources(), notPut: more.notPut! }).version).toBe(2)
+  })
+  it('is told with name, date and document; a record of version 1 says that nothing waits', () => {
+    const told = askedOf(tellingOf(buildRecord({ ...sources(), ...more })))
+    expect(told.at(-1)).toBe('Which holds at G3: 54 in over the leaf, or 54 in over the ground? Put to Velmor County, 24 Feb 2027. Answered by R. Tamm, Building official, 2 Mar 2027 (Letter BD-27-118): From the ground.')
+    expect(told.at(-2)).toBe('May the landing at G3 be raised? Not put to anybody yet.')
+    expect(anyRecordSchema.safeParse({ ...JSON.parse(frozen('record-v1.json')), ...more }).success).toBe(false)
   })
 })
 
