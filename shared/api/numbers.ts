@@ -15,5 +15,5 @@ export const settingSchema = z.enum(SETTINGS)
 
 /** Query of GET /api/numbers/page: one setting, and whose numbers. */
 export const numbersPageSchema = z.object({ setting: settingSchema, authorityId: z.string().uuid().optional(), clientId: z.string().uuid().optional() }).strict()
-/** Answer: every measurand of the setting on one page, and the numbers in force of that source. */
-export interface NumbersPage { rows: SettingMeasurand[], provisions: Provision[] }
+/** Answer: every measurand of the setting on one page, the numbers in force of that source, and all numbers of the organisation that are to be asked after again. */
+export interface NumbersPage { rows: SettingMeasurand[], provisions: Provision[], reviews: { provision: Provision, authorityId: string | null, clientId: string | null }[] }

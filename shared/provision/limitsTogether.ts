@@ -1,4 +1,4 @@
-import { DEFICIENCY_CLASSES, FLOORED_CONCERNS } from '../checklist/check'
+import { DEFICIENCY_CLASSES } from '../checklist/check'
 import type { Check } from '../checklist/check'
 import { combineLimits } from '../limit/combineLimits'
 import type { CombinedLimits } from '../limit/combineLimits'
@@ -66,10 +66,9 @@ const STATES = ['clash', 'hangs', 'window', 'unset'] as const
 
 /**
  * Local numbers of a weaker kind that wanted to replace a limit which only an authority may loosen, among limits that hold together: both stand
- * (limitsInForce.ts tells it while it works; a pinned basis and a record no longer carry it, so it is told from what stands).
+ * (limitsInForce.ts tells it while it works; a pinned basis and a record no longer carry it, so it is told from what stands: where it could loosen, the other is gone).
  */
-export function notLoosenedAmong(limits: readonly Limit[], check: Pick<Check, 'concern'>, provisions: NonNullable<RoundBasis['provisions']>): { provision: string, limit: string }[] {
-  if (!FLOORED_CONCERNS.includes(check.concern)) return []
+export function notLoosenedAmong(limits: readonly Limit[], provisions: NonNullable<RoundBasis['provisions']>): { provision: string, limit: string }[] {
   const rank = ({ basis }: Limit) => BASIS_KINDS.indexOf(basis.kind)
   const wanting = limits.filter(limit => limit.basis.kind !== 'authority' && provisions.some(one => one.id === limit.id && one.effect === 'replace'))
   return wanting.flatMap(by => limits.filter(limit => rank(limit) < rank(by)).map(limit => ({ provision: by.id, limit: limit.id })))
@@ -134,7 +133,7 @@ export function limitsTogether({ line, checks, limits, tasks, setAside = [], pro
       apart: datums.length > 1 && !stacked ? datums : datums.length > 2 ? datums.filter(datum => datum !== STACKED.upper && datum !== STACKED.lower) : [],
       weaker: keys.filter(key => !binding.has(key)),
       setAside: setAside.filter(one => one.limit.measurand === measurand && keys.includes(one.by)),
-      notLoosened: taking.flatMap(check => notLoosenedAmong(pick(keys), check, provisions)).filter((one, at, all) => all.findIndex(other => other.provision === one.provision && other.limit === one.limit) === at),
+      notLoosened: notLoosenedAmong(pick(keys), provisions),
     }
   })
   measurands.sort((one, other) => STATES.indexOf(one.state) - STATES.indexOf(other.state)

@@ -4,6 +4,7 @@ import { elementsOf } from '../line/line'
 import type { LineMarks } from '../line/lineMark'
 import { placeAlong, tapeOf } from '../line/lineMark'
 import type { Verdict } from '../round/outcome'
+import { notLoosenedAmong } from '../provision/limitsTogether'
 import { elementsSeen } from './recordSentence'
 import { settledQuestions } from './record'
 import type { RecordCheck, RecordDeficiency, RecordDocument, RecordPhoto, RecordReading, RecordStep } from './record'
@@ -174,7 +175,25 @@ export function isPlainLook(check: RecordCheck): boolean {
 }
 
 /** What the answer was held against, where that is no limit with a figure. */
-export function conditionsOf(check: RecordCheck, { say }: Telling): string[] {
+export function conditionsOf(check: RecordCheck, telling: Telling): string[] {
+  return [...howItConforms(check, telling), ...whyTheseLimits(check, telling)]
+}
+
+/** Which of several limits governs, what was set aside and for which, and what could not take the place of another. */
+function whyTheseLimits(check: RecordCheck, { record, say }: Telling): string[] {
+  const { phrases, setAsideWhys } = say.w
+  const limits = check.limits.flatMap(key => record.limits[key] ?? [])
+  const governs = limits.length > 1 && check.readings[0]?.limit ? record.limits[check.readings[0].limit] : undefined
+  const nameOf = (id: string) => limits.find(limit => limit.id === id)!.basis.name
+  return [
+    ...(governs ? [fill(phrases.governs, { limit: say.limit(governs), whose: governs.basis.name })] : []),
+    ...record.limitsSetAside.filter(one => check.limits.includes(one.by) && one.limit.measurand === check.measurand)
+      .map(({ limit, why }) => fill(phrases.limitSetAside, { limit: say.limit(limit), basis: say.basis(limit.basis), why: setAsideWhys[why] })),
+    ...notLoosenedAmong(limits, record.provisions).map(({ provision, limit }) => fill(phrases.notLoosened, { whose: nameOf(provision), other: nameOf(limit) })),
+  ]
+}
+
+function howItConforms(check: RecordCheck, { say }: Telling): string[] {
   const { phrases } = say.w
   if (check.method === 'trial') return [listed(check.tries.map(each => fill(phrases.triesFrom, { times: each.times, label: each.label })), say.w.and)]
   if (check.method === 'template' && check.conformsWhen) return [check.conformsWhen === 'passes' ? phrases.passesConforms : phrases.stopsConforms]

@@ -1,12 +1,13 @@
 import { randomUUID } from 'node:crypto'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { withSession } from '../../server/database/withSession'
-import { listProvisions } from '../../server/services/provision/keepProvisions'
+import { listProvisions, putProvision, readNumbersPage } from '../../server/services/provision/keepProvisions'
 import { answerQuestion, readJobLimits, withdrawQuestion, writeQuestion } from '../../server/services/question/keepQuestions'
 import { mailSheet, putQuestions, readSheetFile } from '../../server/services/question/putQuestions'
+import { renewBasis } from '../../server/services/job/saveLine'
 import { putAuthority } from '../../server/services/site/keepSites'
 import { questionsUntil } from '../../server/database/queries/question'
-import { makeSealingScene, type SealingScene } from '../helpers/signedRound'
+import { drawLineOf, makeSealingScene, type SealingScene } from '../helpers/signedRound'
 
 let scene: SealingScene
 beforeAll(async () => { scene = await makeSealingScene() })
@@ -123,5 +124,40 @@ describe('questions to the authority', () => {
     expect(Buffer.from(first.bytes).equals(Buffer.from(second.bytes))).toBe(true)
     expect(first.name).toMatch(/^AA-0001-questions-\d{4}-\d\d-\d\d\.pdf$/)
     await expect(readSheetFile({ ...scene.other.as('manager'), organisationId: scene.other.id }, one.id)).rejects.toMatchObject({ code: 'notFound' })
+  })
+})
+
+describe('numbers that somebody should ask after again', () => {
+  const in30Days = new Date(Date.now() + 30 * 86_400_000).toISOString().slice(0, 10)
+  const number = (id: string, reviewOn: string | undefined, measurand: string) => ({ id, kind: 'specification' as const, measurand, setting: 'school' as const, effect: 'add' as const, limit: { datum: 'ground', unit: 'length' as const, low: null, high: { imperial: 3 * INCH, inclusive: true }, avoid: null }, name: 'School board AA', citation: '32 31 13', confirmedBy: 'C. Clerk', confirmedOn: '2025-01-02', ...(reviewOn && { reviewOn }) })
+
+  it('are told at the jobs of that client alone, and on the page of numbers whoever is looked at; the rest is not', async () => {
+    const [due, past, later] = [randomUUID(), randomUUID(), randomUUID()]
+    for (const [id, on, measurand] of [[due, in30Days, 'gap-below'], [past, '2025-06-01', 'fence-height'], [later, '2099-01-01', 'opening']] as const)
+      await putProvision(manager(), { authorityId: null, clientId: scene.one.clientId, provision: number(id, on, measurand) })
+    expect((await readJobLimits(manager(), scene.one.jobId)).reviews.map(one => one.id)).toEqual([past, due])
+    expect((await readNumbersPage(manager(), { setting: 'pool' })).reviews).toMatchObject([{ provision: { id: past }, clientId: scene.one.clientId, authorityId: null }, { provision: { id: due } }])
+
+    const elsewhere = randomUUID()
+    await scene.admin.query('insert into client (organisation_id, id, name) values ($1, $2, $3)', [scene.one.id, elsewhere, 'Parks'])
+    await putProvision(manager(), { authorityId: null, clientId: elsewhere, provision: number(randomUUID(), '2025-06-01', 'gap-below') })
+    expect((await readJobLimits(manager(), scene.one.jobId)).reviews).toHaveLength(2)
+    expect((await readNumbersPage(scene.other.as('manager'), { setting: 'pool' })).reviews).toEqual([])
+  })
+})
+
+describe('a walk list and numbers that were set after it', () => {
+  it('says that they changed, and is made anew with them as a change that everybody sees', async () => {
+    await drawLineOf(scene.other)
+    const who = { ...scene.other.as('manager'), organisationId: scene.other.id }
+    const limits = () => readJobLimits(who, scene.other.jobId)
+    expect((await limits()).numbersChanged).toBe(false)
+    await putProvision(who, { authorityId: null, clientId: scene.other.clientId, provision: { id: randomUUID(), kind: 'specification', measurand: 'gap-below', setting: 'school', effect: 'add', limit: { datum: 'ground', unit: 'length', low: null, high: { imperial: 3 * INCH, inclusive: true }, avoid: null }, name: 'School board BB', citation: '32 31 13', confirmedBy: 'C. Clerk', confirmedOn: '2025-01-02' } })
+    expect((await limits()).numbersChanged).toBe(true)
+    const { basis } = (await renewBasis(who, scene.other.jobId, 'Numbers were set'))!
+    expect((await limits()).numbersChanged).toBe(false)
+    const { rows } = await scene.admin.query('select kind from entry where job_id = $1', [scene.other.jobId])
+    expect(rows).toEqual([{ kind: 'basisChanged' }])
+    expect((await scene.admin.query('select basis from round where job_id = $1', [scene.other.jobId])).rows).toEqual([{ basis }])
   })
 })

@@ -11,6 +11,13 @@ export async function listProvisions(tx: Tx, authorityId: string | null, clientI
         and authority_id is not distinct from $1 and client_id is not distinct from $2 order by measurand, id`, [authorityId, clientId])).rows.map(row => row.provision)
 }
 
+/** All local numbers in force that are to be asked after again by a day, whoever's they are; the soonest first. */
+export async function provisionsToReview(tx: Tx, by: string): Promise<{ provision: Provision, authorityId: string | null, clientId: string | null }[]> {
+  return (await tx.client.query<{ provision: Provision, authorityId: string | null, clientId: string | null }>(
+    `select provision, authority_id as "authorityId", client_id as "clientId" from provision where organisation_id = app_organisation() and ended_at is null and provision->>'reviewOn' <= $1
+      order by provision->>'reviewOn', id`, [by])).rows
+}
+
 /** The local numbers that hold at a job: of its site's authority, of its client's specification, and of the organisation itself. */
 export async function provisionsInForce(tx: Tx, job: { authorityId: string | null, clientId: string }): Promise<Provision[]> {
   const { rows } = await tx.client.query<{ provision: Provision }>(

@@ -24,9 +24,12 @@ export async function keepProvision(tx: Tx, writtenBy: string, input: z.infer<ty
   })
 }
 
+/** The last day whose numbers are to be asked after again by now: 60 days from today. */
+const reviewBorder = () => new Date(Date.now() + 60 * 86_400_000).toISOString().slice(0, 10)
+
 /** Numbers that somebody should ask after again: their day has come, or comes within 60 days. The soonest first. */
-export function reviewsDue(held: readonly Provision[], today = new Date()): Provision[] {
-  const border = new Date(today.getTime() + 60 * 86_400_000).toISOString().slice(0, 10)
+export function reviewsDue(held: readonly Provision[]): Provision[] {
+  const border = reviewBorder()
   return held.filter(one => one.reviewOn !== undefined && one.reviewOn <= border).sort((one, other) => one.reviewOn! < other.reviewOn! ? -1 : 1)
 }
 
@@ -36,6 +39,8 @@ export const endProvision = (who: Session, id: string) => withSession(who, async
 
 /** One page of numbers: all measurands that a setting calls for, with the built-in basis, and what this source has set. */
 export async function readNumbersPage(who: Session, { setting, ...of }: z.infer<typeof numbersPageSchema>): Promise<NumbersPage> {
-  const provisions = await listProvisions(who, of)
-  return { rows: measurandsOfSetting(setting, readBuiltIn()), provisions: provisions.filter(one => one.setting === null || one.setting === setting) }
+  return withSession(who, async (tx) => {
+    const held = await provisions.listProvisions(tx, of.authorityId ?? null, of.clientId ?? null)
+    return { rows: measurandsOfSetting(setting, readBuiltIn()), provisions: held.filter(one => one.setting === null || one.setting === setting), reviews: await provisions.provisionsToReview(tx, reviewBorder()) }
+  })
 }
