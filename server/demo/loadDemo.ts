@@ -25,6 +25,7 @@ import { useSettings } from '../settings'
 import { consentOf } from '../../shared/round/consent'
 import { fold } from '../../shared/round/fold'
 import { makeSignSheet } from '../../shared/round/signSheet'
+import { askAboutLatch } from './demoQuestions'
 import { DemoWalker, type DemoFinding } from './demoWalker'
 import { CONTACTS, DEMO_PASSWORD, ORGANISATIONS } from './people'
 import { type DemoPicture, drawPicture } from './pictures'
@@ -89,7 +90,7 @@ async function setNumbers(session: Session & { accountId: string }, authorityId:
   for (const { measurand, datum, high, setting, citation } of numbers) {
     await putProvision(session, { authorityId, clientId: null, provision: {
       id: randomUUID(), kind: 'authority', measurand, setting, effect: 'replace', limit: { datum, unit: 'length', low: null, high: { imperial: high, inclusive: true }, avoid: null },
-      name, citation, edition: '2024', readAt: 'letter of the building division', confirmedBy: 'R. Tamm', confirmedOn: daysFromNow(-200).toISOString().slice(0, 10), reviewOn: daysFromNow(165).toISOString().slice(0, 10),
+      name, citation, edition: '2024', readAt: 'letter of the building division', confirmedBy: 'R. Tamm', confirmedOn: daysFromNow(-200).toISOString().slice(0, 10), reviewOn: daysFromNow(measurand === 'gap-below' ? 40 : 165).toISOString().slice(0, 10),
     } })
   }
 }
@@ -124,6 +125,7 @@ async function playJob(job: DemoJob, siteId: string, staff: Map<string, Person>,
   const { basis: digest, id: roundId } = round.round
   const where = { organisation: manager.session.organisationId, job: jobId, round: roundId, basis: digest }
   const pinned = readBasis(digest, round.bases.find(one => one.digest === digest)!.text)
+  if (job.stage === 'waitsForPart') await askAboutLatch({ ...manager.session, name: manager.name, email: '' }, jobId, pinned, site.authorityName ?? '')
   const walker = new DemoWalker(where, pinned, inspector, daysFromNow(-3))
   walker.openWalk(`${inspector.name}'s phone`)
   const found = await findings(job, read.line, walker, (ref, bytes) => storePhoto(inspector.session, jobId, ref.digest, bytes))
