@@ -21,11 +21,8 @@ export function useLimitClashes(basis: MaybeRefOrGetter<RoundBasis>, job: MaybeR
   const length = (value: number) => speech.value.length(value)
   const elements = computed(() => elementsOf(toValue(basis).line))
 
-  /** Keys of the limits that clash, and of those that say how far their datums lie apart. */
-  function asked(one: Together): string[] {
-    const clashing = [...one.byDatum.flatMap(each => each.clashes), ...one.joined?.clashes ?? []].flatMap(clash => clash.kind === 'apart' ? [clash.low, clash.high] : [...clash.limits, ...clash.bands])
-    return [...new Set([...clashing, ...one.joined?.gapBy ?? []])]
-  }
+  /** Keys of the limits that clash. */
+  const clashing = (one: Together) => [...new Set([...one.byDatum.flatMap(each => each.clashes), ...one.joined?.clashes ?? []].flatMap(clash => clash.kind === 'apart' ? [clash.low, clash.high] : [...clash.limits, ...clash.bands]))]
   function sentenceOf(one: Together): string {
     const { joined } = one
     const apart = (joined?.clashes ?? one.byDatum.flatMap(each => each.clashes)).find(clash => clash.kind === 'apart')
@@ -62,9 +59,9 @@ export function useLimitClashes(basis: MaybeRefOrGetter<RoundBasis>, job: MaybeR
   const texts = (keys: readonly string[]) => keys.map(limitOf).map(limit => `${speech.value.limit(limit)} (${speech.value.basis(limit.basis)})`).join('; ')
 
   const cards = computed<ClashCard[]>(() => all.value.filter(one => one.state === 'clash' || one.state === 'hangs').map(one => ({
-    key: `${one.measurand} ${one.limits.join()}`, title: title(one), places: places(one.places.map(place => place.element)), sentence: sentenceOf(one), drawing: band(one), limits: told(asked(one)),
-    ways: [...(lowLatchAt(one) ? [t('limits.way.lowRelease')] : []), ...(one.joined ? [t('limits.way.raiseGround')] : []), ...whoGives(asked(one))],
-    note: both(checks.value.get(one.checks[0]!)!.note), about: aboutOf(one), words: t('limits.question.clash', { texts: texts(asked(one)) }),
+    key: `${one.measurand} ${one.limits.join()}`, title: title(one), places: places(one.places.map(place => place.element)), sentence: sentenceOf(one), drawing: band(one), limits: [...told(clashing(one)), ...told(one.joined?.gapBy ?? []).map(({ words, limit }) => ({ words: t('limits.gapLimit', { limit: words }), limit }))],
+    ways: [...(lowLatchAt(one) ? [t('limits.way.lowRelease')] : []), ...(one.joined ? [t('limits.way.raiseGround')] : []), ...whoGives(clashing(one))],
+    note: both(checks.value.get(one.checks[0]!)!.note), about: aboutOf(one), words: t('limits.question.clash', { texts: texts(clashing(one)) }),
   })))
   function waysOfLeaf({ range, closedBy, swingBy }: LeafTogether): string[] {
     return [...range.waysOut.map((way) => {

@@ -26,6 +26,9 @@ export const questionAboutSchema = z.object({
 }).strict()
 export type QuestionAbout = z.infer<typeof questionAboutSchema>
 
+/** The datums that a number which answers it may be taken from: that of the check, then those of its limits on the same thing. */
+export const datumsOf = ({ datum, measurand, limits }: QuestionAbout): string[] => [...new Set([datum, ...limits.filter(limit => limit.measurand === measurand).map(limit => limit.datum)])]
+
 const short = (max: number) => z.string().trim().min(1).max(max)
 /** What settles a question: who said it, when, and where it stands. */
 export const questionAnswerSchema = z.object({

@@ -1,4 +1,5 @@
 import type { JobLimitsOf, QuestionAnswerInput, QuestionInput } from '../../../shared/api/question'
+import { datumsOf } from '../../../shared/question/question'
 import { questionsOf, sheetsOf } from '../../database/queries/question'
 import * as questions from '../../database/queries/question'
 import { readJobRow } from '../../database/queries/job'
@@ -58,7 +59,7 @@ export async function answerQuestion(who: Who, id: string, { answer, number }: Q
     const job = await readJobRow(tx, question.jobId)
     if (!job?.authorityId) throw new Failure('invalid', 'A number needs to be somebody\'s: choose the authority of this site first, then write the answer down again.', [{ pointer: '/number', code: 'noAuthority', detail: 'Choose the authority of this site first.' }])
     const { about } = question
-    if (number.limit.datum !== about.datum || number.limit.unit !== about.unit) throw new Failure('invalid', 'The number has to be of what was asked.', [{ pointer: '/number/limit', code: 'otherThing', detail: 'Give it from the same place and in the same unit as the question.' }])
+    if (!datumsOf(about).includes(number.limit.datum) || number.limit.unit !== about.unit) throw new Failure('invalid', 'The number has to be of what was asked.', [{ pointer: '/number/limit', code: 'otherThing', detail: 'Give it from the same place and in the same unit as the question.' }])
     await keepProvision(tx, who.accountId, { authorityId: job.authorityId, clientId: null, provision: {
       id: number.id, kind: 'authority', measurand: about.measurand, setting: about.setting, effect: number.effect, limit: number.limit, note: answer.words,
       name: job.authorityName!, citation: answer.document, confirmedBy: answer.name, confirmedOn: answer.on,
