@@ -9,6 +9,9 @@ import { limitsTogether } from '#shared/provision/limitsTogether'
 import type { QuestionAbout } from '#shared/question/question'
 import type { RoundBasis } from '#shared/round/basis'
 
+/** What was brought together of a basis already: several parts of a page ask for the same one. */
+const known = new WeakMap<RoundBasis, LimitsTogether>()
+
 /** All limits of a job brought together, and the words and drawings that a screen needs to tell of them. */
 export function useLimitsTogether(basis: MaybeRefOrGetter<RoundBasis>) {
   const { t, locale } = useI18n()
@@ -19,7 +22,12 @@ export function useLimitsTogether(basis: MaybeRefOrGetter<RoundBasis>) {
   const checks = computed(() => new Map(held.value.checks.map(check => [check.id, check])))
   /** Null with its reason where the limits make no sense together. */
   const found = computed<{ all: LimitsTogether | null, refused: string }>(() => {
-    try { return { all: limitsTogether(held.value), refused: '' } }
+    const raw = toRaw(held.value)
+    try {
+      const all = known.get(raw) ?? limitsTogether(raw)
+      known.set(raw, all)
+      return { all, refused: '' }
+    }
     catch (error) {
       if (error instanceof LimitRefused || error instanceof GateRefusal) return { all: null, refused: error.message }
       throw error

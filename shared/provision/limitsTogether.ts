@@ -89,25 +89,27 @@ export function limitsTogether({ line, checks, limits, tasks, setAside = [], pro
     // A gauge that stands for no figure leaves nothing to set.
     return check?.measurand !== undefined && check.unit !== undefined && !(check.method === 'template' && task.limits.length === 0)
   })
-  const byElement = new Map<string, WalkTask[]>()
-  for (const task of measured) byElement.set(task.element, [...byElement.get(task.element) ?? [], task])
+  const byElement = new Map<string, Map<string, WalkTask[]>>()
+  for (const task of measured) {
+    const onElement = byElement.get(task.element) ?? new Map<string, WalkTask[]>()
+    byElement.set(task.element, onElement)
+    const { measurand } = checkById.get(task.check)!
+    onElement.set(measurand!, [...onElement.get(measurand!) ?? [], task])
+  }
 
-  const onMeasurand = (list: readonly WalkTask[], measurand: string) => list.filter(task => checkById.get(task.check)!.measurand === measurand)
-  const keysOf = (list: readonly WalkTask[]) => [...new Set(list.flatMap(task => task.limits))].sort()
-  const groups = new Map<string, { first: WalkTask[], all: WalkTask[], places: TogetherPlace[], checks: Set<string>, keys: string[], gapKeys: string[], swingKeys: string[] }>()
-  for (const [element, list] of byElement) {
-    for (const measurand of new Set(list.map(task => checkById.get(task.check)!.measurand!))) {
-      const on = onMeasurand(list, measurand)
+  const keysOf = (list: readonly WalkTask[] = []) => [...new Set(list.flatMap(task => task.limits))].sort()
+  const groups = new Map<string, { places: TogetherPlace[], checks: Set<string>, keys: string[], gapKeys: string[], swingKeys: string[] }>()
+  for (const [element, onElement] of byElement) {
+    for (const [measurand, on] of onElement) {
       const faces = [...new Set(on.flatMap(task => task.face ?? []))]
       for (const face of faces.length > 0 ? faces : [null]) {
         const here = on.filter(task => task.face === null || task.face === face)
         const keys = keysOf(here)
         const stacked = [STACKED.upper, STACKED.lower].every(datum => keys.some(key => limits[key]!.datum === datum))
-        const [gapKeys, swingKeys] = stacked ? [keysOf(onMeasurand(list, STACKED.gap)), keysOf(onMeasurand(list, STACKED.atLeast))] : [[], []]
+        const [gapKeys, swingKeys] = stacked ? [keysOf(onElement.get(STACKED.gap)), keysOf(onElement.get(STACKED.atLeast))] : [[], []]
         const id = JSON.stringify([measurand, keys, gapKeys, swingKeys])
-        const group = groups.get(id) ?? { first: here, all: [], places: [], checks: new Set(), keys, gapKeys, swingKeys }
+        const group = groups.get(id) ?? { places: [], checks: new Set(), keys, gapKeys, swingKeys }
         group.places.push({ element, face })
-        group.all.push(...here)
         for (const task of here) group.checks.add(task.check)
         groups.set(id, group)
       }
@@ -115,9 +117,9 @@ export function limitsTogether({ line, checks, limits, tasks, setAside = [], pro
   }
 
   const pick = (keys: readonly string[]) => keys.map(key => limits[key]!)
-  const measurands = [...groups.values()].map(({ first, places, checks: ids, keys, gapKeys, swingKeys }): Together => {
+  const measurands = [...groups.values()].map(({ places, checks: ids, keys, gapKeys, swingKeys }): Together => {
     const taking = [...ids].sort((one, other) => order.get(one)! - order.get(other)!).map(id => checkById.get(id)!)
-    const { measurand, unit } = checkById.get(first[0]!.check)!
+    const { measurand, unit } = taking[0]!
     const datums = [...new Set(pick(keys).map(limit => limit.datum))]
     const byDatum = datums.map(datum => combineLimits(pick(keys).filter(limit => limit.datum === datum), { datum, system }))
     const stacked = unit === 'length' && datums.includes(STACKED.upper) && datums.includes(STACKED.lower)
@@ -140,8 +142,8 @@ export function limitsTogether({ line, checks, limits, tasks, setAside = [], pro
     || DEFICIENCY_CLASSES.indexOf(one.class) - DEFICIENCY_CLASSES.indexOf(other.class) || order.get(one.checks[0]!)! - order.get(other.checks[0]!)!)
 
   const leaves = elementsOf(line).filter(element => element.gate).flatMap((element): LeafTogether[] => {
-    const list = byElement.get(element.id) ?? []
-    const [closedBy, swingBy] = [keysOf(onMeasurand(list, STACKED.gap)), keysOf(onMeasurand(list, STACKED.atLeast))]
+    const onElement = byElement.get(element.id)
+    const [closedBy, swingBy] = [keysOf(onElement?.get(STACKED.gap)), keysOf(onElement?.get(STACKED.atLeast))]
     const { from: margin } = gapOf([], pick(swingBy), system)
     const { to } = gapOf(pick(closedBy), [], system)
     return to === null ? [] : leafOverGround(element, margin, to).filter(leaf => leaf.range.window === null || leaf.range.low > 0 || leaf.range.high < to)
