@@ -11,6 +11,7 @@ import type { ReadingJudgement } from './judgeReading'
 import { judgeReading } from './judgeReading'
 import type { LineAsBuilt } from './lineAsBuilt'
 import { lineAsBuilt, neighboursOf } from './lineAsBuilt'
+import type { EntryIndex } from './entryIndex'
 import type { EntryLinks } from './linkEntries'
 import { linkEntries } from './linkEntries'
 import type { CheckOutcome, DeficiencyOutcome, RoundOutcome, Verdict } from './outcome'
@@ -44,6 +45,8 @@ export interface Folded {
   /** How many bases were known, and what it was made with. */
   bases: number
   options: Pick<FoldOptions, 'basis' | 'startsFrom'>
+  /** Kept by {@link foldOn} alone. */
+  index?: EntryIndex
 }
 
 /**

@@ -8,7 +8,7 @@ import { acceptEntries } from '#server/services/entry/acceptEntries'
 import { makeRound, makeStoryOrganisation, senderOf } from '../helpers/roundAt'
 import { cloneDatabase } from '../helpers/postgres'
 import { basisOf, bay, element, gap, look, ORGANISATION, PEOPLE, uuid } from '../helpers/roundStory'
-import { compare, type Figure } from './measure'
+import { compare, processorTimeOf, type Figure } from './measure'
 
 const ENTRIES = 5000
 const BATCH = 500
@@ -18,8 +18,8 @@ const CHECKS = ['tie-ends', 'gap-below', 'post-spacing']
 /** 5,000 readings of 200 runs, in the order of a walk, in batches of 500, accepted by the service (read strictly, numbered, stored, folded, lists written), against the bare INSERT of the same rows in the same batches. */
 export default async function bench(): Promise<Figure[]> {
   const database = await cloneDatabase()
-  const admin = new pg.Pool({ connectionString: database.adminUrl, max: 2 })
-  const app = new pg.Pool({ connectionString: database.appUrl, max: 4 })
+  const admin = new pg.Pool({ connectionString: database.adminUrl, max: 1, idleTimeoutMillis: 0 })
+  const app = new pg.Pool({ connectionString: database.appUrl, max: 1, idleTimeoutMillis: 0 })
   setPool(app)
   try {
     const at = await makeStoryOrganisation(admin)
@@ -44,6 +44,7 @@ export default async function bench(): Promise<Figure[]> {
     const turns = ROUNDS + WARM_UPS
     const [ours, base] = [await Promise.all(Array.from({ length: turns }, batchesOf)), await Promise.all(Array.from({ length: turns }, batchesOf))]
     let turn = 0
+    const pids = await Promise.all([admin, app].map(async pool => (await pool.query<{ pid: number }>('select pg_backend_pid() as pid')).rows[0]!.pid))
     const figures = [await compare('accepting 5,000 entries in batches of 500, against the bare INSERT of the same rows', 1.5, {
       async ours() {
         const { round, batches } = ours[turn]!
@@ -70,7 +71,7 @@ export default async function bench(): Promise<Figure[]> {
         // As autovacuum would have by then; the last turn that is not measured.
         if (turn === WARM_UPS) await admin.query('analyze')
       },
-    }, { rounds: ROUNDS, warmUps: WARM_UPS, alone: false })]
+    }, { rounds: ROUNDS, warmUps: WARM_UPS, beside: processorTimeOf(pids) })]
     const { rows } = await admin.query('select count(*)::int as n from entry')
     if (rows[0].n !== 2 * turns * ENTRIES) throw new Error(`${rows[0].n} entries are there`)
     const kept = await admin.query(`select count(*)::int as n from check_state where round_id = $1 and verdict <> 'notRead'`, [ours[0]!.round.round])

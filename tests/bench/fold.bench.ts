@@ -61,11 +61,18 @@ export default async function bench(): Promise<Figure[]> {
 
   const parse = (wires: typeof texts) => wires.map(wire => [JSON.parse(wire.envelope), JSON.parse(wire.payload)])
   const some = texts.slice(0, 5000)
-  const earlier = foldWhole(entries.slice(0, -100), bases, { basis: digest })
+  // As they are walked: one element after the other.
+  const walked = texts.map((wire, at) => ({ wire, entry: entries[at]! })).sort((a, b) => (a.entry.envelope.element! < b.entry.envelope.element! ? -1 : a.entry.envelope.element === b.entry.envelope.element ? 0 : 1))
+  const newest = walked.slice(-2000)
+  const earlier = foldWhole(walked.slice(0, -2000).map(one => one.entry), bases, { basis: digest })
+  const goOn = () => {
+    let held = earlier
+    for (let at = 0; at < newest.length; at += 100) held = foldOn(held, newest.slice(at, at + 100).map(one => one.entry), bases, { basis: digest })
+  }
   return [
     await compare('folding 10,000 readings, against JSON.parse of the same entries', 1, { ours: () => fold(entries, bases, { basis: digest }), base: () => parse(texts) }),
     // What a device or the accepting service does with each new batch.
-    await compare('going on with 100 entries from the fold of all before, against JSON.parse of those 100', null, { ours: () => foldOn(earlier, entries.slice(-100), bases, { basis: digest }), base: () => parse(texts.slice(-100)) }),
+    await compare('going on with the last 2,000 of them in batches of 100, against JSON.parse of those', null, { ours: goOn, base: () => parse(newest.map(one => one.wire)) }),
     // The accepting service reads each entry so: schema, canonical form and two digests come on top of the parsing.
     await compare('reading 5,000 entries strictly, against JSON.parse of them', 12, { ours: () => some.map(wire => readEntry(wire)), base: () => parse(some) }),
     await compare('the same with the server\'s own SHA-256', 4, { ours: () => some.map(wire => readEntry(wire, { sha256 })), base: () => parse(some) }),

@@ -43,7 +43,7 @@ export default async function bench(): Promise<Figure[]> {
       const { text, values } = jobListSql(query)
       const [ours, base] = [await withSession(who, async tx => (await tx.client.query(text, values)).rows), await bare(async client => (await client.query(text, values)).rows)]
       if (ours.length < 5 || JSON.stringify(ours) !== JSON.stringify(base)) throw new Error(`"${name}" gives ${ours.length} and ${base.length} rows`)
-      figures.push(await compare(`${name}, among 100,000`, 1.3, { ours: () => withSession(who, tx => tx.client.query(text, values)), base: () => bare(client => client.query(text, values)) }, { rounds: 120, warmUps: 30, alone: false }))
+      figures.push(await compare(`${name}, among 100,000`, 1.3, { ours: () => withSession(who, tx => tx.client.query(text, values)), base: () => bare(client => client.query(text, values)) }, { rounds: 120, warmUps: 30, beside: null }))
     }
     const query = jobListSchema.parse({ filter: 'yours' })
     const { text, values } = jobListSql(query)
@@ -51,7 +51,7 @@ export default async function bench(): Promise<Figure[]> {
     figures.push(await compare('the whole answer of the list, page and counts, against both queries bare', 1.3, {
       ours: () => listJobs(who, query),
       base: () => bare(async (client) => { await client.query(text, values); await countJobs({ client } as never) }),
-    }, { rounds: 120, warmUps: 30, alone: false }))
+    }, { rounds: 120, warmUps: 30, beside: null }))
     return figures
   }
   finally {

@@ -11,16 +11,13 @@ export async function lockRound(tx: Tx, roundId: string): Promise<LockedRound | 
   return rows[0]
 }
 
-export async function setAccepted(tx: Tx, roundId: string, accepted: number): Promise<void> {
-  await tx.client.query('update round set accepted = $2 where organisation_id = app_organisation() and id = $1', [roundId, accepted])
-}
-
-/** Which of these ids are here, accepted (with a number) or held (without). */
-export async function digestsOf(tx: Tx, ids: string[]): Promise<Map<string, { digest: string, number: number | null }>> {
-  const { rows } = await tx.client.query<{ id: string, digest: string, number: number | null }>(
-    `select id, digest, null::int as number from entry_aside where organisation_id = app_organisation() and id = any($1::uuid[]) and why = 'held'
-     union all select id, digest, number from entry where organisation_id = app_organisation() and id = any($1::uuid[])`, [ids])
-  return new Map(rows.map(row => [row.id, row]))
+/** Which of these ids are here, accepted (with a number) or held (without), and the texts that are held of a round. */
+export async function entriesHere(tx: Tx, roundId: string, ids: string[]): Promise<{ here: Map<string, { digest: string, number: number | null }>, held: WireEntry[] }> {
+  const { rows } = await tx.client.query<{ id: string, digest: string, number: number | null, envelope: string | null, payload: string }>(
+    `select id, digest, null::int as number, case when round_id = $1 then envelope_text end as envelope, payload_text as payload
+       from entry_aside where organisation_id = app_organisation() and why = 'held' and (round_id = $1 or id = any($2::uuid[]))
+     union all select id, digest, number, null, null from entry where organisation_id = app_organisation() and id = any($2::uuid[])`, [roundId, ids])
+  return { here: new Map(rows.map(row => [row.id, row])), held: rows.flatMap(({ envelope, payload }) => envelope === null ? [] : [{ envelope, payload }]) }
 }
 
 /** The entries that others name, as the rules of naming need them. */
@@ -33,34 +30,30 @@ export async function targetsOf(tx: Tx, ids: string[]): Promise<Map<string, Targ
   }))
 }
 
-/** Stores accepted entries, the texts exactly as they came; throws unless every one of them can be read back. */
-export async function insertEntries(tx: Tx, accepted: { entry: KeptEntry, wire: WireEntry }[]): Promise<void> {
-  if (accepted.length === 0) return
-  const column = <T>(pick: (one: { entry: KeptEntry, wire: WireEntry }) => T) => accepted.map(pick)
+/**
+ * Stores accepted entries of a round, the texts exactly as they came, with the number that it has come to; they are held no more. Throws unless every one of them can
+ * be read back.
+ */
+export async function storeEntries(tx: Tx, roundId: string, accepted: number, stored: { entry: KeptEntry, wire: WireEntry }[]): Promise<void> {
+  const column = <T>(pick: (one: { entry: KeptEntry, wire: WireEntry }) => T) => stored.map(pick)
   const { rowCount } = await tx.client.query(
-    `insert into entry (organisation_id, id, round_id, number, job_id, kind, author_id, element_id, check_id, digest, envelope_text, payload_text, payload)
-     select app_organisation(), e.id, $1, e.number, e.job, e.kind, e.author, e.element, e.check_id, e.digest, e.envelope, e.payload, e.payload::jsonb
-       from unnest($2::uuid[], $3::int[], $4::uuid[], $5::text[], $6::uuid[], $7::uuid[], $8::text[], $9::text[], $10::text[], $11::text[])
+    `with counted as (update round set accepted = $1 where organisation_id = app_organisation() and id = $2),
+          held_no_more as (delete from entry_aside where organisation_id = app_organisation() and why = 'held' and id = any($3::uuid[]))
+     insert into entry (organisation_id, id, round_id, number, job_id, kind, author_id, element_id, check_id, digest, envelope_text, payload_text, payload)
+     select app_organisation(), e.id, $2, e.number, e.job, e.kind, e.author, e.element, e.check_id, e.digest, e.envelope, e.payload, e.payload::jsonb
+       from unnest($3::uuid[], $4::int[], $5::uuid[], $6::text[], $7::uuid[], $8::uuid[], $9::text[], $10::text[], $11::text[], $12::text[])
          as e(id, number, job, kind, author, element, check_id, digest, envelope, payload)
      returning id`,
-    [accepted[0]!.entry.envelope.round, column(one => one.entry.envelope.id), column(one => one.entry.number), column(one => one.entry.envelope.job), column(one => one.entry.envelope.kind),
-      column(one => one.entry.envelope.author), column(one => one.entry.envelope.element), column(one => one.entry.envelope.check), column(one => one.entry.digest), binaryTexts(column(one => one.wire.envelope)), binaryTexts(column(one => one.wire.payload))])
-  if (rowCount !== accepted.length) throw new Error(`${accepted.length} entries were to be stored, ${rowCount} can be read back`)
+    [accepted, roundId, column(one => one.entry.envelope.id), column(one => one.entry.number), column(one => one.entry.envelope.job), column(one => one.entry.envelope.kind),
+      column(one => one.entry.envelope.author), column(one => one.entry.envelope.element), column(one => one.entry.envelope.check), column(one => one.entry.digest),
+      binaryTexts(column(one => one.wire.envelope)), binaryTexts(column(one => one.wire.payload))])
+  if (rowCount !== stored.length) throw new Error(`${stored.length} entries were to be stored, ${rowCount} can be read back`)
 }
 
 export async function putAside(tx: Tx, entry: KeptEntry, wire: WireEntry, why: 'held' | 'quarantined'): Promise<void> {
   await tx.client.query(
     `insert into entry_aside (organisation_id, id, digest, round_id, why, envelope_text, payload_text, author_id) values (app_organisation(), $1, $2, $3, $4, $5, $6, $7) on conflict do nothing`,
     [entry.envelope.id, entry.digest, entry.envelope.round, why, wire.envelope, wire.payload, entry.envelope.author])
-}
-
-export async function heldOf(tx: Tx, roundId: string): Promise<WireEntry[]> {
-  const { rows } = await tx.client.query<WireEntry>(`select envelope_text as envelope, payload_text as payload from entry_aside where organisation_id = app_organisation() and round_id = $1 and why = 'held'`, [roundId])
-  return rows
-}
-
-export async function dropAside(tx: Tx, entries: KeptEntry[]): Promise<void> {
-  if (entries.length > 0) await tx.client.query(`delete from entry_aside where organisation_id = app_organisation() and why = 'held' and id = any($1::uuid[])`, [entries.map(entry => entry.envelope.id)])
 }
 
 /** The round's entries up to a number whose payload was erased since they were pulled, or before. */

@@ -33,13 +33,11 @@ export async function acceptEntries(who: Session, roundId: string, wires: WireEn
   const { accepted, folded } = await withSession(who, async (tx) => {
     const round = await entries.lockRound(tx, roundId)
     if (!round) throw notFound('round')
-    const good = await accept(tx, round, await sort(tx, round.jobId, offered.filter(one => one.result.state === 'accepted' && !twins.has(one))))
+    const { fresh, held } = await sort(tx, round, offered.filter(one => one.result.state === 'accepted' && !twins.has(one)))
+    const good = await accept(tx, round, fresh, held)
     if (good.length === 0) return { accepted: round.accepted, folded: null }
     const folded = await keepState(tx, round, good.map(one => one.entry), async () => {
-      await entries.insertEntries(tx, good)
-      // Held by an earlier push, sent again or not.
-      await entries.dropAside(tx, good.map(one => one.entry))
-      await entries.setAccepted(tx, roundId, round.accepted)
+      await entries.storeEntries(tx, roundId, round.accepted, good)
       await giveAssigned(tx, who, round.jobId, good.map(one => one.entry))
     })
     return { accepted: round.accepted, folded }
@@ -86,9 +84,9 @@ function idOf(wire: WireEntry): string | null {
   return /"id":"([0-9a-f-]{36})"/.exec(wire.envelope)?.[1] ?? null
 }
 
-/** Sets aside what is here already: the same again is a resend, the same id with another text is kept apart and shown. Whoever came first stands, also while it is held. */
-async function sort(tx: Tx, jobId: string, offered: Offered[]): Promise<Candidate[]> {
-  const here = await entries.digestsOf(tx, offered.map(one => one.entry!.envelope.id))
+/** Sets aside what is here already, and brings what is held of the round: the same again is a resend, the same id with another text is kept apart and shown. Whoever came first stands, also while it is held. */
+async function sort(tx: Tx, { id, jobId }: entries.LockedRound, offered: Offered[]): Promise<{ fresh: Candidate[], held: WireEntry[] }> {
+  const { here, held } = await entries.entriesHere(tx, id, offered.map(one => one.entry!.envelope.id))
   const fresh: Candidate[] = []
   for (const one of offered) {
     const { envelope, digest } = one.entry!
@@ -104,16 +102,16 @@ async function sort(tx: Tx, jobId: string, offered: Offered[]): Promise<Candidat
       fresh.push({ wire: one.wire, entry: one.entry!, offered: one })
     }
   }
-  return fresh
+  return { fresh, held }
 }
 
 /**
  * Numbers whatever names only what is here, of this push and of what was held, as often as something new lets something in. What still waits is held.
  * Returns what is to be stored, in order.
  */
-async function accept(tx: Tx, round: entries.LockedRound, fresh: Candidate[]): Promise<Candidate[]> {
+async function accept(tx: Tx, round: entries.LockedRound, fresh: Candidate[], wiresHeld: WireEntry[]): Promise<Candidate[]> {
   const offeredIds = new Set(fresh.map(one => one.entry.envelope.id))
-  const held = (await entries.heldOf(tx, round.id)).flatMap((wire): Candidate[] => {
+  const held = wiresHeld.flatMap((wire): Candidate[] => {
     const outcome = readEntry(wire, { sha256 })
     return outcome.state === 'refused' || offeredIds.has(outcome.entry.envelope.id) ? [] : [{ wire, entry: outcome.entry, offered: null }]
   })

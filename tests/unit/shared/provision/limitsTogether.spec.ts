@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest'
 import { bottomClearanceRange } from '#shared/gate/bottomClearanceRange'
 import { DEGREE } from '#shared/gate/leaf'
 import { combineLimits } from '#shared/limit/combineLimits'
+import { judge } from '#shared/limit/judge'
 import type { Bound, Limit } from '#shared/limit/limit'
 import type { Line, LineElement } from '#shared/line/line'
 import { INCH } from '#shared/measure/length'
@@ -85,6 +86,25 @@ describe('limits that stand together', () => {
     const gate = aGate({}, { inner: ['pool'], outer: ['accessibleRoute'] })
     const away = [provision('any', 'gap-below', 'ground', { low: inches(0) }, { effect: 'replace' }), provision('low', 'latch-release-height', 'ground', { high: inches(48) })]
     expect(of(together([gate], away), 'latch-release-height')).toMatchObject([{ state: 'clash', joined: { gap: { from: 0, to: null }, works: null, at: 0, clashes: [{ by: 6 * INCH }] } }])
+  })
+})
+
+describe('windows, against what the walk would say of each reading', () => {
+  const half = fc.integer({ min: 0, max: 14 }).map(halves => ({ imperial: halves * INCH / 2, inclusive: true }))
+  const local = fc.record({ low: fc.option(half), high: fc.option(half), kind: fc.constantFrom('organisation' as const, 'specification' as const, 'authority' as const), effect: fc.constantFrom('replace' as const, 'add' as const, 'stricterOf' as const) })
+    .filter(({ low, high }) => low !== null || high !== null)
+  it('hold just the readings that conform, whatever local numbers say', () => {
+    fc.assert(fc.property(fc.array(local, { maxLength: 4 }), (numbers) => {
+      const basis = makeBasis(lineOf(aRun({ inner: ['pool'] })), readBuiltIn(), numbers.map(({ low, high, ...over }, at) => provision(`p${at}`, 'gap-below', 'ground', { ...(low && { low }), ...(high && { high }) }, over)))
+      const [gap] = of(limitsTogether(basis), 'gap-below')
+      const held = gap!.limits.map(key => basis.limits[key]!)
+      for (let quarter = 0; quarter <= 32; quarter++) {
+        const amount = quarter * INCH / 4
+        const inside = gap!.byDatum.some(({ windows }) => windows.some(({ low, high }) => (!low || amount >= low.amount) && (!high || amount <= high.amount)))
+        expect(inside).toBe(judge({ amount, system: 'imperial' }, held).verdict === 'conforms')
+      }
+      expect(gap!.state).toBe(gap!.byDatum[0]!.windows.length > 0 ? 'window' : 'clash')
+    }), { numRuns: 40 })
   })
 })
 

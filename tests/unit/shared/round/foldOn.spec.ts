@@ -47,6 +47,8 @@ it('comes to what folding all comes to, in whatever pieces and whatever order th
     for (let at = 0, piece = 0; at < entries.length; piece++) {
       const end = at + pieces[piece % pieces.length]!
       const before: Folded | null = held
+      // Now and then a transaction goes on and is rolled back: what it left behind must not matter.
+      if (piece % 3 === 1) foldOn(before, entries.slice(at + 1, end + 2), story.bases, options)
       held = foldOn(before, entries.slice(at, end), story.bases, options)
       expect(held.outcome).toEqual(fold(entries.slice(0, end), story.bases, options))
       if (before) kept += held.outcome.checks.filter((check, index) => check === before.outcome.checks[index]).length
