@@ -5,9 +5,12 @@ import type { Tx } from '../withSession'
 
 export interface LockedRound { id: string, jobId: string, number: number, state: 'open' | 'frozen' | 'sealed', accepted: number, basis: string }
 
-/** Locks the round's row: whoever comes next waits, so numbers follow the order of commit. The same lock freezes it. */
+/**
+ * Locks the round's row as an update does: whoever comes next waits and then sees the newest number, so numbers follow the order of commit. The same lock freezes it. It is locked
+ * and not yet written, since each entry's foreign key looks the row up again and would have to go through every version of it.
+ */
 export async function lockRound(tx: Tx, roundId: string): Promise<LockedRound | undefined> {
-  const { rows } = await tx.client.query<LockedRound>('update round set accepted = accepted where organisation_id = app_organisation() and id = $1 returning id, job_id as "jobId", number, state, accepted, basis', [roundId])
+  const { rows } = await tx.client.query<LockedRound>('select id, job_id as "jobId", number, state, accepted, basis from round where organisation_id = app_organisation() and id = $1 for no key update', [roundId])
   return rows[0]
 }
 
@@ -37,17 +40,17 @@ export async function targetsOf(tx: Tx, ids: string[]): Promise<Map<string, Targ
 export async function storeEntries(tx: Tx, roundId: string, accepted: number, stored: { entry: KeptEntry, wire: WireEntry }[]): Promise<void> {
   const column = <T>(pick: (one: { entry: KeptEntry, wire: WireEntry }) => T) => stored.map(pick)
   const { rowCount } = await tx.client.query(
-    `with counted as (update round set accepted = $1 where organisation_id = app_organisation() and id = $2),
-          held_no_more as (delete from entry_aside where organisation_id = app_organisation() and why = 'held' and id = any($3::uuid[]))
+    `with held_no_more as (delete from entry_aside where organisation_id = app_organisation() and why = 'held' and id = any($2::uuid[]))
      insert into entry (organisation_id, id, round_id, number, job_id, kind, author_id, element_id, check_id, digest, envelope_text, payload_text, payload)
-     select app_organisation(), e.id, $2, e.number, e.job, e.kind, e.author, e.element, e.check_id, e.digest, e.envelope, e.payload, e.payload::jsonb
-       from unnest($3::uuid[], $4::int[], $5::uuid[], $6::text[], $7::uuid[], $8::uuid[], $9::text[], $10::text[], $11::text[], $12::text[])
+     select app_organisation(), e.id, $1, e.number, e.job, e.kind, e.author, e.element, e.check_id, e.digest, e.envelope, e.payload, e.payload::jsonb
+       from unnest($2::uuid[], $3::int[], $4::uuid[], $5::text[], $6::uuid[], $7::uuid[], $8::text[], $9::text[], $10::text[], $11::text[])
          as e(id, number, job, kind, author, element, check_id, digest, envelope, payload)
      returning id`,
-    [accepted, roundId, column(one => one.entry.envelope.id), column(one => one.entry.number), column(one => one.entry.envelope.job), column(one => one.entry.envelope.kind),
+    [roundId, column(one => one.entry.envelope.id), column(one => one.entry.number), column(one => one.entry.envelope.job), column(one => one.entry.envelope.kind),
       column(one => one.entry.envelope.author), column(one => one.entry.envelope.element), column(one => one.entry.envelope.check), column(one => one.entry.digest),
       binaryTexts(column(one => one.wire.envelope)), binaryTexts(column(one => one.wire.payload))])
   if (rowCount !== stored.length) throw new Error(`${stored.length} entries were to be stored, ${rowCount} can be read back`)
+  await tx.client.query('update round set accepted = $2 where organisation_id = app_organisation() and id = $1', [roundId, accepted])
 }
 
 export async function putAside(tx: Tx, entry: KeptEntry, wire: WireEntry, why: 'held' | 'quarantined'): Promise<void> {
