@@ -5,9 +5,11 @@ import { listProvisions, putProvision, readNumbersPage } from '../../server/serv
 import { answerQuestion, readJobLimits, withdrawQuestion, writeQuestion } from '../../server/services/question/keepQuestions'
 import { mailSheet, putQuestions, readSheetFile } from '../../server/services/question/putQuestions'
 import { renewBasis } from '../../server/services/job/saveLine'
+import { readRecord } from '../../server/services/record/readRecord'
+import { sealRecord } from '../../server/services/record/sealRecord'
 import { putAuthority } from '../../server/services/site/keepSites'
 import { questionsUntil } from '../../server/database/queries/question'
-import { drawLineOf, makeSealingScene, type SealingScene } from '../helpers/signedRound'
+import { drawLineOf, makeSealingScene, signAndRequest, walkAll, type SealingScene } from '../helpers/signedRound'
 
 let scene: SealingScene
 beforeAll(async () => { scene = await makeSealingScene() })
@@ -159,5 +161,22 @@ describe('a walk list and numbers that were set after it', () => {
     const { rows } = await scene.admin.query('select kind from entry where job_id = $1', [scene.other.jobId])
     expect(rows).toEqual([{ kind: 'basisChanged' }])
     expect((await scene.admin.query('select basis from round where job_id = $1', [scene.other.jobId])).rows).toEqual([{ basis }])
+  })
+})
+
+describe('a record and the questions of its job', () => {
+  it('is not final while a question waits, and prints in version 2 what was answered', async () => {
+    await drawLineOf(scene.one)
+    await walkAll(scene.one, false)
+    const id = await written()
+    await expect(signAndRequest(scene.one, 'final')).rejects.toMatchObject({ code: 'notReady' })
+    for (const one of (await readJobLimits(manager(), scene.one.jobId)).questions) if (one.id !== id && one.state !== 'answered') await withdrawQuestion(manager(), one.id)
+    await expect(signAndRequest(scene.one, 'final')).rejects.toMatchObject({ code: 'notReady' })
+    await answerQuestion(manager(), id, { answer, number: null })
+    const record = await signAndRequest(scene.one, 'final')
+    await sealRecord(scene.one.id, record)
+    const { document } = await readRecord(manager(), record)
+    expect(document).toMatchObject({ version: 2, scope: 'final', questions: [], notPut: [] })
+    expect(document!.version === 2 && document!.answers.at(-1)).toEqual({ words: 'Which of the two holds?', askedOf: null, askedOn: null, answer })
   })
 })

@@ -2,6 +2,7 @@ import { jobCode } from '../../../shared/api/job'
 import { readyToSign } from '../../../shared/round/readyToSign'
 import { readJobRow } from '../../database/queries/job'
 import { lockRound } from '../../database/queries/entry'
+import { questionsOf } from '../../database/queries/question'
 import { devicesOf, newestRound } from '../../database/queries/round'
 import * as sealing from '../../database/queries/sealing'
 import type { Session } from '../../database/withSession'
@@ -33,6 +34,8 @@ export async function requestSealing(who: Who, jobId: string, input: { id: strin
     if (set.adverse.length > 0) throw new Failure('stale', `After the signatures ${set.adverse.length === 1 ? 'something came' : `${set.adverse.length} things came`} that speaks against the work. Look at it with the signers and have the round signed again.`)
     if (set.again.length > 0) throw new Failure('stale', `Not all signed the same: ${set.again.join(', ')} should sign again.`)
     if (!readyToSign(set.outcome, input.scope).ready) throw new Failure('notReady', 'Something still stands against this record. Look at what is open on the job.')
+    const waiting = input.scope === 'final' ? (await questionsOf(tx, jobId)).filter(one => one.state !== 'answered').length : 0
+    if (waiting > 0) throw new Failure('notReady', `${waiting === 1 ? 'A question to the authority waits' : `${waiting} questions to the authority wait`} for an answer, so this record cannot be final. Write the answer down or withdraw the question on the job, or have an interim record signed.`)
     const out = (await devicesOf(tx, round.id)).filter(device => !device.emptyAt)
     if (out.length > 0 && !input.overDevices) throw new Failure('notReady', `${out.map(device => device.name).join(', ')} ${out.length === 1 ? 'has' : 'have'} the round along and may hold entries that were not sent. Wait for them, or say why you do not.`, [{ pointer: '/overDevices', code: 'required', detail: 'Say why these devices are not waited for; it is printed in the record.' }])
     const number = await sealing.nextNumber(tx, jobId)
