@@ -8,7 +8,7 @@ import type { PayloadOf } from '#shared/entry/entry'
 import { makeEntry } from '#shared/entry/makeEntry'
 import { readEntry } from '#shared/entry/readEntry'
 import { sha256Hex } from '#shared/record/canonicalJson'
-import { insertEntries, lockRound, setAccepted } from '../../server/database/queries/entry'
+import { lockRound, storeEntries } from '../../server/database/queries/entry'
 import { withSession } from '../../server/database/withSession'
 import { acceptEntries } from '../../server/services/entry/acceptEntries'
 import { requestSealing } from '../../server/services/record/requestSealing'
@@ -103,8 +103,7 @@ describe('sealing', { timeout: 240_000 }, () => {
       const locked = (await lockRound(tx, round))!
       const read = readEntry(wire)
       if (read.state === 'refused') throw new Error(read.refusal.message)
-      await insertEntries(tx, [{ entry: { ...read.entry, number: locked.accepted + 1 }, wire }])
-      await setAccepted(tx, round, locked.accepted + 1)
+      await storeEntries(tx, round, locked.accepted + 1, [{ entry: { ...read.entry, number: locked.accepted + 1 }, wire }])
     })
     await expect(requestSealing(manager(), one.jobId, { id: randomUUID(), scope: 'final', overDevices: null })).rejects.toMatchObject({ code: 'notReady' })
     await expect(signAndRequest(one, 'final')).rejects.toMatchObject({ code: 'stale', message: expect.stringContaining('Nonsense') as string })

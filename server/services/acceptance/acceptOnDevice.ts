@@ -1,9 +1,8 @@
-import { createHash } from 'node:crypto'
 import type { Entry, KeptEntry } from '../../../shared/entry/entry'
 import { isKnown } from '../../../shared/entry/entry'
-import { digestsOf } from '../../database/queries/entry'
 import { contactNamed, entriesNamed } from '../../database/queries/portal'
 import { forOrganisation, withSession } from '../../database/withSession'
+import { sha256 } from '../entry/sha256'
 import { readSheet } from '../entry/signatureRefusal'
 import { Failure } from '../failure'
 import { offeredDeviations } from '../portal/offeredDeviations'
@@ -11,7 +10,7 @@ import { writeAnswer } from './writeAnswer'
 
 /** The same id however often it is worked out, so that a signature sent again answers nothing twice. */
 function answerId(signature: string, deficiency: string): string {
-  const hex = createHash('sha256').update(`${signature} ${deficiency}`).digest('hex')
+  const hex = sha256(`${signature} ${deficiency}`)
   return `${hex.slice(0, 8)}-${hex.slice(8, 12)}-8${hex.slice(13, 16)}-8${hex.slice(17, 20)}-${hex.slice(20, 32)}`
 }
 
@@ -30,7 +29,7 @@ export async function acceptOnDevice(organisationId: string, entry: KeptEntry): 
     const offers = found?.offers ?? []
     return {
       found, contact: await contactNamed(tx, envelope.job, payload.signer),
-      digests: await digestsOf(tx, offers.flatMap(one => [one.offer, ...one.readings])),
+      digests: new Map((await entriesNamed(tx, offers.flatMap(one => [one.offer, ...one.readings]))).map(one => [one.id, sha256(one.envelope)])),
       there: (await entriesNamed(tx, offers.map(one => answerId(envelope.id, one.deficiency)))).map(one => one.id),
     }
   })
@@ -38,7 +37,7 @@ export async function acceptOnDevice(organisationId: string, entry: KeptEntry): 
   const seen = new Set(sheet.entries)
   for (const offer of found.offers) {
     const id = answerId(envelope.id, offer.deficiency)
-    const signedOver = [offer.offer, ...offer.readings].every(one => seen.has(digests.get(one)?.digest ?? ''))
+    const signedOver = [offer.offer, ...offer.readings].every(one => seen.has(digests.get(one) ?? ''))
     if (there.includes(id) || offer.state !== 'offered' || offer.class !== 'ownerMayAccept' || offer.readings.length !== 1 || !signedOver) continue
     const answer = { id, jobId: envelope.job, roundId: envelope.round, author: payload.signer.account ?? envelope.author, account: payload.signer.account, accepted: true, words: null }
     // What changed at this very moment is not what was signed over: the offer stands, and the signature too.
