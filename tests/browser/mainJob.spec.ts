@@ -324,13 +324,10 @@ describe.each(HANDS)('the main job, $name', (hands) => {
   step('corrects both with a photo, and reads them again', async () => {
     const { page } = field
     // A pad hides the rail: one goes back from it, then along the rail.
-    const toTags = async () => {
-      const tags = page.getByRole('link', { name: say('base.place.tags'), exact: true })
-      if (!await tags.isVisible()) await within(page, 'link', 'walk.pass.backThere').click()
-      await tags.click()
-    }
+    const tags = page.getByRole('link', { name: say('base.place.tags'), exact: true })
+    if (!await tags.isVisible()) await within(page, 'link', 'walk.pass.backThere').click()
+    await tags.click()
     for (const reading of ['clear', '1 1/2'] as const) {
-      await toTags()
       await heading(page, say('deficiency.part.toCorrect'))
       await page.locator('.tag-item input[type=file][capture]').first().setInputFiles(await photo(reading === 'clear' ? 60 : 160))
       const dialog = page.getByRole('dialog')
@@ -348,9 +345,10 @@ describe.each(HANDS)('the main job, $name', (hands) => {
         await keep(page, '21-read-again')
         await page.getByRole('button', { name: say('base.pad.write', { figure: '1 1/2 in' }) }).click()
       }
+      // Whoever came from the tags is back among them, and is told what was read.
+      await page.waitForURL(/\/tags/)
       await page.getByRole('status').filter({ hasText: say('base.verdict.conforms') }).first().waitFor()
     }
-    await toTags()
     await heading(page, say('deficiency.part.settled'))
     await keep(page, '22-tags-settled')
   })
