@@ -1,10 +1,10 @@
 import { FOOT } from '../../measure/length'
-import { box, dimH, open, path, seg, text, type Shape } from '../displayList'
+import { box, dimH, open, path, seg, type Shape } from '../displayList'
 import { LEVEL_GAUGE, levelGauge } from './levelGauge'
 import { FIELD_WIDTH, PAPER, type LiveDrawing, type LiveInput } from './live'
 import { bareFigure, placeLimits, summaryOf, type PlacedLimit } from './placedLimit'
 import { readout } from './readout'
-import { cutText, middleWithin } from './textWidth'
+import { figureThatFits, middleWithin } from './textWidth'
 
 const HEIGHT = 150 + LEVEL_GAUGE.height
 
@@ -12,16 +12,16 @@ const HEIGHT = 150 + LEVEL_GAUGE.height
 export function drawClearWidth(input: LiveInput): LiveDrawing {
   const placed = placeLimits(input)
   const alt = { code: 'clearWidth', params: { summary: summaryOf(input, placed) } }
-  if (input.size === 'paper') return { list: picture(input, placed, { ...PAPER, size: 14 }), ...PAPER, alt }
+  if (input.size === 'paper') return { list: picture(input, placed, { ...PAPER, size: 14, least: 11 }), ...PAPER, alt }
   const list = [
-    ...picture(input, placed, { width: 196, height: 142, size: 17 }),
+    ...picture(input, placed, { width: 196, height: 142, size: 17, least: 14 }),
     ...readout(input, placed, { left: 212, right: FIELD_WIDTH - 4, top: 4, bottom: 146 }),
     ...levelGauge(input, placed, { top: 150, width: FIELD_WIDTH, nominal: 3 * FOOT }).list,
   ]
   return { list, width: FIELD_WIDTH, height: HEIGHT, alt }
 }
 
-function picture({ reading, system }: LiveInput, placed: readonly PlacedLimit[], { width, height, size }: { width: number, height: number, size: number }): Shape[] {
+function picture({ reading, system }: LiveInput, placed: readonly PlacedLimit[], { width, height, size, least }: { width: number, height: number, size: number, least: number }): Shape[] {
   const [y, post, leaf] = [height * 0.16, height * 0.1, Math.max(4, height * 0.045)]
   const face = width * 0.2 + leaf
   const end = placed[0]?.ends[0]
@@ -54,8 +54,8 @@ function picture({ reading, system }: LiveInput, placed: readonly PlacedLimit[],
     const at = height * 0.58
     list.push(...dimH(face, stop, at, ''))
     list.push(seg('dim', stop, y + post / 2, stop, at + 4, { role: 'mark', width: 'hair', dash: [2, 3] }))
-    const words = cutText(bareFigure(reading, system), size, width - face - 8)
-    list.push(text(middleWithin(words, size, (face + stop) / 2, face + 4, width - 4), at - 7, words, { size, anchor: 'middle', halo: 'paper', haloWidth: 6 }))
+    const words = bareFigure(reading, system)
+    list.push(...figureThatFits(middleWithin(words, size, (face + stop) / 2, face + 4, width - 4), at - 7, words, [size, 14, 11].filter(each => each >= least), width - face - 8, { anchor: 'middle', halo: 'paper', haloWidth: 6 }))
   }
   return list
 }

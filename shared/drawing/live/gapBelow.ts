@@ -3,7 +3,7 @@ import { INCH, type Length } from '../../measure/length'
 import { dimV, ground, meshPath, open, path, seg, text, type Point, type Shape } from '../displayList'
 import { FIELD_WIDTH, PAPER, type LiveDrawing, type LiveInput } from './live'
 import { bareFigure, figure, placeLimits, summaryOf, type PlacedLimit } from './placedLimit'
-import { cutText, textWidth } from './textWidth'
+import { cutText, figureThatFits, textWidth } from './textWidth'
 import { uprightGauge, zigzag } from './uprightGauge'
 import { groundFromEdge } from './groundFromEdge'
 
@@ -87,18 +87,19 @@ function onPaper(input: GapBelowInput, placed: PlacedLimit[]): Shape[] {
   const edgeY = reading === null ? 42 : Math.min(groundY, groundY - Math.max(0, reading) * per)
   const list: Shape[] = [...fabric(PAPER.width, 0, edgeY, 12, input.edge === 'leaf' ? 'rail' : input.edge), ...groundFromEdge(groundLine(input.slope, PAPER.width, 95, groundY, 5), { depth: 5, step: 7 })]
   const [limit] = placed
+  let limitY = -100
   if (limit && ends[0] !== undefined && ends[0] > 0) {
     const y = groundY - ends[0] * per
-    const words = cutText(figure(ends[0], system, [ends[0]]), 11, 60)
-    list.push(seg('fit', 80, y, 110, y, { role: limit.role, width: 2 }), text(76, Math.max(10, Math.abs(y - edgeY) < 9 ? Math.min(y, edgeY) - 6 : y + 4), words, { size: 11, role: limit.role, anchor: 'end', halo: 'paper' }))
+    limitY = Math.max(10, Math.abs(y - edgeY) < 9 ? Math.min(y, edgeY) - 6 : y + 4)
+    list.push(seg('fit', 80, y, 110, y, { role: limit.role, width: 2 }), ...figureThatFits(76, limitY, figure(ends[0], system, [ends[0]]), [11], 70, { role: limit.role, anchor: 'end', halo: 'paper' }))
   }
   if (coming) {
     const y = groundY - Math.max(8, Math.min(36, (coming.thickness ?? largest / 3) * per))
-    list.push(seg('fit', 0, y, PAPER.width, y, { role: 'brass', dash: [6, 3], width: 1.25 }), text(2, y - 4, cutText(input.say('comes', { what: coming.words }), 11, 88), { size: 11, role: 'brass', halo: 'paper' }))
+    list.push(seg('fit', 0, y, PAPER.width, y, { role: 'brass', dash: [6, 3], width: 1.25 }), text(2, [y - 4, y + 12, y - 17].find(each => Math.abs(each - limitY) >= 12 && Math.abs(each - 4 - edgeY) >= 7) ?? y - 4, cutText(input.say('comes', { what: coming.words }), 11, 88), { size: 11, role: 'brass', halo: 'paper' }))
   }
   if (reading !== null) {
     const figureY = Math.max(12, Math.min(groundY - 12, (edgeY + groundY) / 2 + 5))
-    list.push(...(groundY - edgeY > 3 ? dimV(95, edgeY, groundY, '') : []), text(115, figureY, cutText(bareFigure(reading, system, ends), 14, 34), { halo: 'paper' }))
+    list.push(...(groundY - edgeY > 3 ? dimV(95, edgeY, groundY, '') : []), ...figureThatFits(113, figureY, bareFigure(reading, system, ends), [14, 11], 36, { halo: 'paper' }))
   }
   return list
 }

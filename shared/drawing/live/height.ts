@@ -3,7 +3,7 @@ import { box, chalk, dimV, hatch, meshPath, path, seg, text, type Shape } from '
 import { lens, postPicture } from './leafPicture'
 import { FIELD_WIDTH, PAPER, type LiveDrawing, type LiveInput } from './live'
 import { bareFigure, placeLimits, summaryOf, type PlacedLimit } from './placedLimit'
-import { cutText, textWidth } from './textWidth'
+import { cutText, figureThatFits, textWidth } from './textWidth'
 import { uprightGauge } from './uprightGauge'
 import { groundFromEdge } from './groundFromEdge'
 
@@ -85,9 +85,8 @@ function onPaper(input: HeightInput, placed: PlacedLimit[]): Shape[] {
     list.push(text(81, wordsY, cutText(limit.words, 11, 68), { size: 11, role: limit.role, halo: limit.wash }))
   }
   if (reading !== null) {
-    const words = cutText(bareFigure(reading, system, placed.flatMap(({ ends }) => ends)), 14, 46)
-    list.push(...chalk(61, topY, 68, topY, { thick: 3, seed: 5 }), ...(groundY - topY > 6 ? dimV(22, topY, groundY, '') : []))
-    list.push(text(28, Math.max(13, Math.min(82, (topY + groundY) / 2 + 5)), words, { halo: 'paper', haloWidth: 6 }))
+    list.push(...chalk(61, topY, 68, topY, { thick: 3, seed: 5 }), ...(groundY - topY > 6 ? dimV(10, topY, groundY, '') : []))
+    list.push(...figureThatFits(15, Math.max(13, Math.min(82, (topY + groundY) / 2 + 5)), bareFigure(reading, system, placed.flatMap(({ ends }) => ends)), [14, 11], 42, { halo: 'paper', haloWidth: 6 }))
   }
   return list
 }

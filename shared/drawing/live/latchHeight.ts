@@ -3,7 +3,7 @@ import { box, chalk, dimV, hatch, seg, text, type Shape } from '../displayList'
 import { leafPicture, lens } from './leafPicture'
 import { FIELD_WIDTH, PAPER, type LiveDrawing, type LiveInput } from './live'
 import { bareFigure, placeLimits, summaryOf, type PlacedLimit } from './placedLimit'
-import { cutText, textWidth } from './textWidth'
+import { cutText, figureThatFits, textWidth } from './textWidth'
 import { uprightGauge } from './uprightGauge'
 
 /** From where the release is measured: up from the ground or the bottom of the leaf, or down from its top. */
@@ -85,7 +85,7 @@ function onPaper(input: LatchHeightInput, placed: PlacedLimit[]): Shape[] {
     return [
       ...chalk(61, y, 69, y, { thick: 3, seed: 5 }),
       seg('dim', 69, y, 90, at - 5, { width: 0.75 }),
-      text(92, at, cutText(bareFigure(input.reading!, input.system, placed.flatMap(({ ends }) => ends)), 14, 56)),
+      ...figureThatFits(92, at, bareFigure(input.reading!, input.system, placed.flatMap(({ ends }) => ends)), [14, 11], 57),
     ]
   }
 }

@@ -19,8 +19,9 @@ export function readout(input: LiveInput, placed: readonly PlacedLimit[], { left
   if (!words) {
     line(cutText(say('noReading'), 15, width), 22, { size: 15, role: 'soft' })
   } else {
-    const size = [42, 34, 26, 20].find(each => textWidth(words, each, 300) <= width) ?? 16
-    line(cutText(words, size, width), size, { size, weight: 300 })
+    // One that fits at no size stands under the picture, on its own tape.
+    const size = [42, 34, 26, 20, 16, 14].find(each => textWidth(words, each, 300) <= width)
+    if (size) line(words, size, { size, weight: 300 })
   }
   const margin = marginWords(worst, system, say)
   if (margin.words) for (const each of wrapText(margin.words, 15, width, 2, 500)) line(each, 19, { size: 15, weight: 500, role: margin.role })

@@ -1,10 +1,10 @@
 import { FOOT, type Length } from '../../measure/length'
-import { box, dimH, dimV, meshPath, open, path, seg, text, type Point, type Shape } from '../displayList'
+import { box, dimH, dimV, meshPath, open, path, seg, type Point, type Shape } from '../displayList'
 import { LEVEL_GAUGE, levelGauge } from './levelGauge'
 import { FIELD_WIDTH, PAPER, type LiveDrawing, type LiveInput } from './live'
 import { bareFigure, placeLimits, summaryOf, type PlacedLimit } from './placedLimit'
 import { readout } from './readout'
-import { cutText, middleWithin } from './textWidth'
+import { figureThatFits, middleWithin } from './textWidth'
 import { groundFromEdge } from './groundFromEdge'
 
 /** What stands apart: ties on rail, post or wire, bands on their bar, a bar's end and its first band, horizontal members, or the fence and an object by it. */
@@ -18,16 +18,16 @@ const HEIGHT = 150 + LEVEL_GAUGE.height
 export function drawSpacing(input: SpacingInput): LiveDrawing {
   const placed = placeLimits(input)
   const alt = { code: 'spacing', params: { summary: summaryOf(input, placed) } }
-  if (input.size === 'paper') return { list: picture(input, placed, { ...PAPER, size: 14 }), ...PAPER, alt }
+  if (input.size === 'paper') return { list: picture(input, placed, { ...PAPER, size: 14, least: 11 }), ...PAPER, alt }
   const list = [
-    ...picture(input, placed, { width: 196, height: 142, size: 17 }),
+    ...picture(input, placed, { width: 196, height: 142, size: 17, least: 14 }),
     ...readout(input, placed, { left: 212, right: FIELD_WIDTH - 4, top: 4, bottom: 146 }),
     ...levelGauge(input, placed, { top: 150, width: FIELD_WIDTH, nominal: FOOT }).list,
   ]
   return { list, width: FIELD_WIDTH, height: HEIGHT, alt }
 }
 
-interface Frame { width: number, height: number, size: number }
+interface Frame { width: number, height: number, size: number, least: number }
 
 /** How far apart reading and limit are drawn in `room`: on one scale, the larger of them taking most of it. */
 function apart(reading: Length | null, placed: readonly PlacedLimit[], room: number): { read: number, limit: number | null } {
@@ -45,10 +45,6 @@ function apart(reading: Length | null, placed: readonly PlacedLimit[], room: num
 function picture(input: SpacingInput, placed: readonly PlacedLimit[], frame: Frame): Shape[] {
   const { between } = input
   return between === 'tiesOnRail' || between === 'tiesOnWire' || between === 'object' ? along(input, placed, frame) : upright(input, placed, frame)
-}
-
-function words(input: SpacingInput, width: number, size: number): string {
-  return input.reading === null ? '' : cutText(bareFigure(input.reading, input.system), size, width)
 }
 
 /** Things in a row from left to right. */
@@ -80,15 +76,15 @@ function along(input: SpacingInput, placed: readonly PlacedLimit[], { width, hei
   }
   if (limit !== null) list.push(...limitMark(placed[0]!, first + limit, 'x', { width, height }))
   if (input.reading !== null) {
-    const label = words(input, width - 8, size)
+    const label = bareFigure(input.reading, input.system)
     list.push(...dimH(first, second, dimY, ''))
-    list.push(text(middleWithin(label, size, (first + second) / 2, 4, width - 4), dimY - 6, label, { size, anchor: 'middle', halo: 'paper', haloWidth: 6 }))
+    list.push(...figureThatFits(middleWithin(label, size, (first + second) / 2, 4, width - 4), dimY - 6, label, [size], width - 8, { anchor: 'middle', halo: 'paper', haloWidth: 6 }))
   }
   return list
 }
 
 /** Things one over another. */
-function upright(input: SpacingInput, placed: readonly PlacedLimit[], { width, height, size }: Frame): Shape[] {
+function upright(input: SpacingInput, placed: readonly PlacedLimit[], { width, height, size, least }: Frame): Shape[] {
   const { between } = input
   const { read, limit } = apart(input.reading, placed, height * 0.7)
   const postX = width * 0.3
@@ -113,13 +109,13 @@ function upright(input: SpacingInput, placed: readonly PlacedLimit[], { width, h
   if (input.reading !== null) {
     const x = width * 0.68
     list.push(...dimV(x, first, second, ''))
-    list.push(text(x + 8, Math.max(size, Math.min(height - 4, (first + second) / 2 + size * 0.36)), words(input, width - x - 10, size), { size, halo: 'paper', haloWidth: 6 }))
+    list.push(...figureThatFits(x + 8, Math.max(size, Math.min(height - 4, (first + second) / 2 + size * 0.36)), bareFigure(input.reading, input.system), [size, 14, 11].filter(each => each >= least), width - x - 10, { halo: 'paper', haloWidth: 6 }))
   }
   return list
 }
 
 /** Where the spacing would end if it were the limit: a stroke with hatch towards what conforms. */
-function limitMark(limit: PlacedLimit, at: number, axis: 'x' | 'y', { width, height }: Omit<Frame, 'size'>): Shape[] {
+function limitMark(limit: PlacedLimit, at: number, axis: 'x' | 'y', { width, height }: Pick<Frame, 'width' | 'height'>): Shape[] {
   const inward = limit.allowed[0]?.high === Infinity ? 1 : -1
   const [from, to] = axis === 'x' ? [height - 30, height - 2] : [width * 0.55, width * 0.82]
   const place = Math.min(at, (axis === 'x' ? width : height) - 2)

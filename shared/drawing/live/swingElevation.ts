@@ -2,7 +2,7 @@ import { box, dimV, meshPath, open, path, poly, seg, text, type Point, type Shap
 import { FIELD_WIDTH } from './live'
 import { bareFigure, figure } from './placedLimit'
 import { degrees, type SwingSeen } from './swingSeen'
-import { cutText, textWidth } from './textWidth'
+import { cutText, figureThatFits, textWidth } from './textWidth'
 import { zigzag } from './uprightGauge'
 import { groundFromEdge } from './groundFromEdge'
 
@@ -60,9 +60,14 @@ export function swingElevation({ input, angle, gapAt, margin }: SwingSeen, top: 
   if (margin > 0) {
     list.push(seg('fit', HINGE, yOf(margin), LATCH + 10, yOf(rise + margin), { role: 'brass', dash: [7, 3] }))
     const words = cutText(say('asked', { amount: figure(margin, system) }), 14, 120)
-    const x = HINGE + 74
-    const share = (x + textWidth(words, 14) / 2 - HINGE) / (LATCH + 10 - HINGE)
-    list.push(text(x, yOf(margin) + (yOf(rise + margin) - yOf(margin)) * share - 6, words, { role: 'brass', halo: 'paper', haloWidth: 5 }))
+    const wide = textWidth(words, 14)
+    const askedY = (x: number) => yOf(margin) + (yOf(rise + margin) - yOf(margin)) * (x + wide / 2 - HINGE) / (LATCH + 10 - HINGE) - 6
+    // On its line where that runs clear under the leaf, else at the foot with a piece of it.
+    const x = [74, 104, 140].map(each => HINGE + each).find(each => askedY(each) - 15 > Math.max(edge0 + lean * (each - HINGE), edge0 + lean * (each + wide - HINGE)))
+    const foot = top + HEIGHT - 24
+    list.push(...x === undefined
+      ? [seg('fit', 92, foot - 5, 120, foot - 5, { role: 'brass', dash: [7, 3] }), text(128, foot, words, { role: 'brass', halo: 'paper' })]
+      : [text(x, askedY(x), words, { role: 'brass', halo: 'paper', haloWidth: 5 })])
   }
   if (angle > 0) list.push(seg('fit', HINGE, ground0, LATCH + 10, yOf(closedRise), { role: 'mark', width: 'hair', dash: [2, 3] }))
   list.push(text(58, top + HEIGHT - 6, cutText(angle > 0 ? say('groundClosed') : '', 14, 216), { role: 'soft' }))
@@ -74,8 +79,7 @@ export function swingElevation({ input, angle, gapAt, margin }: SwingSeen, top: 
   list.push(seg('dim', LATCH - 4, edge1, LATCH - 4, ground1, { role, width: tight ? 'heavy' : 'hair' }))
   const figureY = Math.min(top + HEIGHT - 6, Math.max(edge1, ground1) + 40)
   list.push(seg('dim', LATCH - 4, Math.max(edge1, ground1) + 2, LATCH - 4, figureY - 22, { role, width: 'hair' }))
-  const size = textWidth(latchFigure, 28, 300) < 90 ? 28 : 18
-  list.push(text(346, figureY, cutText(latchFigure, size, 120), { size, anchor: 'end', weight: 300, role, halo: 'paper' }))
+  list.push(...figureThatFits(346, figureY, latchFigure, [...(textWidth(latchFigure, 28, 300) < 90 ? [28] : []), 18, 14], 150, { anchor: 'end', weight: 300, role, halo: 'paper' }))
   return { list: list.filter(shape => shape.kind !== 'text' || shape.text !== ''), height: HEIGHT }
 
   function clampY(y: number): number {

@@ -3,7 +3,7 @@ import { INCH, MILLIMETRE, type Length } from '../../measure/length'
 import { box, open, poly, seg, text, type Point, type Shape } from '../displayList'
 import { bareFigure } from './placedLimit'
 import { degrees, swingWords, type SwingSeen } from './swingSeen'
-import { cutText, textWidth, wrapText } from './textWidth'
+import { cutText, figureThatFits, textWidth, wrapText } from './textWidth'
 
 const HEIGHT = 208
 const COLUMN = 240
@@ -130,7 +130,7 @@ export function swingOnPaper(seen: SwingSeen, least: Length): Shape[] {
   ]
   if (margin > 0) list.push(open('fit', arc(frame, to, start + margin * perGap), { role: 'pine', width: 1.25, dash: [4, 2] }))
   list.push(
-    text(148, 52, cutText(bareFigure(least, system, [0, margin]), 14, 44), { anchor: 'end' }),
+    ...figureThatFits(148, 52, bareFigure(least, system, [0, margin]), [14, 11], 46, { anchor: 'end' }),
     text(148, 66, cutText(say('atAngle', { angle: degrees(swing.least.angle, say) }), 11, 46), { size: 11, role: 'soft', anchor: 'end' }),
   )
   return list

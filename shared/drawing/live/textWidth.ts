@@ -1,4 +1,4 @@
-import { fractionRuns } from '../displayList'
+import { fractionRuns, text, type Shape, type TextStyle } from '../displayList'
 
 // Advance widths of Lexend Regular (SIL OFL 1.1) in 1/1000 em, code points 32 to 126, read from the font file itself.
 const ADVANCES = [
@@ -29,6 +29,12 @@ export function cutText(words: string, size: number, width: number, weight = 400
   const letters = [...words]
   while (letters.length > 0 && textWidth(`${letters.join('').trimEnd()}…`, size, weight) > width) letters.pop()
   return letters.length > 0 ? `${letters.join('').trimEnd()}…` : ''
+}
+
+/** A figure at the largest of these sizes that is no wider than `width`. None fits: nothing, for a figure that is cut is another figure. */
+export function figureThatFits(x: number, y: number, words: string, sizes: readonly number[], width: number, style: TextStyle = {}): Shape[] {
+  const size = sizes.find(each => textWidth(words, each, style.weight) <= width)
+  return size === undefined || !words ? [] : [text(x, y, words, { ...style, size })]
 }
 
 /** A text in up to `lines` lines no wider than `width`, broken at spaces; the last is cut where the rest does not fit. */

@@ -4,7 +4,7 @@ import { box, chalk, hatch, open, seg, text, type Shape } from '../displayList'
 import { packed } from './packed'
 import { bareFigure, clashOf, figure, governing, marginWords, type PlacedLimit } from './placedLimit'
 import { tapeAxis, type TapeAxis } from './tapeAxis'
-import { cutText, textWidth, wrapText } from './textWidth'
+import { cutText, figureThatFits, textWidth, wrapText } from './textWidth'
 
 /** Where the parts of an upright gauge stand: tape, steel with the chalk, then bands and words up to `right`. */
 export interface UprightFrame { tape: number, steel: number, steelWidth: number, right: number, top: number, bottom: number }
@@ -138,12 +138,12 @@ export function uprightGauge(input: LiveInput, placed: readonly PlacedLimit[], f
       blocks.push({ wanted: (top + bottom) / 2, height: 22, paint: y => [text(left, y + 15, cutText(say('noReading'), 15, width), { size: 15, role: 'soft' })] })
     } else {
       const shownReading = bareFigure(reading, system, placed.flatMap(({ ends }) => ends))
-      const size = [42, 34, 26, 20].find(each => textWidth(shownReading, each, 300) <= width - (clashOf(placed) ? 18 : 0)) ?? 16
+      const size = [42, 34, 26, 20, 16].find(each => textWidth(shownReading, each, 300) <= width - (clashOf(placed) ? 18 : 0)) ?? 14
       const y = yOf(reading)
       const worst = governing(placed)
       const margin = marginWords(worst, system, say)
       const near = worst && nearestOf(worst.ends, reading)
-      const lines = margin.words ? wrapText(margin.words, 15, width, 2, 500) : []
+      const lines = margin.words ? wrapText(margin.words, 15, width - 5, 2, 500) : []
       const height = size + 2 + lines.length * 18
       // Margin and figure stand together on the side of the limit where the reading is.
       const under = near === null || y >= yOf(near)
@@ -151,8 +151,8 @@ export function uprightGauge(input: LiveInput, placed: readonly PlacedLimit[], f
         wanted: near === null ? y - size / 2 : under ? Math.max((y + yOf(near)) / 2 - 9, yOf(near) + 2) : Math.min((y + yOf(near)) / 2 + 9, yOf(near) - 3) - height,
         height,
         paint: at => [
-          text(left - 2, (under ? at + lines.length * 18 : at) + size * 0.84, cutText(shownReading, size, width), { size, weight: 300 }),
-          ...lines.map((line, i) => text(left - 2, (under ? at + 14 : at + size + 15) + i * 18, line, { size: 15, weight: 500, role: margin.role })),
+          ...figureThatFits(left - 2, (under ? at + lines.length * 18 : at) + size * 0.84, shownReading, [size], width, { weight: 300 }),
+          ...lines.map((line, i) => text(left + 3, (under ? at + 14 : at + size + 15) + i * 18, line, { size: 15, weight: 500, role: margin.role })),
         ],
       })
       if (near !== null && Math.abs(yOf(near) - y) >= 5) {
@@ -160,7 +160,7 @@ export function uprightGauge(input: LiveInput, placed: readonly PlacedLimit[], f
         list.push(
           seg('dim', x, y, x, yOf(near), { role: margin.role === 'pine' ? worst!.wash : 'paper', width: 7 }),
           seg('dim', x, y, x, yOf(near), { role: margin.role, width: 'hair' }),
-          seg('dim', edge, y, x + 8, y, { role: margin.role, width: 'hair' }),
+          seg('dim', edge, y, x + 5, y, { role: margin.role, width: 'hair' }),
           ...[y, yOf(near)].map(end => seg('dim', x - 4, end + 4, x + 4, end - 4, { role: margin.role })),
         )
       }

@@ -162,6 +162,12 @@ describe('drawLive', () => {
     }))
   })
 
+  it.each(DRAWINGS)('cuts no figure of %s short: a figure without its end is another figure', (name) => {
+    fc.assert(fc.property(parameters[name] as fc.Arbitrary<LiveParameters[typeof name]>, (given) => {
+      expect(textsOf(drawLive(name, given)).filter(words => /^[+\u2212-]?\d[\d\s/.]*…$/.test(words))).toEqual([])
+    }), { numRuns: 120 })
+  }, 30_000)
+
   it('is the same picture for the same parameters', () => {
     expect(drawLive('latchHeight', latch)).toEqual(drawLive('latchHeight', { ...latch }))
   })
