@@ -70,6 +70,26 @@ export type TextStyle = Partial<Omit<TextShape, 'kind' | 'x' | 'y' | 'text'>>
 const round = (n: number) => Math.round(n * 100) / 100
 const at = (p: Point) => `${round(p[0])} ${round(p[1])}`
 
+/**
+ * The same picture with fewer shapes: strokes of one style become one path where nothing of another colour lies between them. The forty marks of a tape are then one
+ * element to lay out and paint. Only bare strokes are joined: fills and what is seen through would come out otherwise.
+ */
+export function joinStrokes(shapes: readonly Shape[]): Shape[] {
+  const joined: Shape[] = []
+  const bare = (shape: Shape): shape is PathShape => shape.kind === 'path' && !shape.fill && shape.opacity === undefined
+  for (const shape of shapes) {
+    let to = -1
+    for (let i = joined.length - 1; i >= 0 && bare(shape); i--) {
+      const other = joined[i]!
+      if (!bare(other) || other.role !== shape.role || other.layer !== shape.layer) break
+      if (other.width === shape.width && other.cap === shape.cap && String(other.dash) === String(shape.dash)) { to = i; break }
+    }
+    if (to < 0) joined.push(shape)
+    else joined[to] = { ...(joined[to] as PathShape), d: (joined[to] as PathShape).d + (shape as PathShape).d }
+  }
+  return joined
+}
+
 /** A path of this style; ink and 1.5 wide where nothing is said. */
 export function path(layer: Layer, d: string, style: PathStyle = {}): PathShape {
   return { layer, kind: 'path', d, role: 'ink', width: 'line', ...style }

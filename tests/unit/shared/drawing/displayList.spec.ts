@@ -1,6 +1,6 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { chalk, diamond, DIAMONDS, DIAMOND_ROLE, dimH, dimV, fractionRuns, ground, hatch, meshPath, tapeTag, type PathShape, type Shape } from '#shared/drawing/displayList'
+import { chalk, diamond, DIAMONDS, DIAMOND_ROLE, dimH, dimV, fractionRuns, ground, hatch, joinStrokes, meshPath, path, seg, tapeTag, text, type PathShape, type Shape } from '#shared/drawing/displayList'
 
 const paths = (list: readonly Shape[]) => list.filter((shape): shape is PathShape => shape.kind === 'path')
 /** The grammar that both painters read: absolute commands, each with its own count of numbers. */
@@ -79,6 +79,34 @@ describe('the display list', () => {
         expect(Math.max(y1, y2)).toBeLessThanOrEqual(70)
       }
     }
+  })
+})
+
+describe('joinStrokes', () => {
+  it('makes one path of the marks of a tape, and of nothing else', () => {
+    const marks = [0, 1, 2, 3].map(i => seg('dim', 0, i, 5, i, { width: i % 2 ? 'line' : 'hair' }))
+    const joined = joinStrokes([...marks, path('dim', 'M0 0L1 1Z', { fill: 'paper' }), seg('dim', 9, 9, 8, 8, { width: 'hair' })])
+    expect(joined.map(shape => shape.kind === 'path' && shape.d)).toEqual(['M0 0L5 0M0 2L5 2', 'M0 1L5 1M0 3L5 3', 'M0 0L1 1Z', 'M9 9L8 8'])
+  })
+
+  it('loses no stroke, and moves none over one of another colour', () => {
+    const style = fc.record({ role: fc.constantFrom('ink' as const, 'paper' as const), width: fc.constantFrom('hair' as const, 'heavy' as const), fill: fc.option(fc.constant('chalk' as const), { nil: undefined }) })
+    fc.assert(fc.property(fc.array(style, { maxLength: 20 }), (styles) => {
+      const list: Shape[] = styles.map(({ fill, ...bare }, i) => seg('dim', i, 0, i, 1, { ...bare, ...(fill && { fill }) }))
+      // Painted one after another: the order of the colours must come out the same, each with the same strokes.
+      const painted = (shapes: readonly Shape[]) => shapes.flatMap(shape => shape.kind === 'path' ? shape.d.split(/(?=M)/).map(d => ({ d, role: shape.role, fill: shape.fill, width: shape.width })) : [])
+      const runs = (shapes: readonly Shape[]) => painted(shapes).reduce<{ key: string, strokes: string[] }[]>((found, { d, role, fill, width }) => {
+        const key = `${role} ${fill ?? ''}`
+        if (found.at(-1)?.key !== key) found.push({ key, strokes: [] })
+        found.at(-1)!.strokes.push(`${d} ${width}`)
+        return found
+      }, []).map(({ key, strokes }) => ({ key, strokes: strokes.sort() }))
+      expect(runs(joinStrokes(list))).toEqual(runs(list))
+    }))
+  })
+
+  it('leaves words where they are', () => {
+    expect(joinStrokes([seg('text', 0, 0, 1, 1), text(0, 0, 'a'), seg('text', 2, 2, 3, 3)])).toHaveLength(3)
   })
 })
 
