@@ -3,7 +3,7 @@ import { fileURLToPath } from 'node:url'
 
 /** The rooms that have a message file of their own under i18n/locales/<language>/. */
 const messageFiles = (language: string) =>
-  ['base', 'account', 'job', 'line', 'site', 'numbers', 'limits', 'instrument', 'walk', 'deficiency', 'signature', 'record', 'portal', 'check', 'people', 'erasure']
+  ['base', 'account', 'job', 'line', 'site', 'numbers', 'limits', 'workbench', 'instrument', 'walk', 'deficiency', 'signature', 'record', 'portal', 'check', 'people', 'erasure']
     .map(word => `${language}/${word}.json`)
 
 export default defineNuxtConfig({

@@ -10,7 +10,8 @@ import { groundFromEdge } from './groundFromEdge'
 
 /** An opening and how it was measured. `reading` is what was measured and what the limits are on; the sphere follows from it. */
 export interface OpeningInput extends LiveInput {
-  shape: 'mesh' | 'bars' | 'rightTriangle' | 'underRail'
+  /** A stretched diamond and a triangle of any sides are drawn from `measures` alone. */
+  shape: 'mesh' | 'bars' | 'rightTriangle' | 'underRail' | 'diamond' | 'triangle'
   /** Which dimension of a mesh was taken; the clear distance between wires where absent. */
   dimension?: 'side' | 'diagonal' | 'width'
   /** All measures, where more than one was taken: then the sphere is computed from them and not from the reading. */
@@ -55,6 +56,8 @@ function picture(input: OpeningInput, sphere: Length | null, frame: Frame): Shap
     case 'bars': return bars(input, frame)
     case 'rightTriangle': return triangle(input, sphere, frame)
     case 'underRail': return underRail(input, sphere, frame)
+    case 'diamond': return outlined(input, sphere, diamondOf(input.measures), frame)
+    case 'triangle': return outlined(input, sphere, triangleOf(input.measures), frame)
   }
 }
 
@@ -165,6 +168,35 @@ function underRail(input: OpeningInput, sphere: Length | null, { width, height, 
     ...groundFromEdge([[0, y1], [left, y1], [right, y2], [width, y2]], { depth: 6 }),
     ...sphereNote(input, sphere, wide, radius, { width, height, size, least }),
   ]
+}
+
+/** Corners of a stretched diamond about 0, 0, in lengths, and the middle of the sphere. */
+function diamondOf(measures: Opening | undefined): Outlined {
+  if (measures?.kind === 'pulledSquare') return diamondOf({ kind: 'rhombus', width: measures.width, height: Math.sqrt(Math.max(0, 4 * measures.side ** 2 - measures.width ** 2)) })
+  const { width, height } = measures?.kind === 'rhombus' ? measures : { width: 1, height: 1 }
+  return { corners: [[0, -height / 2], [width / 2, 0], [0, height / 2], [-width / 2, 0]], middle: [0, 0] }
+}
+
+/** Corners of a triangle on its longest side, and the middle of the circle inside it: each corner weighed by the side across from it. */
+function triangleOf(measures: Opening | undefined): Outlined {
+  const [a, b, c] = [...measures?.kind === 'triangle' ? measures.sides : [1, 1, 1]].sort((one, other) => other - one) as [number, number, number]
+  const x = (a * a + c * c - b * b) / (2 * a)
+  const corners: Point[] = [[0, 0], [a, 0], [x, -Math.sqrt(Math.max(0, c * c - x * x))]]
+  const girth = a + b + c
+  return { corners, middle: [(b * corners[0]![0] + c * corners[1]![0] + a * corners[2]![0]) / girth, (b * corners[0]![1] + c * corners[1]![1] + a * corners[2]![1]) / girth] }
+}
+
+interface Outlined { corners: Point[], middle: Point }
+
+/** An opening by its own outline, to scale. */
+function outlined(input: OpeningInput, sphere: Length | null, { corners, middle }: Outlined, frame: Frame): Shape[] {
+  const { width, height, least } = frame
+  const [left, right] = [Math.min(...corners.map(([x]) => x)), Math.max(...corners.map(([x]) => x))]
+  const [top, bottom] = [Math.min(...corners.map(([, y]) => y)), Math.max(...corners.map(([, y]) => y))]
+  const per = Math.min((width - 24) / (right - left), (height - least - 26) / (bottom - top || 1))
+  const [x0, y0] = [(width - (right - left) * per) / 2 - left * per, (height - least - 10 - (bottom - top) * per) / 2 - top * per]
+  const at = ([x, y]: Point): Point => [x0 + x * per, y0 + y * per]
+  return [poly('rail', corners.map(at), { width: 4, role: 'ink' }), ...sphereNote(input, sphere, at(middle), (sphere ?? 0) * per / 2, frame)]
 }
 
 function sphereNote(input: OpeningInput, sphere: Length | null, centre: Point, radius: number, { width, height, size, least }: Frame): Shape[] {

@@ -92,6 +92,9 @@ const parameters: { [Name in LiveName]: fc.Arbitrary<LiveParameters[Name]> } = {
     fc.record({ shape: fc.constant('mesh' as const), dimension: fc.constantFrom('side' as const, 'diagonal' as const, 'width' as const) }),
     fc.record({ shape: fc.constant('bars' as const), gauge: fc.constantFrom('passed' as const, 'stopped' as const) }),
     fc.tuple(positive, positive).map(([base, height]) => ({ shape: 'rightTriangle' as const, measures: { kind: 'rightTriangle' as const, base, height } })),
+    fc.tuple(positive, positive).map(([width, height]) => ({ shape: 'diamond' as const, measures: { kind: 'rhombus' as const, width, height } })),
+    fc.tuple(positive, fc.integer({ min: 1, max: 99 })).map(([side, share]) => ({ shape: 'diamond' as const, measures: { kind: 'pulledSquare' as const, side: side + 1, width: Math.max(1, Math.floor(side * share / 50)) } })),
+    fc.tuple(positive, positive, fc.integer({ min: 1, max: 99 })).map(([a, b, share]) => ({ shape: 'triangle' as const, measures: { kind: 'triangle' as const, sides: [a + 2, b + 2, Math.abs(a - b) + 1 + Math.floor(2 * Math.min(a, b) * share / 100)] as [number, number, number] } })),
     fc.tuple(positive, anyLength, positive).map(([between, first, second]) => ({ shape: 'underRail' as const, measures: { kind: 'underRail' as const, between, first, second } })),
   )).map(([base, more]) => ({ ...base, ...more })),
   closing: fc.record({
