@@ -59,7 +59,7 @@ export function useTrialWords() {
       const ways = range?.waysOut ?? []
       if (ways.length > 0) lines.push(line('head', 'ways'))
       for (const way of ways) {
-        const window = 'window' in way ? { low: length(way.window.low), high: length(way.window.high) } : {}
+        const window: Record<string, string> = 'window' in way ? { low: length(way.window.low), high: length(way.window.high) } : {}
         if (way.code === 'rakeBottom') lines.push(line('plain', way.rise < 0 ? 'rakeDown' : 'rakeUp', { ...window, amount: length(Math.abs(way.rise)) }))
         else if (way.code === 'twoLeaves') lines.push(line('plain', 'twoLeaves', { low: length(way.start.low), high: length(way.start.high), low2: length(way.end.low), high2: length(way.end.high) }))
         else if (way.code === 'stopAt') lines.push(line('plain', 'stopAt', { angle: degrees(way.angle, 'floor') }))

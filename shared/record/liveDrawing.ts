@@ -32,6 +32,9 @@ function draw(check: RecordCheck, { value }: RecordReading, limits: Limit[], ele
   if (check.drawing === 'closing' && value.method === 'trial') {
     return drawLive('closing', { ...common, trials: value.tries.map(({ from, good, of }) => ({ label: check.tries.find(each => each.from === from)?.label ?? from, angle: openingOf(from), good, of })) })
   }
+  if (check.drawing === 'opening' && value.method === 'template') {
+    return drawLive('opening', { ...common, reading: null, system: say.voice.system, limits: [], shape: check.datum === 'between-wires' ? 'mesh' : 'bars', gauge: value.went })
+  }
   if (value.method !== 'measure' || check.unit !== 'length') return null
   // A limit on another datum would stand at a wrong height: the row names it, the picture leaves it out.
   const input: LiveInput = { ...common, reading: value.amount, system: value.system, limits: limits.filter(limit => check.datum === null || limit.datum === check.datum).map(limit => ({ limit })) }

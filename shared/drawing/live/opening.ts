@@ -28,7 +28,8 @@ export function drawOpening(input: OpeningInput): LiveDrawing {
   const sphere = sphereOf(input)
   const { say, system } = input
   const parts = [
-    summaryOf(input, placed),
+    // A gauge that goes through or not stands for no figure of its own.
+    input.gauge && input.reading === null ? '' : summaryOf(input, placed),
     input.shape === 'mesh' && !input.gauge ? say(input.dimension ?? 'side') : '',
     input.gauge ? say(input.gauge) : sphere !== null && sphere !== input.reading ? say('sphere', { amount: figure(sphere, system) }) : '',
   ]
@@ -92,8 +93,10 @@ function mesh(input: OpeningInput, { width, height, size, least }: Frame): Shape
   const list: Shape[] = [path('mesh', centredMesh(width, height, cx, cy, across), { role: 'mark', width: wire })]
   list.push(...ball([cx, cy], input.reading !== null && input.reading <= 0 ? 0 : radius, input))
   const words = written(input)
-  if (!words) return list
-  if (dimension === 'side') {
+  if (!words && !input.gauge) return list
+  if (!words) {
+    // The gauge alone: nothing was measured.
+  } else if (dimension === 'side') {
     // Square across the wires, from one to the one beside it.
     const reach = radius / Math.SQRT2
     list.push(...slanted([cx - reach, cy + reach], [cx + reach, cy - reach]))
