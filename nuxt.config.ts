@@ -41,7 +41,7 @@ export default defineNuxtConfig({
     }] },
   },
   // Tests of the screens' rules see what the screens see: auto-imports among it.
-  typescript: { strict: true, tsConfig: { include: ['../tests/unit/app/**/*.ts'] } },
+  typescript: { strict: true, tsConfig: { include: ['../tests/unit/app/**/*.ts', '../tests/bench/liveDrawing/page.ts'] } },
   telemetry: false,
   hooks: {
     'nitro:config'(config) {

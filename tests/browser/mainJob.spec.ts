@@ -392,8 +392,11 @@ describe.each(HANDS)('the main job, $name', (hands) => {
     await page.getByRole('link', { name: say('base.place.sign'), exact: true }).click()
     await choose(page, say('signature.scopeHint.final'))
     await keep(page, '25-sign')
-    await page.getByRole('link', { name: /^Look at \d+ picture/ }).click()
-    for (let n = 0; n < 10 && await within(page, 'button', 'signature.pictures.nobody').waitFor({ timeout: 3000 }).then(() => true, () => false); n++) {
+    const look = page.getByRole('link', { name: /^Look at \d+ picture/ })
+    const pictures = Number(/\d+/.exec(await look.innerText())![0])
+    await look.click()
+    for (let n = 0; n < pictures; n++) {
+      await page.getByText(say('signature.pictures.of', { n: n + 1, of: pictures })).first().waitFor()
       if (n === 0) await keep(page, '26-sign-pictures')
       await press(page, 'signature.pictures.nobody')
     }
