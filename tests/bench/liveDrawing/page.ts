@@ -6,7 +6,8 @@ import type { LiveName, LiveParameters } from '#shared/drawing/live/drawLive'
 import type { LiveLimit } from '#shared/drawing/live/live'
 import { DEGREE } from '#shared/gate/leaf'
 import { INCH, type Length } from '#shared/measure/length'
-import words from '../../../i18n/locales/en/walk.json'
+import en from '../../../i18n/locales/en/walk.json'
+import es from '../../../i18n/locales/es/walk.json'
 
 const limit = (low: Length | null, high: Length | null, name = 'Velmor County'): LiveLimit => ({
   limit: {
@@ -54,7 +55,7 @@ function show(name: LiveName): void {
   shown?.unmount()
   step.value = 0
   shown = createApp({ render: () => h(LiveDrawing as never, { name, parameters: STEPS[name](step.value) }) })
-  shown.use(createI18n({ legacy: false, locale: 'en', messages: { en: words } })).component('DrawingSvg', DrawingSvg)
+  shown.use(createI18n({ legacy: false, locale: 'en', messages: { en, es } })).component('DrawingSvg', DrawingSvg)
   shown.mount('#page')
   if (!document.querySelector('#page svg path')) throw new Error(`${name} was not drawn`)
 }
