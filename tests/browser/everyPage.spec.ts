@@ -35,6 +35,8 @@ const ROWS: Record<string, Row> = {
   'jobs/[jobId]/change.vue': { as: 'manager', at: ({ job }) => `/jobs/${job}/change` },
   'jobs/[jobId]/line.vue': { as: 'manager', at: ({ job }) => `/jobs/${job}/line` },
   'jobs/[jobId]/erase.vue': { as: 'manager', at: ({ job }) => `/jobs/${job}/erase` },
+  'jobs/try/index.vue': { as: 'manager', at: () => '/jobs/try' },
+  'jobs/try/[tool].vue': { as: 'manager', at: ({ job, gate }) => `/jobs/try/swing?job=${job}&element=${gate}` },
   'sites/index.vue': { as: 'manager', at: () => '/sites' },
   'tags.vue': { as: 'manager', at: () => '/tags' },
   'instruments.vue': { as: 'manager', at: () => '/instruments' },
@@ -63,6 +65,9 @@ const ROWS: Record<string, Row> = {
   'site/index.vue': { as: 'client', at: () => '/site' },
   'site/[siteId].vue': { as: 'client', at: ({ clientSite }) => `/site/${clientSite}` },
 }
+
+/** Screens that share a page with another. */
+const MORE: Record<string, Row> = Object.fromEntries(['around', 'opening', 'fasteners'].map(tool => [`jobs/try/${tool}`, { as: 'manager', at: ({ job, element }: Ids) => `/jobs/try/${tool}?job=${job}&element=${element}` } as Row]))
 
 let ground: ServerGround
 let server: RunningServer
@@ -142,8 +147,8 @@ describe('every page', () => {
     expect(Object.keys(ROWS).sort()).toEqual(files)
   })
 
-  it.each(files.filter(file => ROWS[file]))('%s reads well for everybody: both languages, phone and desk, day and dusk', async (file) => {
-    const { as, at, unknown } = ROWS[file]!
+  it.each([...files.filter(file => ROWS[file]), ...Object.keys(MORE)])('%s reads well for everybody: both languages, phone and desk, day and dusk', async (file) => {
+    const { as, at, unknown } = (ROWS[file] ?? MORE[file])!
     const found: string[] = []
     for (const { size, language, axe } of LOOKS) {
       const { context, page, faults } = await visitOf(as, size)
