@@ -14,7 +14,7 @@ export default defineConfig({
       project('documents', ['tests/documents/**/*.spec.ts'], { testTimeout: 60_000, hookTimeout: 60_000 }),
       project('database', ['tests/database/**/*.spec.ts'], { testTimeout: 60_000, hookTimeout: 120_000 }),
       project('api', ['tests/api/**/*.spec.ts'], { fileParallelism: false, testTimeout: 60_000, hookTimeout: 120_000 }),
-      project('browser', ['tests/browser/**/*.spec.ts'], { fileParallelism: false, testTimeout: 240_000, hookTimeout: 120_000 }),
+      project('browser', ['tests/browser/**/*.spec.ts'], { fileParallelism: false, maxConcurrency: 2, testTimeout: 240_000, hookTimeout: 120_000 }),
     ],
   },
 })

@@ -26,9 +26,14 @@ export async function visit(browser: Browser, baseURL: string, size: Size, optio
     return route.abort()
   })
   const page = await context.newPage()
+  return { context, page, faults: faultsOf(page, faults) }
+}
+
+/** Faults that a page meets from now on, one after the other. */
+export function faultsOf(page: Page, faults: string[] = []): string[] {
   page.on('pageerror', error => faults.push(error.message))
   page.on('console', (message) => { if (message.type() === 'error') faults.push(message.text()) })
-  return { context, page, faults }
+  return faults
 }
 
 /** Keeps a picture of the screen under tests/.artefacts (not in the repository), to be looked at: as it is seen on a phone, the whole page at a desk. */
