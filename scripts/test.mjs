@@ -14,7 +14,7 @@ import { explain, Trouble } from './lib/steps.mjs'
 
 const projects = ['unit', 'published', 'documents', 'database', 'api', 'browser']
 /** A part that hangs must not hide the others. */
-const patience = { ordinary: 6 * 60_000, browser: 15 * 60_000 }
+const patience = { ordinary: 6 * 60_000, browser: 20 * 60_000 }
 
 const scratch = fs.mkdtempSync(path.join(os.tmpdir(), 'smoothside-run-'))
 const logOf = name => path.join(scratch, `${name}.log`)
